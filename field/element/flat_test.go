@@ -1,0 +1,132 @@
+package element_test
+
+import (
+	"math"
+	"os"
+	"sort"
+	"strings"
+	"testing"
+
+	"example.com/boundpole/field"
+	"example.com/boundpole/field/element"
+	"example.com/boundpole/geom"
+	"example.com/boundpole/verify/refcase"
+	"gonum.org/v1/gonum/spatial/r3"
+)
+
+// flatSource builds the source of a case with plane faces, in the outer frame; nil for other families.
+func flatSource(t *testing.T, c *refcase.Case) field.Source {
+	t.Helper()
+	b := &c.Body
+	pose, err := c.Pose()
+	if err != nil {
+		t.Fatal(err)
+	}
+	var body geom.Polyhedron
+	switch b.Type {
+	case "box":
+		box := geom.Box{Size: r3.Scale(2, refcase.Vec(*b.Half))}
+		body = box.Polyhedron()
+	case "polyhedron":
+		body = geom.Polyhedron{Vertices: vecs(b.Vertices), Loops: b.Faces}
+	case "polygon":
+		return element.NewPolygon(geom.Polygon{Vertices: vecs(b.Vertices)}, c.Polarization.A, refcase.Vec(c.Polarization.B))
+	default:
+		return nil
+	}
+	p := field.Affine{Value: refcase.Vec(c.Polarization.P)}
+	if c.Polarization.Kind == "affine" {
+		p = localAffine(t, c, pose)
+	} else {
+		p.Value = pose.VectorToLocal(p.Value)
+	}
+	return field.Posed{Source: element.NewPolyhedron(body, p), Pose: pose}
+}
+
+// localAffine turns the global affine polarization of a case into the frame of its body.
+func localAffine(t *testing.T, c *refcase.Case, pose geom.Pose) field.Affine {
+	t.Helper()
+	g, err := c.Polarization.Gradient()
+	if err != nil {
+		t.Fatal(err)
+	}
+	global := field.Affine{Value: refcase.Vec(c.Polarization.P0), Gradient: g}
+	p := field.Affine{Value: pose.VectorToLocal(global.At(pose.Shift().Value()))}
+	m := pose.Matrix()
+	for i := range 3 {
+		for j := range 3 {
+			for k := range 3 {
+				for l := range 3 {
+					p.Gradient[i][j] += m[k][i] * g[k][l] * m[l][j]
+				}
+			}
+		}
+	}
+	return p
+}
+
+func vecs(a [][3]float64) []r3.Vec {
+	v := make([]r3.Vec, len(a))
+	for i := range a {
+		v[i] = refcase.Vec(a[i])
+	}
+	return v
+}
+
+// TestFlatReference holds every element with plane faces against the reference: the accuracy that the types promise is
+// 1e-13, and the gradient has to be symmetric to what differences say.
+func TestFlatReference(t *testing.T) {
+	files := []string{"../../verify/testdata/dev.json"}
+	if extra := os.Getenv("BOUNDPOLE_REFERENCE"); extra != "" {
+		files = append(files, extra)
+	}
+	worst := map[string]float64{}
+	where := map[string]string{}
+	for _, file := range files {
+		cases, err := refcase.Load(file)
+		if err != nil {
+			t.Fatal(err)
+		}
+		for i := range cases {
+			c := &cases[i]
+			src := flatSource(t, c)
+			if src == nil {
+				continue
+			}
+			for k := range c.Points {
+				x := refcase.Vec(c.Points[k])
+				v := field.At(src, x, field.Mean, field.WantPhi|field.WantG|field.WantGrad|field.WantErr)
+				m, err := c.Compare(k, v.Phi, v.G, 1e-12, frobenius(v.Grad))
+				if err != nil {
+					t.Fatal(err)
+				}
+				if r := m.Ratio(); !(r <= worst[c.Tags[k]]) {
+					worst[c.Tags[k]] = r
+					where[c.Tags[k]] = c.ID
+				}
+				if !(m.Ratio() <= 1) {
+					t.Errorf("%s point %d %v (%s): error phi %.3g of %.3g, g %.3g of %.3g; phi %v want %s, g %v want %v",
+						c.ID, k, x, c.Tags[k], m.Phi, m.TolPhi, m.G, m.TolG, v.Phi, c.Phi[k], v.G, c.G[k])
+				}
+				if v.Status != field.OnFace && (m.G > v.ErrG || m.Phi > v.ErrPhi) {
+					t.Errorf("%s point %d %v (%s): error phi %.3g above estimate %.3g, or g %.3g above %.3g", c.ID, k, x, c.Tags[k],
+						m.Phi, v.ErrPhi, m.G, v.ErrG)
+				}
+			}
+		}
+	}
+	var tags []string
+	for tag := range worst {
+		tags = append(tags, tag)
+	}
+	sort.Strings(tags)
+	var b strings.Builder
+	for _, tag := range tags {
+		t.Logf("%-26s %8.2e of the tolerance (%s)", tag, worst[tag], where[tag])
+	}
+	t.Log(b.String())
+}
+
+func frobenius(g [6]float64) float64 {
+	return math.Sqrt(g[0]*g[0] + g[1]*g[1] + g[2]*g[2] + 2*(g[3]*g[3]+g[4]*g[4]+g[5]*g[5]))
+}

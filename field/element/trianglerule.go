@@ -1,0 +1,22 @@
+package element
+
+import "gonum.org/v1/gonum/integrate/quad"
+
+// triangleNode is a point (1-s-t) v0 + s v1 + t v2 of a triangle and its weight per double area.
+type triangleNode struct{ s, t, w float64 }
+
+// triangleRule returns the collapsed product rule with n+1 times n Gauss-Legendre points, exact for polynomials of degree
+// 2n-1.
+func triangleRule(n int) []triangleNode {
+	xs, ws := make([]float64, n+1), make([]float64, n+1)
+	quad.Legendre{}.FixedLocations(xs, ws, 0, 1)
+	xt, wt := make([]float64, n), make([]float64, n)
+	quad.Legendre{}.FixedLocations(xt, wt, 0, 1)
+	var nodes []triangleNode
+	for i, u := range xs {
+		for j, v := range xt {
+			nodes = append(nodes, triangleNode{s: u * (1 - v), t: u * v, w: ws[i] * wt[j] * u})
+		}
+	}
+	return nodes
+}
