@@ -156,7 +156,9 @@ func (v *Values) At(i int) Value {
 	return r
 }
 
-// set stores value i in the arrays that are there.
+// Set stores value i in the arrays that are there.
+func (v *Values) Set(i int, r Value) { v.set(i, &r) }
+
 func (v *Values) set(i int, r *Value) {
 	if v.Phi != nil {
 		v.Phi[i] = r.Phi

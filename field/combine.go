@@ -33,7 +33,7 @@ func (s Sum) Evaluate(dst *Values, at *Points, side Side) {
 		for _, src := range s {
 			part := work.like(&out, hi-lo)
 			Evaluate(src, part, &work.points, side)
-			out.add(part)
+			out.Add(part)
 		}
 	}
 }
@@ -56,8 +56,8 @@ func (s Sum) Bounds() r3.Box {
 	return box
 }
 
-// add adds w, which has the same arrays, to v.
-func (v *Values) add(w *Values) {
+// Add adds w, which has the same arrays, to v; the status becomes the graver of the two.
+func (v *Values) Add(w *Values) {
 	plus(v.Phi, w.Phi)
 	plus(v.GX, w.GX)
 	plus(v.GY, w.GY)

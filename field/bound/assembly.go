@@ -1,0 +1,197 @@
+package bound
+
+import (
+	"math"
+
+	"example.com/boundpole/field"
+	"example.com/boundpole/geom"
+	"gonum.org/v1/gonum/spatial/r3"
+)
+
+// Member is one part of an assembly: a polarized body (Charge), or any other source, with the place of its sheet if it has
+// one.
+type Member struct {
+	Charge *Charge      // bound charge of a body, or nil
+	Source field.Source // what else makes the field, if Charge is nil
+	Sheet  geom.Sheet   // where that source is a charged sheet, or nil
+}
+
+// source returns what makes the field of the member.
+func (m *Member) source() field.Source {
+	if m.Charge != nil {
+		return m.Charge
+	}
+	return m.Source
+}
+
+// locate tells where x lies with respect to the member; a source without a place is nowhere.
+func (m *Member) locate(p field.Point) geom.Place {
+	switch {
+	case m.Charge != nil:
+		return m.Charge.body.Locate(p.X, p.Slack)
+	case m.Sheet != nil:
+		return m.Sheet.Locate(p.X, p.Slack)
+	}
+	return geom.Place{Face: -1}
+}
+
+// Assembly is several parts in one frame: a source whose sides are those of a place in space. A point on faces of several
+// parts takes its side from the first of them: Outside is where the outward normal of that part's face points (a sheet's
+// own normal), and every other part is evaluated for the same side of its own face.
+type Assembly []Member
+
+// Field returns g at x, the mean of both sides on a face.
+func (a Assembly) Field(x r3.Vec) r3.Vec {
+	var g r3.Vec
+	for i := range a {
+		g = r3.Add(g, a[i].source().Field(x))
+	}
+	return g
+}
+
+// Evaluate computes the arrays of dst; see field.Evaluator.
+func (a Assembly) Evaluate(dst *field.Values, at *field.Points, side field.Side) {
+	a.sum().Evaluate(dst, at, side)
+	if side == field.Mean {
+		return
+	}
+	for i := range at.Len() {
+		p := at.At(i)
+		way, faces := a.Way(p, side)
+		if faces < 2 {
+			continue
+		}
+		a.evaluateTowards(dst, at, i, way)
+	}
+}
+
+// Bounds returns a box that holds all charge.
+func (a Assembly) Bounds() r3.Box { return a.sum().Bounds() }
+
+func (a Assembly) sum() field.Sum {
+	s := make(field.Sum, len(a))
+	for i := range a {
+		s[i] = a[i].source()
+	}
+	return s
+}
+
+// Way returns the direction in which the wanted side of a point lies and on how many parts' faces the point is: zero where
+// the mean is wanted, or no part has a face there, or the first has an edge.
+func (a Assembly) Way(p field.Point, side field.Side) (way r3.Vec, faces int) {
+	for i := range a {
+		place := a[i].locate(p)
+		if place.Region != geom.On {
+			continue
+		}
+		if faces == 0 {
+			switch side {
+			case field.Inside:
+				way = r3.Scale(-1, place.Normal)
+			case field.Outside:
+				way = place.Normal
+			}
+		}
+		faces++
+	}
+	return way, faces
+}
+
+// sideTowards returns the side of a face with normal n that lies in the direction way.
+func sideTowards(n, way r3.Vec) field.Side {
+	switch d := r3.Dot(n, way); {
+	case d > 1e-9:
+		return field.Outside
+	case d < -1e-9:
+		return field.Inside
+	}
+	return field.Mean
+}
+
+// evaluateTowards evaluates one point that lies on faces of several parts.
+func (a Assembly) evaluateTowards(dst *field.Values, at *field.Points, i int, way r3.Vec) {
+	one := at.Slice(i, i+1)
+	p := at.At(i)
+	total := field.NewValues(1, dst.Want())
+	for k := range a {
+		side := field.Mean
+		if place := a[k].locate(p); place.Region == geom.On {
+			side = sideTowards(place.Normal, way)
+		}
+		part := field.NewValues(1, dst.Want())
+		field.Evaluate(a[k].source(), part, one, side)
+		total.Add(part)
+	}
+	dst.Set(i, total.At(0))
+}
+
+// Content returns the sum of the polarizations at a point, and the first part that contains it, -1 if none. On faces the
+// mean of both sides is taken, or the side wanted; NaN components on an edge, where more than two values meet.
+func (a Assembly) Content(p field.Point, side field.Side) (pol r3.Vec, inside int) {
+	inside = -1
+	var way r3.Vec
+	if side != field.Mean {
+		way, _ = a.Way(p, side)
+	}
+	for i := range a {
+		c := a[i].Charge
+		if c == nil {
+			continue
+		}
+		place := a[i].locate(p)
+		share := 0.0
+		switch place.Region {
+		case geom.Inside:
+			share = 1
+		case geom.On:
+			share = c.share(place, way)
+		}
+		if share == 0 {
+			continue
+		}
+		if inside < 0 && share == 1 {
+			inside = i
+		}
+		pol = r3.Add(pol, r3.Scale(share, c.Polarization(p.X)))
+	}
+	return pol, inside
+}
+
+// share returns how much of the polarization counts at a point of the surface.
+func (c *Charge) share(place geom.Place, way r3.Vec) float64 {
+	if place.Edge {
+		return math.NaN()
+	}
+	switch sideTowards(place.Normal, way) {
+	case field.Outside:
+		return 0
+	case field.Inside:
+		return 1
+	}
+	return 0.5
+}
+
+// Sample is what an assembly gives at a batch of points.
+type Sample struct {
+	Values *field.Values
+	P      []r3.Vec // sum of the polarizations there
+	Inside []int    // first part that contains the point, -1 if none
+}
+
+// Sample evaluates the assembly in a uniform field applied from outside, and the polarization at the points.
+func (a Assembly) Sample(at *field.Points, side field.Side, want field.Want, applied r3.Vec) Sample {
+	s := Sample{Values: field.NewValues(at.Len(), want|field.WantG), P: make([]r3.Vec, at.Len()), Inside: make([]int, at.Len())}
+	a.Evaluate(s.Values, at, side)
+	if applied != (r3.Vec{}) {
+		out := field.NewValues(at.Len(), want|field.WantG)
+		field.Constant{G: applied}.Evaluate(out, at, side)
+		s.Values.Add(out)
+	}
+	for i := range at.Len() {
+		s.P[i], s.Inside[i] = a.Content(at.At(i), side)
+		if math.IsNaN(s.P[i].X) {
+			s.Values.Status[i] = max(s.Values.Status[i], field.OnEdge)
+		}
+	}
+	return s
+}

@@ -1,0 +1,243 @@
+// Package bound turns a body and its polarization into bound charge: sigma = p.n on every face, rho = -div p in every
+// cell. The result is a field.Source, and it says what each face and cell carries.
+//
+// Units are natural (package field): densities in the unit of p, charges in that times length^2. Frame: that in which the
+// body is given; the polarization is in the body's own frame and turns with it if the body is placed (geom.At). Normals
+// point outward. Everything is immutable once built and safe for concurrent use.
+//
+// The package does not solve for induced polarization, and it does not give units to the result: see charge and magnet.
+package bound
+
+import (
+	"errors"
+	"fmt"
+	"math"
+
+	"example.com/boundpole/field"
+	"example.com/boundpole/field/element"
+	"example.com/boundpole/geom"
+	"example.com/boundpole/geom/pair"
+	"gonum.org/v1/gonum/spatial/r3"
+)
+
+// ErrUnsupported is wrapped by the error for a pair of body and polarization that has no integrator.
+var ErrUnsupported = errors.New("no integrator for this body and polarization")
+
+// Charge is the bound charge of one body.
+type Charge struct {
+	Layers     []Layer    // one a face, in the order of the body's faces
+	Volumes    []Volume   // one a cell
+	Moment     r3.Vec     // integral of p over the volume: the dipole moment
+	Identities []Identity // what must vanish, and how far it does
+
+	body   geom.Body // as given, perhaps placed
+	local  geom.Body // in its own frame
+	pose   geom.Pose
+	p      field.Affine
+	source field.Source // in the outer frame
+}
+
+// Layer is what one face carries.
+type Layer struct {
+	Face     geom.Face // in the outer frame
+	Area     float64
+	Charge   float64 // integral of sigma
+	Min, Max float64 // extremes of sigma over the face
+	Normal   r3.Vec  // outward unit normal if Plane, in the outer frame
+	Plane    bool
+}
+
+// Volume is what one cell carries.
+type Volume struct {
+	Cell     geom.Cell // in the outer frame
+	Size     float64
+	Charge   float64 // integral of rho
+	Min, Max float64 // extremes of rho over the cell
+}
+
+// Of returns the bound charge of a body with polarization p.
+//
+// It fails if the body's Check fails, if p is not finite, if the identities of bound charge do not hold (a face whose
+// normal points inward and a divergence that disagrees with p are named), or with ErrUnsupported.
+// Bodies with plane faces take uniform and affine polarization; cylinders and tubes uniform polarization whose axial part
+// may grow linearly along the axis; spheres, hollow spheres and ellipsoids uniform polarization.
+func Of(body geom.Body, p field.Polarization) (*Charge, error) {
+	if body == nil || p == nil {
+		return nil, errors.New("bound: body or polarization is nil; give both")
+	}
+	if err := body.Check(); err != nil {
+		return nil, err
+	}
+	a, err := affine(p)
+	if err != nil {
+		return nil, err
+	}
+	c := &Charge{body: body, local: body, p: a}
+	if at, ok := body.(geom.Placed); ok {
+		c.local, c.pose = at.Body, at.Pose
+	}
+	if err := c.fill(); err != nil {
+		return nil, err
+	}
+	src, err := evaluator(c.local, a)
+	if err != nil {
+		return nil, err
+	}
+	if _, ok := body.(geom.Placed); ok {
+		src = field.Posed{Source: src, Pose: c.pose}
+	}
+	c.source = src
+	return c, nil
+}
+
+// affine returns p as value and gradient.
+func affine(p field.Polarization) (field.Affine, error) {
+	var a field.Affine
+	switch q := p.(type) {
+	case field.Uniform:
+		a.Value = q.P
+	case field.Affine:
+		a = q
+	case field.Times:
+		b, err := affine(q.Polarization)
+		if err != nil {
+			return a, err
+		}
+		a = b
+		a.Value = r3.Scale(q.Factor, b.Value)
+		for i := range a.Gradient {
+			for j := range a.Gradient[i] {
+				a.Gradient[i][j] *= q.Factor
+			}
+		}
+	default:
+		return a, fmt.Errorf("bound: polarization of type %T: %w; give field.Uniform or field.Affine", p, ErrUnsupported)
+	}
+	sum := a.Value.X + a.Value.Y + a.Value.Z + a.About.X + a.About.Y + a.About.Z
+	for _, row := range a.Gradient {
+		sum += row[0] + row[1] + row[2]
+	}
+	if math.IsNaN(sum) || math.IsInf(sum, 0) {
+		return a, fmt.Errorf("bound: polarization %+v is not finite; give finite components", p)
+	}
+	return a, nil
+}
+
+// evaluator chooses how the field of a body in its own frame is computed: the one place where that is decided.
+func evaluator(body geom.Body, p field.Affine) (field.Source, error) {
+	at0 := p.At(r3.Vec{})
+	uniform := p.Gradient == [3][3]float64{}
+	slope := p.Gradient[2][2]
+	axial := p.Gradient
+	axial[2][2] = 0
+	switch b := body.(type) {
+	case geom.Flat:
+		return element.NewPolyhedron(b.Polyhedron(), p), nil
+	case geom.Cylinder:
+		if axial == [3][3]float64{} {
+			return element.NewCylinder(b, at0, slope)
+		}
+	case geom.Tube:
+		if axial == [3][3]float64{} {
+			return element.NewTube(b, at0, slope)
+		}
+	case geom.Sphere:
+		if uniform {
+			return element.Sphere{Shape: b, P: p.Value}, nil
+		}
+	case geom.HollowSphere:
+		if uniform {
+			return element.HollowSphere{Shape: b, P: p.Value}, nil
+		}
+	case geom.Ellipsoid:
+		if uniform {
+			return element.NewEllipsoid(b, p.Value)
+		}
+	default:
+		return nil, fmt.Errorf("bound: body of type %T: %w; give a body of package geom", body, ErrUnsupported)
+	}
+	return nil, fmt.Errorf("bound: affine polarization on a %s: %w yet; give a uniform polarization%s", shapeName(body),
+		ErrUnsupported, alongAxis(body))
+}
+
+func shapeName(body geom.Body) string {
+	switch body.(type) {
+	case geom.Cylinder:
+		return "cylinder"
+	case geom.Tube:
+		return "tube"
+	case geom.Sphere:
+		return "sphere"
+	case geom.HollowSphere:
+		return "hollow sphere"
+	case geom.Ellipsoid:
+		return "ellipsoid"
+	}
+	return "body"
+}
+
+func alongAxis(body geom.Body) string {
+	switch body.(type) {
+	case geom.Cylinder, geom.Tube:
+		return ", or one whose z component alone grows along z"
+	}
+	return ""
+}
+
+// Body returns the body as it was given.
+func (c *Charge) Body() geom.Body { return c.body }
+
+// Polarization returns p at a point of the outer frame, continued outside the body.
+func (c *Charge) Polarization(x pair.Vec) r3.Vec {
+	return c.pose.VectorToOuter(c.p.At(c.pose.ToLocal(x).Value()))
+}
+
+// Density returns sigma of a layer at a point of its face with outward normal n, in the outer frame.
+func (c *Charge) Density(x, n r3.Vec) float64 { return r3.Dot(c.Polarization(pair.VecOf(x)), n) }
+
+// Field returns g at x.
+func (c *Charge) Field(x r3.Vec) r3.Vec { return c.source.Field(x) }
+
+// Evaluate computes the arrays of dst; see field.Evaluator.
+func (c *Charge) Evaluate(dst *field.Values, at *field.Points, side field.Side) {
+	field.Evaluate(c.source, dst, at, side)
+}
+
+// Bounds returns the box of the body.
+func (c *Charge) Bounds() r3.Box { return c.body.Bounds() }
+
+// Total returns the sum of all charges: zero, for bound charge.
+func (c *Charge) Total() float64 {
+	var q, size float64
+	for _, l := range c.Layers {
+		q, size = q+l.Charge, size+math.Abs(l.Charge)
+	}
+	for _, v := range c.Volumes {
+		q, size = q+v.Charge, size+math.Abs(v.Charge)
+	}
+	return clean(q, size)
+}
+
+// Expand returns the multipole expansion about a centre, up to an order between 1 and 40, from the dipole density.
+func (c *Charge) Expand(centre r3.Vec, order int) *field.Moments {
+	order = min(max(order, 1), 40)
+	m := field.NewMoments(centre, reach(c.body.Bounds(), centre), order)
+	for _, v := range c.Volumes {
+		v.Cell.Nodes(order/2+2, func(x r3.Vec, w float64) { m.AddDipole(x, r3.Scale(w, c.Polarization(pair.VecOf(x)))) })
+	}
+	return m
+}
+
+// reach returns the greatest distance of the box from a point.
+func reach(b r3.Box, c r3.Vec) float64 {
+	far := func(lo, hi, c float64) float64 { return max(math.Abs(lo-c), math.Abs(hi-c)) }
+	return r3.Norm(r3.Vec{X: far(b.Min.X, b.Max.X, c.X), Y: far(b.Min.Y, b.Max.Y, c.Y), Z: far(b.Min.Z, b.Max.Z, c.Z)})
+}
+
+// clean returns exactly zero for what only rounding has left of a sum whose terms have the magnitude size.
+func clean(q, size float64) float64 {
+	if math.Abs(q) <= 64*0x1p-53*size {
+		return 0
+	}
+	return q
+}
