@@ -42,8 +42,13 @@ func (f *facets) near(p field.Point, side field.Side, want field.Want, w facetRo
 		tol: f.tolerance(p),
 	}
 	for i := range f.verts {
-		w.a[i] = offset(&f.verts[i], &sum.x)
-		w.r[i] = math.Sqrt(r3.Dot(w.a[i], w.a[i]))
+		v := &f.verts[i]
+		a := r3.Vec{X: offset(v.X, sum.x.X), Y: offset(v.Y, sum.x.Y), Z: offset(v.Z, sum.x.Z)}
+		w.a[i], w.r[i] = a, math.Sqrt(a.X*a.X+a.Y*a.Y+a.Z*a.Z)
+	}
+	together, ok := f.bundled(&w, &sum)
+	if ok && want == field.WantG {
+		return field.Value{G: r3.Scale(0.25/math.Pi, together)}
 	}
 	for i := range f.edges {
 		f.edgeLog(i, &w, &sum, want)
@@ -53,6 +58,9 @@ func (f *facets) near(p field.Point, side field.Side, want field.Want, w facetRo
 		if q.charged || f.rho != 0 {
 			f.addFacet(q, &w, &sum, side)
 		}
+	}
+	if ok {
+		sum.g = together
 	}
 	v := f.finish(&sum, want)
 	if want&field.WantGrad != 0 {
@@ -74,11 +82,7 @@ func (f *facets) finishGradient(v *field.Value, w *facetRoom, sum *facetSums, si
 }
 
 // offset returns v - x rounded once.
-func offset(v, x *pair.Vec) r3.Vec {
-	return r3.Vec{X: offset1(v.X, x.X), Y: offset1(v.Y, x.Y), Z: offset1(v.Z, x.Z)}
-}
-
-func offset1(v, x pair.Float) float64 {
+func offset(v, x pair.Float) float64 {
 	d := pair.Sum(v.Hi, -x.Hi)
 	return d.Hi + (d.Lo + (v.Lo - x.Lo))
 }
@@ -227,15 +231,7 @@ func (f *facets) away(q *facet, h float64, sum *facetSums) bool {
 
 // fanAngle returns the solid angle as one arctangent of the product over the triangles of the fan [VanOosterom1983].
 func (q *facet) fanAngle(h float64, w *facetRoom) float64 {
-	re, im := 1.0, 0.0
-	turns := 0.0
-	for k, t := range q.fan {
-		a, b, c := w.a[t[0]], w.a[t[1]], w.a[t[2]]
-		ra, rb, rc := w.r[t[0]], w.r[t[1]], w.r[t[2]]
-		num := h * q.twice[k]
-		den := ra*rb*rc + r3.Dot(a, b)*rc + r3.Dot(a, c)*rb + r3.Dot(b, c)*ra
-		re, im, turns = turn(re, im, den, num, turns)
-	}
+	re, im, turns := q.fanFactor(h, w, 1, 0, 0)
 	return 2 * (logatan.Atan2(im, re) + turns)
 }
 

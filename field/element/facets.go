@@ -30,13 +30,16 @@ type facets struct {
 	unit   float64 // power of two near the size; everything below is in this unit
 	size   float64 // bounding radius about centre
 	centre r3.Vec
-	bounds r3.Box // in the caller's unit
+	bounds r3.Box  // in the caller's unit
+	extent float64 // |centre| + half diagonal, in the caller's unit
 	verts  []pair.Vec
 	edges  []facetEdge
 	faces  []facet
 	rho    float64
 	linear bool    // some gamma or rho is not zero
 	dense  float64 // largest |sigma| on a face
+
+	edgeBundles, faceBundles []bundle
 }
 
 // facetEdge is an edge and what it contributes whatever the position of x.
@@ -87,6 +90,7 @@ type facetSpec struct {
 func newFacets(verts []pair.Vec, specs []facetSpec, rho float64) *facets {
 	f := &facets{bounds: boxOf(verts), rho: rho}
 	half := r3.Scale(0.5, r3.Sub(f.bounds.Max, f.bounds.Min))
+	f.extent = geom.OnTolerance(f.bounds, r3.Vec{}, 0) / (4 * 0x1p-53)
 	f.unit = math.Ldexp(1, math.Ilogb(r3.Norm(half)))
 	s := 1 / f.unit
 	f.rho *= f.unit
@@ -105,6 +109,7 @@ func newFacets(verts []pair.Vec, specs []facetSpec, rho float64) *facets {
 	for i := range f.edges {
 		f.finishEdge(&f.edges[i])
 	}
+	f.setBundles()
 	return f
 }
 
@@ -239,7 +244,9 @@ func (f *facets) value(p field.Point, side field.Side, want field.Want) field.Va
 	return f.near(p, side, want, *room)
 }
 
-// tolerance is the distance, in units of f.unit, below which p counts as on a face.
+// tolerance is the distance, in units of f.unit, below which p counts as on a face: geom.OnTolerance with the norms of the
+// bounds taken once.
 func (f *facets) tolerance(p field.Point) float64 {
-	return geom.OnTolerance(f.bounds, p.X.Value(), p.Slack) / f.unit
+	x := r3.Vec{X: p.X.X.Hi, Y: p.X.Y.Hi, Z: p.X.Z.Hi}
+	return (p.Slack + 4*0x1p-53*(math.Sqrt(r3.Norm2(x))+f.extent)) / f.unit
 }

@@ -1,7 +1,6 @@
 package element
 
 import (
-	"math"
 	"sync"
 
 	"example.com/boundpole/field"
@@ -145,10 +144,10 @@ type farField struct {
 
 // covers reports whether the expansion is to be used at p.
 func (f *farField) covers(p field.Point) bool {
-	c := r3.Scale(f.flat.unit, f.flat.centre)
-	d := r3.Sub(p.X.Value(), c)
-	limit := f.reach * f.flat.size * f.flat.unit
-	return math.Hypot(math.Hypot(d.X, d.Y), d.Z) > limit
+	c, s := &f.flat.centre, 1/f.flat.unit
+	x, y, z := p.X.X.Hi*s-c.X, p.X.Y.Hi*s-c.Y, p.X.Z.Hi*s-c.Z
+	limit := f.reach * f.flat.size
+	return x*x+y*y+z*z > limit*limit
 }
 
 func (f *farField) moments() *field.Moments {
