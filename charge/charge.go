@@ -28,6 +28,9 @@ import (
 // Epsilon0 is the vacuum permittivity in F/m, CODATA 2022.
 const Epsilon0 = codata.Epsilon0
 
+// Part is a polarized body, a charged sheet or another source of electric field.
+type Part = bound.Member
+
 // Reading is the electric field at a point.
 type Reading struct {
 	V          float64 // V; that of an applied field is zero at the origin
@@ -51,22 +54,22 @@ type Model struct {
 }
 
 // Polarized returns a body with polarization p in C/m^2, given in the body's own frame.
-func Polarized(body geom.Body, p field.Polarization) (bound.Member, error) {
+func Polarized(body geom.Body, p field.Polarization) (Part, error) {
 	c, err := bound.Of(body, p)
-	return bound.Member{Charge: c}, err
+	return Part{Charge: c}, err
 }
 
 // Sheet returns a sheet with the trapped charge density + gradient.x, in C/m^2 and C/m^3, x in the sheet's own frame.
 // Gradients need a polygon so far; on a disc or annulus they are refused with bound.ErrUnsupported.
-func Sheet(sheet geom.Sheet, density float64, gradient r3.Vec) (bound.Member, error) {
+func Sheet(sheet geom.Sheet, density float64, gradient r3.Vec) (Part, error) {
 	if err := sheet.Check(); err != nil {
-		return bound.Member{}, err
+		return Part{}, err
 	}
 	if s := density + gradient.X + gradient.Y + gradient.Z; math.IsNaN(s) || math.IsInf(s, 0) {
-		return bound.Member{}, fmt.Errorf("charge: density %v with gradient %v is not finite; give finite numbers", density, gradient)
+		return Part{}, fmt.Errorf("charge: density %v with gradient %v is not finite; give finite numbers", density, gradient)
 	}
 	src, err := onSheet(sheet, density, gradient)
-	return bound.Member{Source: src, Sheet: sheet}, err
+	return Part{Source: src, Sheet: sheet}, err
 }
 
 func onSheet(sheet geom.Sheet, density float64, gradient r3.Vec) (field.Source, error) {
@@ -90,13 +93,13 @@ func onSheet(sheet geom.Sheet, density float64, gradient r3.Vec) (field.Source, 
 }
 
 // Point returns a point charge of q coulombs at x.
-func Point(x r3.Vec, q float64) bound.Member {
-	return bound.Member{Source: element.Point{At: x, Charge: q}}
+func Point(x r3.Vec, q float64) Part {
+	return Part{Source: element.Point{At: x, Charge: q}}
 }
 
 // Dipole returns a point dipole of p coulomb metres at x.
-func Dipole(x, p r3.Vec) bound.Member {
-	return bound.Member{Source: element.Dipole{At: x, Moment: p}}
+func Dipole(x, p r3.Vec) Part {
+	return Part{Source: element.Dipole{At: x, Moment: p}}
 }
 
 // Field returns E at x in V/m: a Model is a source of its own.

@@ -27,6 +27,9 @@ import (
 // Mu0 is the vacuum permeability in H/m, CODATA 2022.
 const Mu0 = codata.Mu0
 
+// Part is a magnetized body or another source of magnetic field.
+type Part = bound.Member
+
 // Reading is the magnetic field at a point.
 type Reading struct {
 	Vm          float64 // A; that of an applied field is zero at the origin
@@ -53,24 +56,24 @@ type Model struct {
 func Remanence(j r3.Vec) r3.Vec { return r3.Scale(1/Mu0, j) }
 
 // Magnetized returns a body with magnetization m in A/m, given in the body's own frame.
-func Magnetized(body geom.Body, m field.Polarization) (bound.Member, error) {
+func Magnetized(body geom.Body, m field.Polarization) (Part, error) {
 	c, err := bound.Of(body, m)
-	return bound.Member{Charge: c}, err
+	return Part{Charge: c}, err
 }
 
 // WithRemanence returns a body with the uniform magnetic polarization j in tesla, given in the body's own frame.
-func WithRemanence(body geom.Body, j r3.Vec) (bound.Member, error) {
+func WithRemanence(body geom.Body, j r3.Vec) (Part, error) {
 	return Magnetized(body, field.Uniform{P: Remanence(j)})
 }
 
 // Dipole returns a point dipole of m ampere square metres at x.
-func Dipole(x, m r3.Vec) bound.Member {
-	return bound.Member{Source: element.Dipole{At: x, Moment: m}}
+func Dipole(x, m r3.Vec) Part {
+	return Part{Source: element.Dipole{At: x, Moment: m}}
 }
 
 // Pole returns a point pole of strength q ampere metres at x: half of a pair, for the idealization of a long thin bar.
-func Pole(x r3.Vec, q float64) bound.Member {
-	return bound.Member{Source: element.Point{At: x, Charge: q}}
+func Pole(x r3.Vec, q float64) Part {
+	return Part{Source: element.Point{At: x, Charge: q}}
 }
 
 // PoleFlux returns the flux in webers that belongs to a pole strength in ampere metres.
