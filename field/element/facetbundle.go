@@ -53,7 +53,7 @@ func join(all []bundle, v r3.Vec, i int, size float64) []bundle {
 
 // bundled returns 4 pi g where x is away from every charged face; ok is false elsewhere.
 func (f *facets) bundled(w *facetRoom, sum *facetSums) (g r3.Vec, ok bool) {
-	if f.linear {
+	if f.edgeBundles == nil {
 		return g, false
 	}
 	x := sum.x.Value()
