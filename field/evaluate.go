@@ -131,7 +131,7 @@ func (s Posed) Evaluate(dst *Values, at *Points, side Side) {
 	work := scratches.Get().(*scratch)
 	defer scratches.Put(work)
 	m := s.Pose.Matrix()
-	shift := r3.Norm(s.Pose.Shift().Value())
+	shift := r3.Norm(s.Pose.Origin().Value())
 	for lo := 0; lo < at.Len(); lo += chunk {
 		hi := min(lo+chunk, at.Len())
 		local := work.local(s.Pose, shift, at, lo, hi)

@@ -22,6 +22,9 @@ type Pose struct {
 // Translate returns the pose that moves by d, exactly. Units: length.
 func Translate(d r3.Vec) Pose { return Pose{shift: pair.VecOf(d)} }
 
+// Shift returns the pose that moves by d, exactly.
+func Shift(d pair.Vec) Pose { return Pose{shift: d} }
+
 // Turn returns the right-handed rotation by an angle in degrees about an axis of any length through the origin.
 // Multiples of 90 degrees about a frame axis are exact.
 func Turn(axis r3.Vec, degrees float64) (Pose, error) {
@@ -156,8 +159,8 @@ func (p Pose) Matrix() [3][3]float64 {
 // Turned reports whether the pose has a rotation part.
 func (p Pose) Turned() bool { return p.turned }
 
-// Shift returns the translation: where the frame's origin stands.
-func (p Pose) Shift() pair.Vec { return p.shift }
+// Origin returns where the frame's origin stands in the outer frame.
+func (p Pose) Origin() pair.Vec { return p.shift }
 
 func transpose(m [3]pair.Vec) [3]pair.Vec {
 	return [3]pair.Vec{

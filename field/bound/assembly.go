@@ -57,11 +57,9 @@ func (a Assembly) Evaluate(dst *field.Values, at *field.Points, side field.Side)
 	}
 	for i := range at.Len() {
 		p := at.At(i)
-		way, faces := a.Way(p, side)
-		if faces < 2 {
-			continue
+		if way, faces := a.Way(p, side); faces > 1 {
+			dst.Set(i, a.towards(p, way, dst.Want()))
 		}
-		a.evaluateTowards(dst, at, i, way)
 	}
 }
 
@@ -76,9 +74,12 @@ func (a Assembly) sum() field.Sum {
 	return s
 }
 
-// Way returns the direction in which the wanted side of a point lies and on how many parts' faces the point is: zero where
-// the mean is wanted, or no part has a face there, or the first has an edge.
+// Way returns the direction in which the wanted side of a point lies and on how many parts' faces the point is. The
+// direction is zero where the mean is wanted, where no part has a face there, or where the first has an edge.
 func (a Assembly) Way(p field.Point, side field.Side) (way r3.Vec, faces int) {
+	if side == field.Mean {
+		return way, 0
+	}
 	for i := range a {
 		place := a[i].locate(p)
 		if place.Region != geom.On {
@@ -108,31 +109,33 @@ func sideTowards(n, way r3.Vec) field.Side {
 	return field.Mean
 }
 
-// evaluateTowards evaluates one point that lies on faces of several parts.
-func (a Assembly) evaluateTowards(dst *field.Values, at *field.Points, i int, way r3.Vec) {
-	one := at.Slice(i, i+1)
-	p := at.At(i)
-	total := field.NewValues(1, dst.Want())
+// towards evaluates one point for the side that lies in the direction way, on every part that has a face there.
+func (a Assembly) towards(p field.Point, way r3.Vec, want field.Want) field.Value {
+	at := &field.Points{
+		X: []float64{p.X.X.Hi}, Y: []float64{p.X.Y.Hi}, Z: []float64{p.X.Z.Hi},
+		XLo: []float64{p.X.X.Lo}, YLo: []float64{p.X.Y.Lo}, ZLo: []float64{p.X.Z.Lo}, Slack: []float64{p.Slack},
+	}
+	total, part := field.NewValues(1, want), field.NewValues(1, want)
 	for k := range a {
 		side := field.Mean
 		if place := a[k].locate(p); place.Region == geom.On {
 			side = sideTowards(place.Normal, way)
 		}
-		part := field.NewValues(1, dst.Want())
-		field.Evaluate(a[k].source(), part, one, side)
+		field.Evaluate(a[k].source(), part, at, side)
 		total.Add(part)
 	}
-	dst.Set(i, total.At(0))
+	return total.At(0)
 }
 
 // Content returns the sum of the polarizations at a point, and the first part that contains it, -1 if none. On faces the
 // mean of both sides is taken, or the side wanted; NaN components on an edge, where more than two values meet.
 func (a Assembly) Content(p field.Point, side field.Side) (pol r3.Vec, inside int) {
+	way, _ := a.Way(p, side)
+	return a.contentTowards(p, way)
+}
+
+func (a Assembly) contentTowards(p field.Point, way r3.Vec) (pol r3.Vec, inside int) {
 	inside = -1
-	var way r3.Vec
-	if side != field.Mean {
-		way, _ = a.Way(p, side)
-	}
 	for i := range a {
 		c := a[i].Charge
 		if c == nil {
@@ -194,4 +197,17 @@ func (a Assembly) Sample(at *field.Points, side field.Side, want field.Want, app
 		}
 	}
 	return s
+}
+
+// Towards puts at point i what holds on the side that lies in the direction way, for a place where parts outside this
+// assembly decide which side that is; way zero is the mean.
+func (s *Sample) Towards(a Assembly, i int, p field.Point, way, applied r3.Vec) {
+	v := a.towards(p, way, s.Values.Want())
+	v.G = r3.Add(v.G, applied)
+	v.Phi -= r3.Dot(applied, p.X.Value())
+	s.P[i], s.Inside[i] = a.contentTowards(p, way)
+	if math.IsNaN(s.P[i].X) {
+		v.Status = max(v.Status, field.OnEdge)
+	}
+	s.Values.Set(i, v)
 }

@@ -12,6 +12,7 @@ import (
 	"errors"
 	"fmt"
 	"math"
+	"slices"
 
 	"example.com/boundpole/field"
 	"example.com/boundpole/field/element"
@@ -34,6 +35,7 @@ type Charge struct {
 	local  geom.Body // in its own frame
 	pose   geom.Pose
 	p      field.Affine
+	own    field.Source // in the body's own frame
 	source field.Source // in the outer frame
 }
 
@@ -79,15 +81,32 @@ func Of(body geom.Body, p field.Polarization) (*Charge, error) {
 	if err := c.fill(); err != nil {
 		return nil, err
 	}
-	src, err := evaluator(c.local, a)
+	c.own, err = evaluator(c.local, a)
 	if err != nil {
 		return nil, err
 	}
+	c.source = c.own
 	if _, ok := body.(geom.Placed); ok {
-		src = field.Posed{Source: src, Pose: c.pose}
+		c.source = field.Posed{Source: c.own, Pose: c.pose}
 	}
-	c.source = src
 	return c, nil
+}
+
+// At returns the same charge with its body moved by a pose, without building it anew.
+func (c *Charge) At(pose geom.Pose) *Charge {
+	d := *c
+	d.body, d.pose = geom.At(c.body, pose), c.pose.Then(pose)
+	d.source = field.Posed{Source: c.own, Pose: d.pose}
+	d.Moment = pose.VectorToOuter(c.Moment)
+	d.Layers, d.Volumes = slices.Clone(c.Layers), slices.Clone(c.Volumes)
+	for i, f := range d.body.Faces() {
+		d.Layers[i].Face = f
+		d.Layers[i].Normal = pose.VectorToOuter(c.Layers[i].Normal)
+	}
+	for i, cell := range d.body.Cells() {
+		d.Volumes[i].Cell = cell
+	}
+	return &d
 }
 
 // affine returns p as value and gradient.

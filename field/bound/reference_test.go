@@ -55,7 +55,7 @@ func referenceBody(t *testing.T, c *refcase.Case) (body geom.Body, p field.Affin
 			t.Fatal(err)
 		}
 		global := field.Affine{Value: refcase.Vec(q.P0), Gradient: g}
-		p.Value = pose.VectorToLocal(global.At(pose.Shift().Value()))
+		p.Value = pose.VectorToLocal(global.At(pose.Origin().Value()))
 		m := pose.Matrix()
 		for i := range 9 {
 			for j := range 9 {
