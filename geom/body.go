@@ -2,7 +2,8 @@
 //
 // Units: lengths are in one unit of the caller's choice. Frames are right-handed; a body stands in its own frame and At
 // places it. Normals of a body point outward. Bodies are plain structs without constructors; Check says whether the
-// numbers describe a body, and bound.Of calls it. Values are immutable once in use and safe for concurrent use.
+// numbers describe a body, and bound.Of calls it; the other methods expect a body that passes. Values are immutable
+// once in use and safe for concurrent use. Lengths are between 1e-60 and 1e60 units.
 //
 // Positions are taken as pairs of float64 (package pair), so that a point is told inside from outside exactly.
 //
@@ -27,7 +28,7 @@ const (
 // Place is where a point lies: the region and, for a point on the surface, which face it is on.
 type Place struct {
 	Region Region
-	Face   int    // index into Faces of the face the point is on, -1 if on none
+	Face   int    // index into Faces of the face the point is on, -1 if on none or on an edge
 	Normal r3.Vec // outward unit normal of that face at the point
 	Edge   bool   // the point is on an edge, rim, vertex or tip: several normals, and Normal is zero
 }
@@ -55,7 +56,7 @@ type Body interface {
 	SecondMoment() [3][3]float64
 	// Locate tells where x lies; slack widens what counts as on the surface, see OnTolerance.
 	Locate(x pair.Vec, slack float64) Place
-	// Faces returns the oriented faces that bound the body, in the order of the names in the package documentation.
+	// Faces returns the oriented faces that bound the body, in the order that the documentation of the type names.
 	Faces() []Face
 	// Cells returns inner cells that fill the body.
 	Cells() []Cell

@@ -10,8 +10,8 @@ import "math"
 // Domain: a, L > 0, all finite. NaN otherwise.
 // Singular: nowhere; kinks at the faces.
 // Accuracy: relative error <= 2e-15 (worst 5.6e-16 of 22 points, TestReference).
-// Source: [Jackson1999] problem 5.19, two charged discs; the difference factored by
-// CylinderAxisPotential's two heights so that nothing cancels far away.
+// Source: [Jackson1999] problem 5.19, two charged discs; the difference is
+// rationalized so that nothing cancels far away.
 func CylinderAxisPotential(p, a, L, z float64) float64 {
 	if !finite(p, z) || !positive(a, L) {
 		return math.NaN()

@@ -28,8 +28,9 @@ func CylinderCentreFactor(a, L float64) float64 {
 // Domain: a, L > 0. NaN otherwise.
 // Singular: nowhere.
 // Accuracy: relative error <= 5e-15 (worst 1.5e-15 of 66 points, TestReference).
-// Source: one minus the coefficient of [Nagaoka1909]; values in [Chen1991]; for c >= 1
-// by the energy of the two end discs, (4/(3 pi) - int J1^2 exp(-2cx) dx/x^2)/c.
+// Source: one minus the coefficient of [Nagaoka1909]; values in [Chen1991]; series of
+// [Lundin1985] for long ones; for c >= 1 by the energy of the two end discs,
+// (4/(3 pi) - int J1^2 exp(-2cx) dx/x^2)/c.
 func CylinderMagnetometricFactor(a, L float64) float64 {
 	if !positive(a, L) {
 		return math.NaN()

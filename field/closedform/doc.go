@@ -36,9 +36,9 @@
 // tensor or a list of results it is the norm of the error over the norm of the
 // result. The figure in parentheses is the worst one measured against
 // testdata/reference.json, computed in 40 digits from a defining integral or
-// another formulation; TestReference reads the bound from the comment and holds
-// the function to it. Lengths from 1e-70 to 1e70
-// are safe from overflow and underflow; beyond, nothing is claimed.
+// another formulation (for the plainest laws from the law itself); TestReference
+// reads the bound from the comment and holds the function to it. Lengths from
+// 1e-69 to 1e69 are safe from overflow and underflow; beyond, nothing is claimed.
 //
 // All functions are pure and may be called from any number of goroutines. No
 // bit-for-bit promise is made between processor architectures. The package

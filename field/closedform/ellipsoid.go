@@ -105,7 +105,7 @@ func EllipsoidInnerField(p, s r3.Vec) r3.Vec {
 //
 // Units: those of p.
 // Frame: principal axes along x, y, z.
-// Domain: semi-axes finite and positive, s_x < |x| < 1e30 times the longest semi-axis. NaN otherwise.
+// Domain: semi-axes finite and positive, |x| > s_x, all finite. NaN otherwise.
 // Singular: nowhere outside; the limit on the surface is (1 - N_x) p.
 // Accuracy: relative error <= 1e-15 (worst 3.2e-16 of 8 points, TestReference).
 // Source: [Stratton1941] section 3.27; Carlson's form, https://dlmf.nist.gov/19.33.E8 [DLMF].

@@ -54,6 +54,11 @@ func TestDoc(t *testing.T) {
 			}
 		}
 	}
+	for _, k := range key.FindAllString(pkg, -1) {
+		if !cited[k] {
+			t.Errorf("reference %s is cited by no function", k)
+		}
+	}
 	for name := range catalogue {
 		if funcs[name] == "" {
 			t.Errorf("%s: listed in the tests, not exported by the package", name)

@@ -92,7 +92,7 @@ func (f *flatRing) bounds() r3.Box {
 func (f *flatRing) value(x field.Point, side field.Side, want field.Want) field.Value {
 	p := newRoundPoint(x, f.level, f.outer)
 	if f.far.far(&p) {
-		c, k := f.far.sum(&p, want&field.WantGrad != 0)
+		c, k := f.far.sum(&p, want)
 		return p.value(&c, &k, r3.Vec{}, want)
 	}
 	status := f.place(&p)
@@ -117,7 +117,7 @@ func (f *flatRing) place(p *roundPoint) field.Status {
 		out = max(out, p.inward(f.inner))
 	}
 	switch h := p.height(f.level); {
-	case math.Hypot(h, max(0, out)) > p.tol:
+	case max(math.Abs(h), out) > p.tol || math.Hypot(h, max(0, out)) > p.tol:
 		return field.Regular
 	case out >= -p.tol:
 		return field.OnEdge
@@ -127,7 +127,16 @@ func (f *flatRing) place(p *roundPoint) field.Status {
 
 // near is the closed form; h is the side of the plane.
 func (f *flatRing) near(p *roundPoint, h float64, want field.Want) field.Value {
-	s := p.annulus(f.inner, f.outer, f.level, h, needsOf(want))
+	var s sheet
+	o := p.rim(f.outer, f.level)
+	o.sign = h
+	if f.inner == 0 {
+		s = o.disc(needsOf(want))
+	} else {
+		i := p.rim(f.inner, f.level)
+		i.sign = h
+		s = annulus(&o, &i, needsOf(want))
+	}
 	var c constant
 	c.add(&s, f.density)
 	return p.value(&c, &cosine{}, r3.Vec{}, want)

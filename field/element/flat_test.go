@@ -50,7 +50,7 @@ func localAffine(t *testing.T, c *refcase.Case, pose geom.Pose) field.Affine {
 		t.Fatal(err)
 	}
 	global := field.Affine{Value: refcase.Vec(c.Polarization.P0), Gradient: g}
-	p := field.Affine{Value: pose.VectorToLocal(global.At(pose.Shift().Value()))}
+	p := field.Affine{Value: pose.VectorToLocal(global.At(pose.Origin().Value()))}
 	m := pose.Matrix()
 	for i := range 3 {
 		for j := range 3 {

@@ -37,12 +37,12 @@ func newRoundPoint(p field.Point, centre, bound float64) roundPoint {
 	if q.rho > 0 {
 		q.e = r3.Vec{X: x.Hi / q.rho, Y: y.Hi / q.rho}
 	}
-	h := q.height(centre)
+	h, z := q.height(centre), p.X.Z.Hi
 	q.reach = math.Sqrt(q.rho*q.rho + h*h)
-	if !(q.reach < 1e150) {
-		q.reach = math.Hypot(q.rho, h)
+	away := math.Sqrt(q.rho*q.rho + z*z)
+	if !(q.reach < 1e150 && away < 1e150) {
+		q.reach, away = math.Hypot(q.rho, h), math.Hypot(q.rho, z)
 	}
-	away := math.Hypot(q.rho, p.X.Z.Hi)
 	q.tol = p.Slack + 4*u*(away+math.Abs(centre)+bound)
 	return q
 }
@@ -88,7 +88,7 @@ func (p *roundPoint) value(c *constant, k *cosine, t r3.Vec, want field.Want) fi
 	}
 	if want&field.WantErr != 0 {
 		tn := math.Hypot(t.X, t.Y)
-		v.ErrPhi = over4P*rounding*u*(c.sizeU+math.Abs(te)*p.rho*k.sizeS) + 3*u*math.Abs(v.Phi) + 8*u*u*p.reach*r3.Norm(v.G)
+		v.ErrPhi = over4P*u*(rounding*(c.sizeU+math.Abs(te)*p.rho*k.sizeS)+3*tn*p.rho*k.sizeS) + 3*u*math.Abs(v.Phi) + 8*u*u*p.reach*r3.Norm(v.G)
 		v.ErrG = over4P*rounding*u*(c.sizeG+tn*k.sizeG) + 4*u*r3.Norm(v.G)
 		v.ErrGrad = over4P * 2 * rounding * u * (c.sizeH + tn*k.sizeH)
 	}

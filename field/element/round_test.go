@@ -4,6 +4,7 @@ import (
 	"encoding/json"
 	"math"
 	"os"
+	"slices"
 	"testing"
 
 	"example.com/boundpole/field"
@@ -31,7 +32,6 @@ type roundCase struct {
 	Points [][3]float64
 	Phi    []string
 	G      [][3]string
-	Region []string
 	Tags   []string
 }
 
@@ -89,7 +89,7 @@ func roundAt(src field.Evaluator, pose geom.Pose, x r3.Vec, size float64, side f
 	p := field.Points{X: []float64{h.X}, Y: []float64{h.Y}, Z: []float64{h.Z}}
 	if pose.Turned() {
 		p.XLo, p.YLo, p.ZLo = []float64{o.X}, []float64{o.Y}, []float64{o.Z}
-		p.Slack = []float64{4 * u * (r3.Norm(x) + r3.Norm(pose.Shift().Value()) + size)}
+		p.Slack = []float64{4 * u * (r3.Norm(x) + r3.Norm(pose.Origin().Value()) + size)}
 	}
 	v := field.NewValues(1, want)
 	src.Evaluate(v, &p, side)
@@ -111,69 +111,66 @@ func loadRound(t *testing.T, path string) []roundCase {
 	return cases
 }
 
+// TestRoundReference holds potential, field and estimates against reference values, by the contract: an error is at
+// most 1e-12 of the value or 1e-15 of what the density could give there. Compact sources must do ten times better.
 func TestRoundReference(t *testing.T) {
-	path := "testdata/round.json"
-	if s := os.Getenv("ROUND"); s != "" {
-		path = s
-	}
-	for _, c := range loadRound(t, path) {
+	var over []float64
+	under, claims := 0, 0
+	for _, c := range loadRound(t, "testdata/round.json") {
 		src, pose, a, pmax := c.build(t)
 		power := 2.0
-		if c.Polarization.Kind == "sheet_linear" || c.Polarization.Kind == "wall" {
+		if k := c.Polarization.Kind; k == "sheet_linear" || k == "wall" {
 			power = 1
 		}
 		worst, worstPhi := 0.0, 0.0
-		under, claims := 0, 0
 		for i := range c.Points {
 			x := vec(c.Points[i])
 			v := roundAt(src, pose, x, a, field.Mean, field.WantPhi|field.WantG|field.WantErr)
-			dist := r3.Norm(r3.Sub(x, vec(c.Body.Centre)))
-			near := min(1, a/dist)
+			near := min(1, a/r3.Norm(r3.Sub(x, vec(c.Body.Centre))))
 			phi0, g0 := pmax*a*math.Pow(near, power), pmax*math.Pow(near, power+1)
-			if v.Status != field.OnEdge {
-				dx, gx := minus(t, v.G.X, c.G[i][0])
-				dy, gy := minus(t, v.G.Y, c.G[i][1])
-				dz, gz := minus(t, v.G.Z, c.G[i][2])
-				e := math.Hypot(math.Hypot(dx, dy), dz)
-				if v.Status == field.OnFace { // a turned reference point may be one-sided
-					for _, s := range []field.Side{field.Inside, field.Outside} {
-						o := roundAt(src, pose, x, a, s, field.WantG)
-						dx, _ := minus(t, o.G.X, c.G[i][0])
-						dy, _ := minus(t, o.G.Y, c.G[i][1])
-						dz, _ := minus(t, o.G.Z, c.G[i][2])
-						e = min(e, math.Hypot(math.Hypot(dx, dy), dz))
-					}
+			judge := func(what string, e, size, floor, claim float64, worst *float64) {
+				ratio := e / (1e-12 * max(size, 1e-3*floor))
+				if !(ratio < 1) {
+					t.Errorf("%s at %v (%s): %s off by %.3g, %.2g of the tolerance; got %v, %v", c.ID, x, c.Tags[i], what, e, ratio, v.Phi, v.G)
 				}
-				ratio := e / (1e-12 * max(r3.Norm(r3.Vec{X: gx, Y: gy, Z: gz}), 1e-3*g0))
-				if !(ratio <= worst) {
-					worst = ratio
-				}
-				if !(ratio < 0.1) {
-					t.Logf("%s %v %s: g %v want %v, %.2g of the tolerance, %v", c.ID, c.Points[i], c.Tags[i], v.G, c.G[i], ratio, v.Status)
-				}
+				*worst = max(*worst, ratio)
 				claims++
-				if e > v.ErrG {
+				if e > claim {
 					under++
-					t.Logf("UNDER %s %v %s: g %v error %.2g claim %.2g", c.ID, c.Points[i], c.Tags[i], v.G, e, v.ErrG)
+					t.Logf("%s at %v (%s): %s off by %.3g, claim %.3g", c.ID, x, c.Tags[i], what, e, claim)
+				}
+				if size > 0 {
+					over = append(over, claim/max(e, u*size))
 				}
 			}
 			d, f := minus(t, v.Phi, c.Phi[i])
-			ratio := math.Abs(d) / (1e-12 * max(math.Abs(f), 1e-3*phi0))
-			if !(ratio <= worstPhi) {
-				worstPhi = ratio
+			judge("phi", math.Abs(d), math.Abs(f), phi0, v.ErrPhi, &worstPhi)
+			if v.Status == field.OnEdge {
+				continue
 			}
-			if !(ratio < 0.1) {
-				t.Logf("%s %v %s: phi %v want %v, %.2g of the tolerance, %v", c.ID, c.Points[i], c.Tags[i], v.Phi, c.Phi[i], ratio, v.Status)
+			e, size := offBy(t, v.G, c.G[i])
+			if v.Status == field.OnFace { // a turned reference point may lie 1e-16 off the face and be one-sided
+				for _, s := range []field.Side{field.Inside, field.Outside} {
+					o, _ := offBy(t, roundAt(src, pose, x, a, s, field.WantG).G, c.G[i])
+					e = min(e, o)
+				}
 			}
-			claims++
-			if math.Abs(d) > v.ErrPhi {
-				under++
-				t.Logf("UNDER %s %v %s: phi %v error %.2g claim %.2g", c.ID, c.Points[i], c.Tags[i], v.Phi, d, v.ErrPhi)
-			}
+			judge("g", e, size, g0, v.ErrG, &worst)
 		}
-		t.Logf("RESULT %-32s g %.2g phi %.2g of the tolerance; %d of %d estimates too small", c.ID, worst, worstPhi, under, claims)
-		if !(worst < 1 && worstPhi < 1) {
-			t.Errorf("%s: g %.2g phi %.2g of the tolerance", c.ID, worst, worstPhi)
-		}
+		t.Logf("%-34s worst of the tolerance: phi %.2g, g %.2g", c.ID, worstPhi, worst)
 	}
+	slices.Sort(over)
+	t.Logf("%d of %d estimates too small; overestimate: median %.3g, 99 %% %.3g", under, claims, over[len(over)/2], over[len(over)*99/100])
+	if 1000*under > claims || over[len(over)/2] > 100 { // the contract on estimates
+		t.Errorf("%d of %d estimates too small, median overestimate %.3g", under, claims, over[len(over)/2])
+	}
+}
+
+// offBy returns |got - want| and |want|.
+func offBy(t *testing.T, got r3.Vec, want [3]string) (e, size float64) {
+	t.Helper()
+	dx, x := minus(t, got.X, want[0])
+	dy, y := minus(t, got.Y, want[1])
+	dz, z := minus(t, got.Z, want[2])
+	return math.Hypot(math.Hypot(dx, dy), dz), math.Hypot(math.Hypot(x, y), z)
 }

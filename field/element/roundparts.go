@@ -34,39 +34,58 @@ type rimValues struct {
 // values computes the integrals of a rim.
 func (r *rim) values(what need) (v rimValues) {
 	q1 := r.d*r.d + r.z*r.z
+	if what&(needShell|needRadial|needLoop) == 0 {
+		var omega float64
+		v.u, v.t1, omega = elliptic.Disc(r.a, r.rho, r.z, r.d, q1)
+		r.setDisc(&v, omega)
+		v.t1r = r.overRho(v.t1)
+		return v
+	}
 	var s3, c3 float64
 	if what&(needDisc|needSolid|needShell|needRadial) == 0 {
 		v.u, v.t1, s3, c3 = elliptic.Ring(r.a, r.rho, r.z, q1)
 	} else {
 		o := elliptic.OfCircle(r.a, r.rho, r.z, r.d, q1)
 		v.u, v.t1, s3, c3 = o.U, o.T1, o.S3, o.C3
-		solid := math.Abs(o.Omega)
-		if r.z == 0 {
-			solid = 2 * math.Pi * r.within()
-		}
-		v.solid = r.sign * solid
 		v.s, v.e = o.S, o.E
-		if r.away {
-			far := r.series()
-			v.disc = far.i
-			v.s, v.sat = -r.sign*far.s, r.sign
-			v.e, v.full = -r.sign*far.e, r.sign
-		} else {
-			v.disc = r.d*v.u + r.rho*(v.u-v.t1) - math.Abs(r.z)*solid
-		}
+		r.setDisc(&v, o.Omega)
 	}
 	v.s3a, v.c3a = r.a*s3, r.a*c3
 	v.d3a = lessCosine(r.a, r.rho, q1, v.u, s3, c3)
+	v.t1r = r.overRho(v.t1)
 	if r.rho > 0 {
-		v.t1r, v.brr = v.t1/r.rho, v.c3a*r.z/r.rho
-	} else { // limits on the axis
-		i2 := 1 / (r.a*r.a + r.z*r.z)
-		v.t1r = math.Pi * r.a * r.a * i2 * math.Sqrt(i2)
-		v.brr = 3 * v.t1r * i2 * r.z
+		v.brr = v.c3a * r.z / r.rho
+	} else {
+		v.brr = 3 * v.t1r * r.z / (r.a*r.a + r.z*r.z)
 	}
 	v.bz = r.d*v.s3a + r.rho*v.d3a
 	v.br = v.c3a * r.z
 	return v
+}
+
+// setDisc sets the solid angle on the side that sign says, and what else comes from series far off.
+func (r *rim) setDisc(v *rimValues, omega float64) {
+	v.solid = omega
+	if side := sign(r.z); side != r.sign { // on the disc: another limit than the one of z
+		v.solid += 2 * math.Pi * r.within() * (r.sign - side)
+	}
+	if r.away {
+		far, side := r.series(), sign(r.z)
+		v.disc = far.i
+		v.s, v.sat = -side*far.s, side
+		v.e, v.full = -side*far.e, side
+		return
+	}
+	v.disc = r.d*v.u + r.rho*(v.u-v.t1) - r.z*omega
+}
+
+// overRho returns T1/rho, on the axis its limit.
+func (r *rim) overRho(t1 float64) float64 {
+	if r.rho > 0 {
+		return t1 / r.rho
+	}
+	i2 := 1 / (r.a*r.a + r.z*r.z)
+	return math.Pi * r.a * r.a * i2 * math.Sqrt(i2)
 }
 
 // lessCosine returns a oint (1 - cos phi)/R^3 dphi. Close to the circle the two parts cancel; there it comes from
@@ -157,27 +176,24 @@ const (
 	clearBy = 2
 )
 
-// annulus returns the sheet between two radii in the plane z = end, or the disc for inner = 0; side is the side of the
-// plane the point is on.
-func (p *roundPoint) annulus(inner, outer, end, side float64, what need) (s sheet) {
-	o := p.rim(outer, end)
-	o.sign = side
-	if inner == 0 {
-		v := o.values(what)
-		s.addDisc(&o, &v, 1)
-		return s
-	}
-	i := p.rim(inner, end)
-	i.sign = side
-	width := outer - inner
-	if width > thin*outer {
+// disc returns the disc with the rim o.
+func (o *rim) disc(what need) (s sheet) {
+	v := o.values(what)
+	s.addDisc(o, &v, 1)
+	return s
+}
+
+// annulus returns the sheet between two rims in one plane, i the inner one.
+func annulus(o, i *rim, what need) (s sheet) {
+	width := o.a - i.a
+	if width > thin*o.a {
 		vo, vi := o.values(what), i.values(what)
-		s.addDisc(&o, &vo, 1)
-		s.addDisc(&i, &vi, -1)
+		s.addDisc(o, &vo, 1)
+		s.addDisc(i, &vi, -1)
 		return s
 	}
 	if math.Hypot(o.z, max(0, -o.d, i.d)) > clearBy*width {
-		s.addRings(&o, width)
+		s.addRings(o, width)
 		if what&needLoop != 0 {
 			vo, vi := o.values(needLoop), i.values(needLoop)
 			s.byRho, s.zz, s.rhoZ = vi.t1r-vo.t1r, vo.bz-vi.bz, vo.br-vi.br
@@ -186,10 +202,10 @@ func (p *roundPoint) annulus(inner, outer, end, side float64, what need) (s shee
 		return s
 	}
 	vo, vi := o.values(what&^needDisc|needSolid), i.values(what&^needDisc|needSolid)
-	s.addDisc(&o, &vo, 1)
-	s.addDisc(&i, &vi, -1)
+	s.addDisc(o, &vo, 1)
+	s.addDisc(i, &vi, -1)
 	if what&needDisc != 0 {
-		line := band{a: outer, rho: p.rho, near: o.z}
+		line := band{a: o.a, rho: o.rho, near: o.z}
 		s.u = line.integral(i.d, o.d)
 		s.sizeU = s.u
 	}

@@ -18,7 +18,7 @@ func (c *constant) addUniformWall(r1, r2 *rim, v1, v2 *rimValues, within float64
 	c.zz -= r1.z*v1.s3a - r2.z*v2.s3a
 	c.rhoZ -= a*(v1.d3a-v2.d3a) - r1.d*(v1.s3a-v2.s3a)
 	c.sizeH += math.Abs(r1.z)*v1.s3a + math.Abs(r2.z)*v2.s3a
-	c.byRho -= overRho(e, r1.rho, a, 0.5*c.zz)
+	c.byRho -= perRho(e, r1.rho, a, 0.5*c.zz)
 	c.sizeH += math.Abs(e) / max(r1.rho, 1e-5*a)
 }
 
@@ -36,7 +36,7 @@ func (k *cosine) addCosine(r1, r2 *rim, v1, v2 *rimValues, within, w float64) {
 	k.zz += w * (v2.br - v1.br)
 	k.rho += w * (v1.bz - v1.t1r - v2.bz + v2.t1r)
 	// near the axis tau/rho = -rho s_zz/4 from Laplace's equation
-	k.tauByRho += w * overRho(tau, r1.rho, r1.a, -0.25*r1.rho*(v2.brr-v1.brr))
+	k.tauByRho += w * perRho(tau, r1.rho, r1.a, -0.25*r1.rho*(v2.brr-v1.brr))
 	w = math.Abs(w)
 	size := math.Abs(full) + math.Abs(v1.s) + math.Abs(v2.s)
 	k.sizeS += w * size
@@ -45,9 +45,9 @@ func (k *cosine) addCosine(r1, r2 *rim, v1, v2 *rimValues, within, w float64) {
 		size/max(r1.rho, 1e-5*r1.a))
 }
 
-// overRho returns f/rho, or its limit close to the axis, where f is the difference of larger terms. The limit is good to
+// perRho returns f/rho, or its limit close to the axis, where f is the difference of larger terms. The limit is good to
 // (rho/a)^2.
-func overRho(f, rho, a, limit float64) float64 {
+func perRho(f, rho, a, limit float64) float64 {
 	if rho < 1e-5*a {
 		return limit
 	}

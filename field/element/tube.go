@@ -61,6 +61,9 @@ func newTube(inner, outer, height float64, p r3.Vec, slope float64) (*Tube, erro
 	// the first moments exactly
 	volume := math.Pi * (outer - inner) * (outer + inner) * height
 	b.far.a[1], b.far.b[1] = p.Z*volume/b.bound, volume/b.bound
+	if p.X == 0 && p.Y == 0 {
+		b.far.b = [farOrder + 1]float64{}
+	}
 	b.far.a[2] = slope * volume * height * height / 6 / (b.bound * b.bound)
 	return b, nil
 }
@@ -84,10 +87,10 @@ func (b *Tube) Bounds() r3.Box {
 func (b *Tube) value(x field.Point, side field.Side, want field.Want) field.Value {
 	p := newRoundPoint(x, 0, b.bound)
 	if b.far.far(&p) {
-		c, k := b.far.sum(&p, want&field.WantGrad != 0)
+		c, k := b.far.sum(&p, want)
 		return p.value(&c, &k, b.across(), want)
 	}
-	n := tubePoint{roundPoint: &p, body: b}
+	n := tubePoint{roundPoint: p, body: b}
 	status := n.place(side)
 	if status == field.OnEdge {
 		return onEdge(n.near(field.WantPhi | want&field.WantErr))

@@ -8,11 +8,13 @@ import (
 
 // tubePoint is a point not far from a tube: where it is with respect to the faces.
 type tubePoint struct {
-	*roundPoint
+	roundPoint
 	body        *Tube
+	zb, zt      float64 // heights over the bottom and the top
 	bottom, top float64 // side of the end planes: sign(z - end), or as asked for on a face
 	walls       [2]tubeWall
-	wall        []tubeWall // the walls there are: outer, inner
+	layered     float64 // what of the point lies within walls evaluated by layers
+	count       int     // of walls: outer, inner if there is a bore
 }
 
 // tubeWall is one wall as seen from the point.
@@ -26,21 +28,21 @@ type tubeWall struct {
 func (n *tubePoint) place(side field.Side) field.Status {
 	b := n.body
 	zb, zt := n.height(-b.half), n.height(b.half)
-	n.bottom, n.top = sign(zb), sign(zt)
+	n.zb, n.zt, n.bottom, n.top = zb, zt, sign(zb), sign(zt)
 	n.walls[0] = tubeWall{radius: b.outer, sign: 1, d: n.inward(b.outer)}
-	n.wall = n.walls[:1]
+	n.count = 1
 	if b.inner > 0 {
 		n.walls[1] = tubeWall{radius: b.inner, sign: -1, d: n.inward(b.inner)}
-		n.wall = n.walls[:2]
+		n.count = 2
 	}
 	outside := -n.walls[0].d // how far beyond the nearer wall
-	for i := range n.wall {
-		w := &n.wall[i]
+	for i := range n.count {
+		w := &n.walls[i]
 		w.within = 0.5 + 0.5*sign(w.d)
 		outside = max(outside, -w.sign*w.d)
 	}
 	beyond := max(-zb, zt) // how far beyond the nearer end
-	if math.Hypot(max(0, outside), max(0, beyond)) > n.tol || outside < -n.tol && beyond < -n.tol {
+	if max(outside, beyond) > n.tol || max(outside, beyond) < -n.tol || math.Hypot(max(0, outside), max(0, beyond)) > n.tol {
 		return field.Regular
 	}
 	onEnd, onWall := beyond >= -n.tol, outside >= -n.tol
@@ -68,8 +70,8 @@ func (n *tubePoint) place(side field.Side) field.Status {
 		}
 		return field.OnFace
 	}
-	for i := range n.wall {
-		if w := &n.wall[i]; math.Abs(w.d) <= n.tol {
+	for i := range n.count {
+		if w := &n.walls[i]; math.Abs(w.d) <= n.tol {
 			w.within = 0.5 - 0.5*out*w.sign
 		}
 	}
@@ -83,7 +85,7 @@ func (n *tubePoint) place(side field.Side) field.Status {
 func (n *tubePoint) inside() float64 {
 	f := 0.5 * (n.bottom - n.top)
 	in := n.walls[0].within
-	if len(n.wall) == 2 {
+	if n.count == 2 {
 		in -= n.walls[1].within
 	}
 	return f * in
@@ -91,8 +93,7 @@ func (n *tubePoint) inside() float64 {
 
 // away returns the distance to a wall, a segment of the generatrix.
 func (n *tubePoint) away(w *tubeWall) float64 {
-	h := n.body.half
-	return math.Hypot(w.d, max(0, -n.height(-h), n.height(h)))
+	return math.Hypot(w.d, max(0, -n.zb, n.zt))
 }
 
 // near evaluates the body by its faces, or by layers or shells where faces would cancel.
@@ -103,8 +104,8 @@ func (n *tubePoint) near(want field.Want) field.Value {
 	flat := 2*b.half < thin*b.outer
 	var layered [2]bool
 	all := true
-	for i := range n.wall {
-		layered[i] = flat && n.away(&n.wall[i]) > clearBy*2*b.half
+	for i := range n.count {
+		layered[i] = flat && n.away(&n.walls[i]) > clearBy*2*b.half
 		all = all && layered[i]
 	}
 	transverse := b.p.X != 0 || b.p.Y != 0
@@ -113,8 +114,8 @@ func (n *tubePoint) near(want field.Want) field.Value {
 	if shells {
 		n.addShells(&k, want)
 	}
-	for i := range n.wall {
-		w := &n.wall[i]
+	for i := range n.count {
+		w := &n.walls[i]
 		if layered[i] {
 			n.addLayers(i, &c, &k, axial, transverse && !shells, want)
 			continue
@@ -131,8 +132,9 @@ func (n *tubePoint) near(want field.Want) field.Value {
 		}
 	}
 	if axial && !flat {
-		n.addEnds(n.wall, &c, want)
+		n.addEnds(n.walls[:n.count], &c, want)
 	}
+	n.addStep(&c)
 	if b.slope != 0 {
 		c.lap = 4 * math.Pi * b.slope * n.inside()
 	}
@@ -143,16 +145,19 @@ func (n *tubePoint) near(want field.Want) field.Value {
 // walls, the part that belongs to one rim for one wall.
 func (n *tubePoint) addEnds(walls []tubeWall, c *constant, want field.Want) {
 	b := n.body
-	outer, inner, w := walls[0].radius, 0.0, walls[0].sign
-	if len(walls) == 2 {
-		inner = walls[1].radius
-	}
 	what := needsOf(want)
 	if b.slope != 0 {
 		what |= needDisc | needSolid
 	}
-	bottom := n.annulus(inner, outer, -b.half, n.bottom, what)
-	top := n.annulus(inner, outer, b.half, n.top, what)
+	var bottom, top sheet
+	ob, ot := n.ends(&walls[0])
+	if len(walls) == 2 {
+		ib, it := n.ends(&walls[1])
+		bottom, top = annulus(&ob, &ib, what), annulus(&ot, &it, what)
+	} else {
+		bottom, top = ob.disc(what), ot.disc(what)
+	}
+	w := walls[0].sign
 	sb, st := b.charges()
 	c.add(&bottom, w*sb)
 	c.add(&top, w*st)
@@ -167,9 +172,9 @@ func (n *tubePoint) addEnds(walls []tubeWall, c *constant, want field.Want) {
 //
 // and in it only the middle term.
 func (n *tubePoint) addFlat(i int, c *constant, want field.Want) {
-	w := &n.wall[i]
+	w := &n.walls[i]
 	var s constant
-	n.addEnds(n.wall[i:i+1], &s, want)
+	n.addEnds(n.walls[i:i+1], &s, want)
 	if want&field.WantPhi != 0 {
 		rb, rt := n.ends(w)
 		vb, vt := rb.values(needSolid), rt.values(needSolid)
@@ -188,7 +193,7 @@ func (n *tubePoint) addFlat(i int, c *constant, want field.Want) {
 func (n *tubePoint) addVolume(walls []tubeWall, bottom, top *sheet, c *constant, want field.Want) {
 	b := n.body
 	s, w := b.slope, walls[0].sign
-	zb, zt := n.height(-b.half), n.height(b.half)
+	zb, zt := n.zb, n.zt
 	c.z += s * w * (top.u - bottom.u)
 	c.zz += s * w * (top.z - bottom.z)
 	c.rhoZ += s * w * (top.rho - bottom.rho)
@@ -218,8 +223,7 @@ func (n *tubePoint) addVolume(walls []tubeWall, bottom, top *sheet, c *constant,
 
 // ends returns the rims of a wall: bottom, top.
 func (n *tubePoint) ends(w *tubeWall) (bottom, top rim) {
-	h := n.body.half
-	bottom, top = rimAt(w.radius, n.rho, w.d, n.height(-h)), rimAt(w.radius, n.rho, w.d, n.height(h))
+	bottom, top = rimAt(w.radius, n.rho, w.d, n.zb), rimAt(w.radius, n.rho, w.d, n.zt)
 	bottom.sign, top.sign = n.bottom, n.top
 	return bottom, top
 }

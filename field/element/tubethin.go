@@ -8,14 +8,14 @@ import (
 
 // addLayers adds the flat body within a wall as stacked dipole layers, 16 of them: for points clear of the wall.
 func (n *tubePoint) addLayers(i int, c *constant, k *cosine, axial, transverse bool, want field.Want) {
-	w, h := &n.wall[i], n.body.half
+	w, h := &n.walls[i], n.body.half
 	for _, g := range gauss8 {
 		for _, t := range [2]float64{-g.x, g.x} {
 			n.addLayer(w, h*t, h*g.w, c, k, axial, transverse, want)
 		}
 	}
 	if axial {
-		n.addStep(w, c)
+		n.layered += w.sign * w.within
 	}
 	if want&field.WantGrad != 0 {
 		n.gradLayers(i, c, k, axial, transverse)
@@ -26,7 +26,7 @@ func (n *tubePoint) addLayers(i int, c *constant, k *cosine, axial, transverse b
 func (n *tubePoint) gradLayers(i int, c *constant, k *cosine, axial, transverse bool) {
 	if axial {
 		var only constant
-		n.addEnds(n.wall[i:i+1], &only, field.WantG|field.WantGrad)
+		n.addEnds(n.walls[i:i+1], &only, field.WantG|field.WantGrad)
 		c.byRho += only.byRho
 		c.zz += only.zz
 		c.rhoZ += only.rhoZ
@@ -34,7 +34,7 @@ func (n *tubePoint) gradLayers(i int, c *constant, k *cosine, axial, transverse 
 	}
 	if transverse {
 		var only cosine
-		n.addWall(&n.wall[i], &only, field.WantG|field.WantGrad)
+		n.addWall(&n.walls[i], &only, field.WantG|field.WantGrad)
 		k.zByRho += only.zByRho
 		k.zz += only.zz
 		k.rho += only.rho
@@ -72,25 +72,31 @@ func (n *tubePoint) addLayer(w *tubeWall, at, dz float64, c *constant, k *cosine
 	}
 }
 
-// addStep adds what the step of 4 pi through each disc makes of the layers: 2 pi int p sgn(z - z') dz' inside the wall.
-func (n *tubePoint) addStep(w *tubeWall, c *constant) {
+// addStep adds what the step of 4 pi through each disc makes of the layers: 2 pi int p sgn(z - z') dz' within the walls
+// that were evaluated by layers. It is added once, for the parts of outer and inner wall cancel in the bore.
+func (n *tubePoint) addStep(c *constant) {
+	if n.layered == 0 {
+		return
+	}
 	b := n.body
 	h, z := b.half, n.z.Hi
-	in := 2 * math.Pi * w.sign * w.within
+	in := 2 * math.Pi * n.layered
 	cut := min(max(z, -h), h)
 	c.u += in * (2*b.p.Z*cut + b.slope*(cut-h)*(cut+h))
-	c.z += in * (n.bottom - n.top) * (b.p.Z + b.slope*z)
+	step := in * (n.bottom - n.top) * (b.p.Z + b.slope*z)
+	c.z += step
+	c.sizeU += math.Abs(in) * (2*math.Abs(b.p.Z*cut) + math.Abs(b.slope*(cut-h)*(cut+h)))
+	c.sizeG += math.Abs(step)
 }
 
 // addCloseLayers is addLayers for axial dipoles at a point close to the wall: the heights are spread as |d| sinh(v) about
 // the foot of the point on the wall, in panels of 16 nodes no wider than 2, which leave 3.4^-32 (Johnston and Elliott
 // (2005) Int. J. Numer. Methods Eng. 62, 564).
 func (n *tubePoint) addCloseLayers(i int, c *constant, want field.Want) {
-	h := n.body.half
-	near := n.wall[i]
+	near := n.walls[i]
 	near.d = math.Copysign(max(math.Abs(near.d), 0x1p-60*near.radius), near.d) // on the wall: the limit
 	d := math.Abs(near.d)
-	lo, hi := math.Asinh(n.height(h)/d), math.Asinh(n.height(-h)/d)
+	lo, hi := math.Asinh(n.zt/d), math.Asinh(n.zb/d)
 	panels := math.Ceil((hi - lo) / 2)
 	half := (hi - lo) / panels / 2
 	if near.within = 0; near.d > 0 {
@@ -104,7 +110,7 @@ func (n *tubePoint) addCloseLayers(i int, c *constant, want field.Want) {
 			}
 		}
 	}
-	n.addStep(&near, c)
+	n.layered += near.sign * near.within
 	if want&field.WantGrad != 0 {
 		n.gradLayers(i, c, nil, true, false)
 	}
@@ -122,11 +128,11 @@ func (n *tubePoint) addCloseLayer(w *tubeWall, v, d, dv float64, c *constant, wa
 	p := w.sign * dv * d * math.Cosh(v) * (n.body.p.Z + n.body.slope*(n.z.Hi-zeta))
 	if want&field.WantPhi != 0 {
 		c.u += p * (o.solid - 2*math.Pi*w.within*r.sign)
-		c.sizeU += math.Abs(p) * 2 * math.Pi
+		c.sizeU += math.Abs(p) * (1 + 0.2*math.Abs(v)) * 2 * math.Pi // v times u is the error of sinh
 	}
 	c.rho -= p * o.br
 	c.z -= p * o.bz
-	c.sizeG += math.Abs(p) * (math.Abs(o.br) + math.Abs(o.bz))
+	c.sizeG += math.Abs(p) * (1 + 0.2*math.Abs(v)) * (math.Abs(o.br) + math.Abs(o.bz))
 }
 
 // clearOfShell reports whether the wall of the tube is thin and the point clear of its ends, or of all of it.
@@ -137,7 +143,7 @@ func (n *tubePoint) clearOfShell() bool {
 		return false
 	}
 	across := max(0, -n.walls[0].d, n.walls[1].d)
-	beyond := max(-n.height(-b.half), n.height(b.half))
+	beyond := max(-n.zb, n.zt)
 	return math.Hypot(across, beyond) > clearBy*width
 }
 
@@ -154,8 +160,8 @@ func (n *tubePoint) addShells(k *cosine, want field.Want) {
 	k.tau += 4 * math.Pi * n.inside()
 	if want&field.WantGrad != 0 {
 		var only cosine
-		for i := range n.wall {
-			n.addWall(&n.wall[i], &only, want)
+		for i := range n.count {
+			n.addWall(&n.walls[i], &only, want)
 		}
 		k.zByRho, k.zz, k.rho, k.tauByRho, k.sizeH = only.zByRho, only.zz, only.rho, only.tauByRho, only.sizeH
 	}

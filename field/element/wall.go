@@ -66,7 +66,7 @@ func (w *Wall) Bounds() r3.Box { return w.shape.Bounds() }
 func (w *Wall) value(x field.Point, side field.Side, want field.Want) field.Value {
 	p := newRoundPoint(x, w.centre, w.bound)
 	if w.far.far(&p) {
-		c, k := w.far.sum(&p, want&field.WantGrad != 0)
+		c, k := w.far.sum(&p, want)
 		return p.value(&c, &k, w.t, want)
 	}
 	charged := w.density != 0 || w.t.X != 0 || w.t.Y != 0

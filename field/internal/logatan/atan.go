@@ -37,22 +37,36 @@ const (
 	pi2Lo  = 0x1.1a62633145c07p-54
 	halfHi = 0x1.dac670561bb4fp-2 // atan 1/2
 	halfLo = 0x1.a2b7f222f65e2p-56
+	lessHi = 0x1.1b6e192ebbe44p+0 // π/2 - atan 1/2
+	lessLo = 0x1.b1b466a88828ep-54
+	moreHi = 0x1.0468a8ace4df6p+1 // π/2 + atan 1/2
+	moreLo = 0x1.0620bf7406affp-55
+	backHi = 0x1.56c6e7397f5aep+1 // π - atan 1/2
+	backLo = 0x1.660b64ece6f4bp-53
 
-	halfBits = 1022 << 52 // 0.5
-	twoSteps = 2 << 52    // a factor 4 in bit patterns
+	twoSteps = 2 << 52 // a factor 4 in bit patterns
 )
 
-// octant holds the constant and its remainder that atan t or -atan t is added
-// to. Bit 0 of the index: reduced by atan 1/2; bit 1: |y| > |x|; bit 2: x < 0.
-var octant = [8][2]float64{
-	{0, 0},
-	{halfHi, halfLo},
-	{pi2, pi2Lo},
-	{0x1.1b6e192ebbe44p+0, 0x1.b1b466a88828ep-54}, // π/2 - atan 1/2
-	{pi, piLo},
-	{0x1.56c6e7397f5aep+1, 0x1.660b64ece6f4bp-53}, // π - atan 1/2
-	{pi2, pi2Lo},
-	{0x1.0468a8ace4df6p+1, 0x1.0620bf7406affp-55}, // π/2 + atan 1/2
+// octants lists h, the sign of t, and the constant with its remainder. Bit 0
+// of the index: reduced by atan 1/2; bit 1: |y| > |x|; bit 2: x < 0; bit 3:
+// y < 0, where all signs are turned.
+var octants = [16]struct{ h, sign, hi, lo float64 }{
+	{0, 1, 0, 0},
+	{0.5, 1, halfHi, halfLo},
+	{0, -1, pi2, pi2Lo},
+	{0.5, -1, lessHi, lessLo},
+	{0, -1, pi, piLo},
+	{0.5, -1, backHi, backLo},
+	{0, 1, pi2, pi2Lo},
+	{0.5, 1, moreHi, moreLo},
+	{0, -1, 0, 0},
+	{0.5, -1, -halfHi, -halfLo},
+	{0, 1, -pi2, -pi2Lo},
+	{0.5, 1, -lessHi, -lessLo},
+	{0, 1, -pi, -piLo},
+	{0.5, 1, -backHi, -backLo},
+	{0, -1, -pi2, -pi2Lo},
+	{0.5, -1, -moreHi, -moreLo},
 }
 
 // Atan2 returns the angle of the point (x, y) from the x axis, in -π to π,
@@ -87,9 +101,8 @@ func Atan2(y, x float64) float64 {
 	if ya > xa-twoSteps {
 		far = 1
 	}
-	left := xb >> 63
-	flip := (steep ^ left) << 63
-	h := math.Float64frombits(halfBits & -far)
+	o := &octants[(yb>>63<<3|xb>>63<<2|steep<<1|far)&15]
+	h := o.h
 	v, w := math.Float64frombits(ya), math.Float64frombits(xa)
 	n := v - float64(h*w)
 	hv := float64(h * v)
@@ -111,10 +124,7 @@ func Atan2(y, x float64) float64 {
 	c = math.FMA(z4, g, c)
 	a = math.FMA(z4, c, a)
 	lo := math.FMA(t*z, a, r*inv)
-	o := &octant[(left<<2|steep<<1|far)&7]
-	hi := math.Float64frombits(math.Float64bits(t)^flip) + o[0]
-	lo = math.Float64frombits(math.Float64bits(lo)^flip) + o[1]
-	return math.Float64frombits(math.Float64bits(hi+lo) | yb&signBit)
+	return (float64(t*o.sign) + o.hi) + (float64(lo*o.sign) + o.lo)
 }
 
 // atan2Rare is Atan2 where an absolute value is outside 2^±500.

@@ -3,8 +3,8 @@
 //
 // Each function is one straight line of additions, products, math.FMA and a
 // single division on its usual path; selections are made by comparing and
-// adding bit patterns of float64 and by choosing among eight constants, no
-// larger table is read, and rare arguments (zero, infinite, NaN, very large or
+// adding bit patterns of float64 and by choosing one of eight constants and a
+// sign, no larger table is read, and rare arguments (zero, infinite, NaN, very large or
 // very small) leave the line at one test. No product is followed by a sum
 // outside math.FMA, so the bits do not depend on the architecture or on
 // GOAMD64.

@@ -6,8 +6,13 @@ import (
 	"testing"
 )
 
-// ulpBound is what the documentation promises.
-const ulpBound = 2
+// Bounds in ulp. The documentation promises 2; the analysis above the code
+// gives less: one rounding and small terms where no constant is added, two
+// roundings, the first possibly a binade higher, elsewhere.
+const (
+	oneRounding  = 0.6
+	twoRoundings = 1.6
+)
 
 // positives returns seeded positive numbers: moderate, over the full normal
 // range, subnormal, and neighbours of powers of two.
@@ -50,21 +55,26 @@ func (t *track) see(a, b, got float64, want *big.Float) {
 	}
 }
 
-func (t *track) check(tt *testing.T, name string) {
+func (t *track) check(tt *testing.T, name string, bound float64) {
 	tt.Helper()
 	tt.Logf("%s: worst error %.3f ulp at (%x, %x)", name, t.worst, t.a, t.b)
-	if !(t.worst <= ulpBound) { // promised: 2 ulp
-		tt.Errorf("%s(%x, %x) = %x: error %.3f ulp, want <= %v", name, t.a, t.b, t.got, t.worst, ulpBound)
+	if !(t.worst <= bound) {
+		tt.Errorf("%s(%x, %x) = %x: error %.3f ulp, want <= %v", name, t.a, t.b, t.got, t.worst, bound)
 	}
 }
 
 func TestLogRatioReference(t *testing.T) {
-	p, q := logPairs(120000, 11)
-	var tr track
+	p, q := logPairs(100000, 11)
+	var tr, close track
 	for i := range p {
-		tr.see(p[i], q[i], LogRatio(p[i], q[i]), bigLogRatio(bf(p[i]), bf(q[i])))
+		got, want := LogRatio(p[i], q[i]), bigLogRatio(bf(p[i]), bf(q[i]))
+		tr.see(p[i], q[i], got, want)
+		if math.Abs(got) < 0.28 { // no power of two
+			close.see(p[i], q[i], got, want)
+		}
 	}
-	tr.check(t, "LogRatio")
+	tr.check(t, "LogRatio", twoRoundings)
+	close.check(t, "LogRatio near 1", oneRounding)
 }
 
 // TestLogRatioStep walks over the places where the power of two changes.
@@ -79,17 +89,17 @@ func TestLogRatioStep(t *testing.T) {
 			tr.see(w, p, LogRatio(w, p), bigLogRatio(bf(w), bf(p)))
 		}
 	}
-	tr.check(t, "LogRatio")
+	tr.check(t, "LogRatio", twoRoundings)
 }
 
 func TestLog1pRatioReference(t *testing.T) {
-	n, d := logPairs(120000, 21)
+	n, d := logPairs(100000, 21)
 	rnd := seeded(23)
 	for i := 0; i < len(n); i += 3 {
 		d[i] = math.Ldexp(1+rnd.Float64(), rnd.IntN(1800)-900)
 		n[i] = math.Ldexp(d[i]*rnd.Float64(), -rnd.IntN(120))
 	}
-	var tr track
+	var tr, close track
 	for i := range n {
 		var want *big.Float
 		a, b := bf(n[i]), bf(d[i])
@@ -102,9 +112,14 @@ func TestLog1pRatioReference(t *testing.T) {
 		default:
 			want = bigLogRatio(add(a, b), b)
 		}
-		tr.see(n[i], d[i], Log1pRatio(n[i], d[i]), want)
+		got := Log1pRatio(n[i], d[i])
+		tr.see(n[i], d[i], got, want)
+		if got < 0.28 {
+			close.see(n[i], d[i], got, want)
+		}
 	}
-	tr.check(t, "Log1pRatio")
+	tr.check(t, "Log1pRatio", twoRoundings)
+	close.check(t, "Log1pRatio near 1", oneRounding)
 }
 
 func TestLogSpecial(t *testing.T) {

@@ -1,0 +1,96 @@
+package output
+
+import (
+	"bufio"
+	"encoding/csv"
+	"io"
+	"strconv"
+	"strings"
+
+	"example.com/boundpole/examples/scene/internal/scenefile"
+	"example.com/boundpole/examples/scene/internal/solve"
+	"example.com/boundpole/field"
+	"gonum.org/v1/gonum/spatial/r3"
+)
+
+// Table writes the records of one request as CSV.
+type Table struct {
+	setup *solve.Setup
+	w     *bufio.Writer
+	row   []byte
+}
+
+// NewTable returns a table, its metadata and header written.
+func NewTable(setup *solve.Setup, q *scenefile.Request, w io.Writer) *Table {
+	t := &Table{setup: setup, w: bufio.NewWriterSize(w, 1<<16)}
+	meta := func(key, value string) {
+		if value != "" {
+			t.w.WriteString("# " + key + ": " + scenefile.OneLine(value) + "\n")
+		}
+	}
+	meta("scene", setup.Scene.Title)
+	meta("request", q.Kind)
+	meta("name", q.Name)
+	meta("side", string(q.Side))
+	t.w.WriteString("# units: SI, frame of the scene; an empty field does not exist, see status\n")
+	header := "x[m],y[m],z[m]"
+	if setup.Electric {
+		header += ",V[V],Ex[V/m],Ey[V/m],Ez[V/m],Dx[C/m^2],Dy[C/m^2],Dz[C/m^2]"
+	}
+	if setup.Magnetic {
+		header += ",Vm[A],Hx[A/m],Hy[A/m],Hz[A/m],Bx[T],By[T],Bz[T]"
+	}
+	t.w.WriteString(header + ",inside,status\n")
+	return t
+}
+
+// Record writes one row.
+func (t *Table) Record(rec *solve.Record) error {
+	t.row = t.row[:0]
+	t.vec(rec.X)
+	if t.setup.Electric {
+		t.number(rec.Electric.V)
+		t.vec(rec.Electric.E)
+		t.vec(rec.Electric.D)
+	}
+	if t.setup.Magnetic {
+		t.number(rec.Magnetic.Vm)
+		t.vec(rec.Magnetic.H)
+		t.vec(rec.Magnetic.B)
+	}
+	if rec.Inside >= 0 {
+		t.row = append(t.row, field1(t.setup.Parts[rec.Inside].Name)...)
+	}
+	t.row = append(t.row, ',')
+	if rec.Status != field.Regular {
+		t.row = append(t.row, rec.Status.String()...)
+	}
+	t.row = append(t.row, '\n')
+	_, err := t.w.Write(t.row)
+	return err
+}
+
+// Flush writes out what is still held; it returns the first error of all writes.
+func (t *Table) Flush() error { return t.w.Flush() }
+
+func (t *Table) number(v float64) { t.row = append(appendNumber(t.row, v, ""), ',') }
+
+func (t *Table) vec(v r3.Vec) {
+	t.number(v.X)
+	t.number(v.Y)
+	t.number(v.Z)
+}
+
+// field1 quotes a name for CSV where it needs it (RFC 4180).
+func field1(name string) string {
+	if !strings.ContainsAny(name, ",\"\r\n#") && strconv.CanBackquote(name) {
+		return name
+	}
+	var b strings.Builder
+	w := csv.NewWriter(&b)
+	if err := w.Write([]string{name}); err != nil { // a Builder does not fail
+		return ""
+	}
+	w.Flush()
+	return strings.TrimSuffix(b.String(), "\n")
+}

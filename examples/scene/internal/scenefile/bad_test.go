@@ -1,0 +1,297 @@
+package scenefile
+
+import (
+	"errors"
+	"fmt"
+	"strings"
+	"testing"
+	"testing/fstest"
+)
+
+// ball is a part that is right; scenes of the tests are made around it.
+const ball = `{"name":"a","shape":"sphere","radius":1,"magnetized":{"uniform":[0,0,1]}}`
+
+// withPart returns a scene with one part.
+func withPart(part string) string { return `{"parts":[` + part + `]}` }
+
+// withShape returns a scene with one magnetized part of a shape.
+func withShape(shape string) string {
+	return withPart(`{"name":"a",` + shape + `,"magnetized":{"uniform":[0,0,1]}}`)
+}
+
+// withLaw returns a scene with one sphere that carries something.
+func withLaw(law string) string {
+	return withPart(`{"name":"a","shape":"sphere","radius":1,` + law + `}`)
+}
+
+// withTop returns a scene with further keys beside its parts.
+func withTop(keys string) string { return `{"parts":[` + ball + `],` + keys + `}` }
+
+// withRequest returns a scene with one request.
+func withRequest(r string) string { return withTop(`"wanted":[` + r + `]`) }
+
+// withHand returns a scene whose request has one hand check.
+func withHand(request, check string) string {
+	return withRequest(`{` + request + `,"hand":[` + check + `]}`)
+}
+
+// badScenes lists wrong scenes, each with what its error must say.
+var badScenes = []struct {
+	name, scene string
+	want        string // pointer and problem, as a part of the text
+	at          string // where the position is that of the first (or, after "^", the last) occurrence of this text
+}{
+	// Syntax.
+	{"empty", " \n", "(root): the file is empty", ""},
+	{"byte order mark", "\ufeff" + withPart(ball), "byte order mark; save it as UTF-8 without BOM", ""},
+	{"utf-16", "\xff\xfe{\x00}\x00", "the file is UTF-16", ""},
+	{"no object", `[1]`, "(root): the document must be an object (got a list of 1)", "[1]"},
+	{"trailing text", withPart(ball) + " x", `text after the end of the document (got "x")`, "^x"},
+	{"second document", withPart(ball) + "{}", "text after the end", "{}"},
+	{"trailing comma in object", `{"parts":[` + ball + `],}`, `a key in double quotes should stand here (got "}")`, "^}"},
+	{"trailing comma in list", `{"parts":[` + ball + `,]}`, `/parts/1: a value is missing before "]"`, "^]"},
+	{"missing comma", `{"parts":[` + ball + ` "x"]}`, `/parts/1: a comma or "]" should stand here`, `"x"`},
+	{"missing colon", `{"parts" 1}`, "/parts: a colon should stand here", "1"},
+	{"cut off", `{"parts":[`, "/parts/0: the file ends where a value should stand", ""},
+	{"single quotes", `{'parts':1}`, `(root): a key in double quotes should stand here`, "'parts"},
+	{"comment", "{// x\n}", "a key in double quotes", "// x"},
+	{"comment for a value", `{"title": /* x */ 1}`, "/title: no JSON value (got \"/*\"); JSON has no comments", "/*"},
+	{"repeated key", `{"title":"a","title":"b","parts":[]}`, `/title: key "title" is repeated`, `^"title"`},
+	{"repeated key by escape", `{"title":"a","t\u0069tle":"b"}`, `/title: key "title" is repeated`, `"t\u0069tle"`},
+	{"too deep", strings.Repeat("[", 33), "nested deeper than 32", ""},
+	{"too many keys", manyKeys(), "more than 64 keys", ""},
+	{"wrong utf-8", "{\"title\":\"a\xffb\"}", "/title: wrong UTF-8 (byte 0xff)", "\xffb"},
+	{"overlong utf-8", "{\"title\":\"\xc0\xaf\"}", "wrong UTF-8", "\xc0"},
+	{"utf-8 surrogate", "{\"title\":\"\xed\xa0\x80\"}", "wrong UTF-8", "\xed"},
+	{"half surrogate", `{"title":"\ud800x"}`, `half a surrogate pair (\ud800)`, `\ud800`},
+	{"reversed surrogates", `{"title":"\udc00\ud800"}`, `half a surrogate pair (\udc00)`, `\udc00`},
+	{"unknown escape", `{"title":"\x41"}`, "unknown escape", `\x`},
+	{"short escape", `{"title":"\u12"}`, `\u without four hexadecimal digits`, `\u12`},
+	{"line end in text", "{\"title\":\"a\nb\"}", "a control character or line end inside a text", "\nb"},
+	{"open text", `{"title":"a`, "a text that does not end", `"a`},
+	{"not a number", withLaw(`"scale":NaN`), "/parts/0/scale: no JSON value (got \"NaN\"); numbers are finite", "NaN"},
+	{"infinity", withLaw(`"scale":-Infinity`), `/parts/0/scale: no JSON number (got "-Infinity")`, "-Inf"},
+	{"overflow", withLaw(`"scale":1e400`), "/parts/0/scale: number out of range (1e400)", "1e400"},
+	{"overflow without exponent", withLaw(`"scale":1` + strings.Repeat("0", 400)), "/parts/0/scale: number out of range", "10"},
+	{"underflow", withLaw(`"scale":1e-400`), "number out of range (1e-400); it would be read as 0", "1e-400"},
+	{"leading zero", withLaw(`"scale":01`), `no JSON number (got "01")`, "01"},
+	{"plus sign", withLaw(`"scale":+1`), `no JSON value (got "+1")`, "+1"},
+	{"bare point", withLaw(`"scale":.5`), `a number starts with a digit`, ".5"},
+	{"open point", withLaw(`"scale":1.`), `no JSON number (got "1.")`, "1.}"},
+	{"hexadecimal", withLaw(`"scale":0x10`), `no JSON number (got "0x10")`, "0x10"},
+	{"open exponent", withLaw(`"scale":1e`), `no JSON number (got "1e")`, "1e}"},
+	{"wrong literal", withLaw(`"scale":True`), "no JSON value", "True"},
+	{"cut literal", withLaw(`"scale":tru`), "no JSON value", "tru"},
+
+	// The document.
+	{"no parts", `{}`, `/parts: parts is missing; add for example "parts": `, "{}"},
+	{"empty parts", `{"parts":[]}`, "/parts: parts must be a list of at least one object (part) (got a list of 0)", "[]"},
+	{"unknown key", withTop(`"lenght":"mm"`), `/lenght: unknown key "lenght"; did you mean "length"?`, `"lenght"`},
+	{"unknown key far from all", withTop(`"zzzzzzzz":1`), "valid here: version, title", `"zzzz`},
+	{"null", withTop(`"title":null`), "/title: title must be a text (got null); leave the key out", "null"},
+	{"version", withTop(`"version":2`), "/version: version must be 1 (got 2)", "2}"},
+	{"version text", withTop(`"version":"1"`), `/version: version must be 1 (got "1")`, `^"1"`},
+	{"unit", withTop(`"length":"nm"`), `/length: length must be "m", "cm", "mm" or "um" (got "nm"); did you mean`, `"nm"`},
+	{"accuracy too fine", withTop(`"accuracy":1e-14`), "/accuracy: accuracy must be from 1e-13 to 0.1 (got 1e-14)", "1e-14"},
+	{"accuracy too coarse", withTop(`"accuracy":0.2`), "/accuracy: accuracy must be from 1e-13 to 0.1 (got 0.2)", "0.2"},
+	{"temperature", withTop(`"temperature":-300`), "/temperature: temperature must be ≥ -273.15 (got -300)", "-300"},
+	{"applied nothing", withTop(`"applied":{}`), "/applied: applied needs one of E, B", "{}"},
+	{"applied H", withTop(`"applied":{"H":[0,0,1]}`), `/applied/H: unknown key "H"`, `"H"`},
+	{"planes", withTop(`"planes":[]`), `/planes: key "planes" is not supported yet; leave it out`, `"planes"`},
+
+	// Parts.
+	{"part no object", withPart(`1`), "/parts/0: parts[0] must be an object (got 1)", "1"},
+	{"no name", withPart(`{"shape":"sphere","radius":1}`), "/parts/0/name: name is missing", `{"shape`},
+	{"empty name", withPart(`{"name":" ","shape":"sphere","radius":1}`), "/parts/0/name: name must not be empty", `" "`},
+	{"name of two lines", withPart(`{"name":"a\nb","shape":"sphere","radius":1}`), "must not contain control characters", `"a\nb"`},
+	{"same name", withPart(ball + "," + ball), `/parts/1/name: name "a" is already that of a body of /parts/0`, `^"a"`},
+	{"same name as a copy", withPart(`{"name":"a 2","shape":"sphere","radius":1},{"name":"a","shape":"sphere","radius":1,"copies":{"count":3,"step":[3,0,0]}}`),
+		`/parts/1/name: name "a 2" is already that of a body of /parts/0`, `"a",`},
+	{"no shape", withPart(`{"name":"a"}`), "/parts/0/shape: shape is missing; add one of box", `{"name`},
+	{"shape no text", withPart(`{"name":"a","shape":3}`), "/parts/0/shape: shape must be a text (got 3)", "3"},
+	{"unknown shape", withShape(`"shape":"cilinder"`), `/parts/0/shape: unknown shape "cilinder"; did you mean "cylinder"?`, `"cilinder"`},
+	{"arc", withShape(`"shape":"arc","inner":1,"outer":2,"height":1,"from":0,"to":90`), `/parts/0/shape: shape "arc" is not supported yet`, `"arc"`},
+	{"cone", withShape(`"shape":"cone","bottom":1,"top":0,"height":1`), `shape "cone" is not supported yet`, `"cone"`},
+	{"torus", withShape(`"shape":"torus","major":2,"minor":1`), `shape "torus" is not supported yet`, `"torus"`},
+	{"mesh", withShape(`"shape":"mesh","file":"a.stl"`), `shape "mesh" is not supported yet`, `"mesh"`},
+	{"missing dimension", withShape(`"shape":"cylinder","radius":1`), `/parts/0/height: height is missing; add for example "height": 4`, `{"name`},
+	{"foreign dimension", withShape(`"shape":"sphere","radius":1,"height":2`), `/parts/0/height: key "height" does not belong to part sphere; its own keys are radius`, `"height"`},
+	{"negative radius", withShape("\n \"shape\":\"sphere\",\n\t\"radius\":-2"), "scene.json:3:11: /parts/0/radius: radius must be > 0 (got -2); give a positive length", "-2"},
+	{"zero height", withShape(`"shape":"cylinder","radius":1,"height":0`), "/parts/0/height: height must be > 0 (got 0)", "0,"},
+	{"radius text", withShape(`"shape":"sphere","radius":"1"`), `/parts/0/radius: radius must be a number > 0 (got "1"); for example "radius": 3`, `"1"`},
+	{"box of two", withShape(`"shape":"box","size":[1,2]`), "/parts/0/size: size must be three numbers > 0 (got a list of 2)", "[1,2]"},
+	{"box negative", withShape(`"shape":"box","size":[1,-2,3]`), "/parts/0/size/1: size[1] must be > 0 (got -2)", "-2"},
+	{"tube inverted", withShape(`"shape":"tube","inner":2,"outer":1,"height":1`), "/parts/0/inner: inner must be less than outer (got 2 and 1)", "2,"},
+	{"shell without wall", withShape(`"shape":"hollow_sphere","inner":2,"outer":2`), "/parts/0/inner: inner must be less than outer (got 2 and 2)", "2,"},
+	{"prism base short", withShape(`"shape":"prism","height":1,"base":[[0,0],[1,0]]`), "/parts/0/base: base must be a list of at least three points [x, y] (got a list of 2)", "[[0,0]"},
+	{"prism base point", withShape(`"shape":"prism","height":1,"base":[[0,0],[1,0],[0,1,0]]`), "/parts/0/base/2: base[2] must be two numbers (got a list of 3)", "[0,1,0]"},
+	{"prism slope", withShape(`"shape":"prism","height":1,"base":[[0,0],[1,0],[0,1]],"top_slope":[1]`), "/parts/0/top_slope: top_slope must be two numbers", "[1]"},
+	{"prism ends meet", withShape(`"shape":"prism","height":1,"base":[[0,0],[1,0],[0,1]],"top_slope":[-1,0]`), "/parts/0/top_slope: the ends of the prism meet: its height at base point 1 is 0", "[-1,0]"},
+	{"polyhedron index", withShape(`"shape":"polyhedron","vertices":[[0,0,0],[1,0,0],[0,1,0],[0,0,1]],"faces":[[0,2,1],[0,1,3],[1,2,3],[0,3,4]]`),
+		"/parts/0/faces/3/2: vertex 4 does not exist; vertices are counted from 0 to 3", "4]"},
+	{"polyhedron index fraction", withShape(`"shape":"polyhedron","vertices":[[0,0,0],[1,0,0],[0,1,0],[0,0,1]],"faces":[[0,2,1.5],[0,1,3],[1,2,3],[0,3,2]]`),
+		"/parts/0/faces/0/2: faces[0][2] must be a whole number", "1.5"},
+	{"polyhedron index twice", withShape(`"shape":"polyhedron","vertices":[[0,0,0],[1,0,0],[0,1,0],[0,0,1]],"faces":[[0,2,2],[0,1,3],[1,2,3],[0,3,2]]`),
+		"/parts/0/faces/0/2: vertex 2 is named twice in a face", "2],[0,1"},
+	{"polyhedron open", withShape(`"shape":"polyhedron","vertices":[[0,0,0],[1,0,0],[0,1,0],[0,0,1]],"faces":[[0,2,1]]`), "faces must be a list of at least four lists", "[[0,2"},
+	{"centre", withLaw(`"centre":[0,0]`), "/parts/0/centre: centre must be three numbers (got a list of 2)", "[0,0]"},
+	{"centre text", withLaw(`"centre":[0,"0",0]`), `/parts/0/centre/1: centre[1] must be a number (got "0")`, `"0"`},
+	{"zero axis", withLaw(`"rotations":[{"axis":[0,0,0],"degrees":90}]`), "/parts/0/rotations/0/axis: axis must not be the zero vector", "[0,0,0]"},
+	{"rotation without angle", withLaw(`"rotations":[{"axis":[0,0,1]}]`), "/parts/0/rotations/0/degrees: degrees is missing", `{"axis`},
+	{"rotations and frame", withLaw(`"rotations":[],"frame":{"z":[0,0,1]}`), "/parts/0/frame: rotations and frame exclude each other", `"frame"`},
+	{"frame parallel", withLaw(`"frame":{"z":[1,2,3],"x":[0.1,0.2,0.3]}`), "/parts/0/frame/x: x is parallel to z", "[0.1"},
+	{"frame zero", withLaw(`"frame":{"z":[0,0,0]}`), "/parts/0/frame/z: z must not be the zero vector", "[0,0,0]"},
+	{"no copies", withLaw(`"copies":{"count":0}`), "/parts/0/copies/count: count must be from 1 to 1000000 (got 0)", "0}"},
+	{"copies fraction", withLaw(`"copies":{"count":1.5}`), "/parts/0/copies/count: count must be a whole number from 1 to 1000000 (got 1.5)", "1.5"},
+	{"too many copies", withPart(`{"name":"a","shape":"sphere","radius":1,"copies":{"count":1000000}},{"name":"b","shape":"sphere","radius":1}`),
+		"/parts/1: more than 1000000 bodies", `{"name":"b"`},
+	{"circulating", withLaw(`"circulating":1`), `/parts/0/circulating: key "circulating" is not supported yet`, `"circ`},
+	{"permittivity", withLaw(`"permittivity":2`), `/parts/0/permittivity: key "permittivity" is not supported yet`, `"perm`},
+	{"permeability", withLaw(`"permeability":"infinite"`), `/parts/0/permeability: key "permeability" is not supported yet`, `"perm`},
+	{"curve", withLaw(`"curve":"a.csv"`), `/parts/0/curve: key "curve" is not supported yet`, `"curve"`},
+
+	// What parts carry.
+	{"two carriers", withLaw(`"magnetized":{"uniform":[0,0,1]},"polarized":{"uniform":[0,0,1]}`), "/parts/0/polarized: magnetized and polarized exclude each other", `"polarized"`},
+	{"no law", withLaw(`"polarized":{}`), "/parts/0/polarized: polarized needs one of uniform, moment", "{}"},
+	{"two laws", withLaw(`"magnetized":{"uniform":[0,0,1],"remanence":[0,0,1]}`), "/parts/0/magnetized/remanence: uniform and remanence exclude each other", `"rem`},
+	{"electric remanence", withLaw(`"polarized":{"remanence":[0,0,1]}`), `/parts/0/polarized/remanence: unknown key "remanence"`, `"rem`},
+	{"polynomial", withLaw(`"polarized":{"polynomial":[]}`), `/parts/0/polarized/polynomial: key "polynomial" is not supported yet`, `"polyn`},
+	{"axial power", withLaw(`"polarized":{"axial_power":{}}`), `key "axial_power" is not supported yet`, `"axial`},
+	{"radial power", withLaw(`"magnetized":{"radial_power":{}}`), `key "radial_power" is not supported yet`, `"radial`},
+	{"central power", withLaw(`"magnetized":{"central_power":{}}`), `key "central_power" is not supported yet`, `"central`},
+	{"grade", withLaw(`"magnetized":{"grade":{}}`), `/parts/0/magnetized/grade: key "grade" is not supported yet`, `"grade`},
+	{"affine without gradient", withLaw(`"polarized":{"affine":{"value":[0,0,1]}}`), "/parts/0/polarized/affine/gradient: gradient is missing", `{"value`},
+	{"affine gradient shape", withLaw(`"polarized":{"affine":{"value":[0,0,1],"gradient":[[0,0,0],[0,0,0]]}}`), "gradient must be three vectors [x, y, z] (got a list of 2)", "[[0,0,0]"},
+	{"affine gradient row", withLaw(`"polarized":{"affine":{"value":[0,0,1],"gradient":[[0,0,0],[0,0,0],[1,2]]}}`), "/parts/0/polarized/affine/gradient/2: gradient[2] must be three numbers", "[1,2]"},
+	{"charged body", withLaw(`"charged":{"density":1}`), "/parts/0/charged: a sphere is a body and cannot be charged", `"charged"`},
+	{"polarized sheet", withPart(`{"name":"a","shape":"disc","radius":1,"polarized":{"uniform":[0,0,1]}}`), "/parts/0/polarized: a disc is a sheet and cannot be polarized", `"polarized"`},
+	{"charge of a sheet", withPart(`{"name":"a","shape":"disc","radius":1,"charged":{"charge":1}}`), "/parts/0/charged: charge is for points, not for a disc", `{"charge"`},
+	{"gradient of a point", withPart(`{"name":"a","shape":"point","charged":{"charge":1,"gradient":[1,0,0]}}`), "/parts/0/charged/gradient: gradient without density", `"gradient"`},
+	{"moment of a body", withLaw(`"magnetized":{"moment":[0,0,1]}`), "/parts/0/magnetized: moment is for points, not for a sphere", `{"moment"`},
+	{"uniform point", withPart(`{"name":"a","shape":"point","polarized":{"uniform":[0,0,1]}}`), "/parts/0/polarized: a point is polarized by moment", `{"uniform"`},
+	{"bare point", withPart(`{"name":"a","shape":"point"}`), "/parts/0: a point that carries nothing", `{"name`},
+	{"size of a point", withPart(`{"name":"a","shape":"point","radius":1}`), `/parts/0/radius: key "radius" does not belong to part point; it has no keys of its own`, `"radius"`},
+
+	// Requests.
+	{"empty request", withRequest(`{}`), "/wanted/0: wanted[0] asks for nothing; add one of charges", "{}"},
+	{"two requests in one", withRequest(`{"charges":true,"points":[[0,0,0]]}`), "/wanted/0/points: a request with both charges and points", `"points"`},
+	{"misspelt request", withRequest(`{"point":[[0,0,0]]}`), `/wanted/0/point: unknown key "point"; did you mean "points"?`, `"point"`},
+	{"charges false", withRequest(`{"charges":false}`), "/wanted/0/charges: charges must be true (got false)", "false"},
+	{"no points", withRequest(`{"points":[]}`), "/wanted/0/points: points must be a list of at least one vector [x, y, z]", "^[]"},
+	{"short point", withRequest(`{"points":[[0,0,0],[1,2]]}`), "/wanted/0/points/1: points[1] must be three numbers (got a list of 2)", "[1,2]"},
+	{"side", withRequest(`{"points":[[0,0,0]],"side":"outer"}`), `/wanted/0/side: side must be "mean", "inside" or "outside" (got "outer")`, `"outer"`},
+	{"by_part", withRequest(`{"points":[[0,0,0]],"by_part":1}`), "/wanted/0/by_part: by_part must be true or false (got 1)", "1}]"},
+	{"gradient", withRequest(`{"points":[[0,0,0]],"gradient":true}`), `/wanted/0/gradient: key "gradient" is not supported yet`, `"gradient"`},
+	{"foreign option", withRequest(`{"charges":true,"csv":"a.csv"}`), `/wanted/0/csv: key "csv" does not belong to request charges`, `"csv"`},
+	{"line without points", withRequest(`{"line":{"from":[0,0,0],"to":[0,0,1],"count":0}}`), "/wanted/0/line/count: count must be from 1 to 10000000 (got 0)", "0}"},
+	{"line too long", withRequest(`{"line":{"from":[-1.7e308,0,0],"to":[1.7e308,0,0],"count":3}}`), "/wanted/0/line/to: the line is too long", "[1.7e308"},
+	{"plane counts", withRequest(`{"plane":{"corner":[0,0,0],"edge1":[1,0,0],"edge2":[0,1,0],"counts":[2]}}`), "/wanted/0/plane/counts: counts must be two whole numbers (got a list of 1)", "[2]"},
+	{"plane parallel", withRequest(`{"plane":{"corner":[0,0,0],"edge1":[1,0,0],"edge2":[-2,0,0],"counts":[2,2]}}`), "/wanted/0/plane/edge2: edge2 is parallel to edge1", "[-2,0,0]"},
+	{"grid inverted", withRequest(`{"grid":{"min":[0,0,0],"max":[1,-1,1],"counts":[2,2,2]}}`), "/wanted/0/grid/max/1: max must be above min in y (got -1 and 0)", "-1"},
+	{"grid flat", withRequest(`{"grid":{"min":[0,0,0],"max":[1,1,0],"counts":[2,2,2]}}`), "/wanted/0/grid/max/2: max must be above min in z", "0],\"counts"},
+	{"too many points", withRequest(`{"grid":{"min":[0,0,0],"max":[1,1,1],"counts":[10000000,10000000,10000000]}}`), "/wanted/0/grid: more than 10000000 points in all", `{"min`},
+	{"points beyond int64", withRequest(`{"grid":{"min":[0,0,0],"max":[1,1,1],"counts":[4194304,4194304,1048576]}}`), "/wanted/0/grid: more than 10000000 points in all", `{"min`},
+	{"too many points in all", withRequest(`{"line":{"from":[0,0,0],"to":[1,1,1],"count":10000000}},{"points":[[0,0,0]]}`), "/wanted/1/points: more than 10000000 points in all", "[[0,0,0]]"},
+	{"reading", withRequest(`{"reading":{}}`), `/wanted/0/reading: request "reading" is not supported yet`, `"reading"`},
+	{"linkage", withRequest(`{"linkage":{}}`), `request "linkage" is not supported yet`, `"linkage"`},
+	{"force", withRequest(`{"force":{"on":"a"}}`), `request "force" is not supported yet`, `"force"`},
+	{"energy", withRequest(`{"energy":["a","b"]}`), `request "energy" is not supported yet`, `"energy"`},
+	{"reach", withRequest(`{"reach":{"flux_density":1}}`), `request "reach" is not supported yet`, `"reach"`},
+	{"travel", withRequest(`{"travel":{}}`), `request "travel" is not supported yet`, `"travel"`},
+	{"hand_over", withRequest(`{"hand_over":"a.json"}`), `request "hand_over" is not supported yet`, `"hand_over"`},
+
+	// Names of files.
+	{"output in a folder", withLine(`"csv":"a/b.csv"`), `/wanted/0/csv: csv must not contain / or \ (got "a/b.csv")`, `"a/b.csv"`},
+	{"output backslash", withLine(`"csv":"a\\b.csv"`), "must not contain / or", `"a\\b.csv"`},
+	{"output parent", withLine(`"csv":".."`), "must not start with a dot", `".."`},
+	{"output hidden", withLine(`"csv":".a.csv"`), "must not start with a dot", `".a.csv"`},
+	{"output empty", withLine(`"csv":""`), "must not be empty", `""`},
+	{"output of the results", withLine(`"csv":"Results.JSON"`), "is taken by the results themselves", `"Results.JSON"`},
+	{"output device", withLine(`"csv":"con.csv"`), "is a device name on Windows", `"con.csv"`},
+	{"output colon", withLine(`"csv":"a:b"`), "must not contain control characters or any of", `"a:b"`},
+	{"output end", withLine(`"csv":"a."`), "end with a space or a dot", `"a."`},
+	{"output twice", withLine(`"csv":"a.csv","plot":"A.csv"`), "/wanted/0/plot: plot is already the name of the output at /wanted/0/csv", `"A.csv"`},
+	{"output number", withLine(`"csv":1`), "/wanted/0/csv: csv must be a file name (got 1)", "1}"},
+	{"input absolute", withRequest(`{"points_file":"/etc/points.csv"}`), "/wanted/0/points_file: points_file must not be an absolute path", `"/etc`},
+	{"input drive", withRequest(`{"points_file":"C:points.csv"}`), "must not be an absolute path", `"C:`},
+	{"input parent", withRequest(`{"points_file":"a/../../points.csv"}`), "must not leave the scene's folder", `"a/..`},
+	{"input backslash", withRequest(`{"points_file":"a\\b.csv"}`), "must not contain backslashes", `"a\\b`},
+	{"input dot", withRequest(`{"points_file":"./a.csv"}`), "is not a plain relative path", `"./a`},
+	{"input absent", withRequest(`{"points_file":"none.csv"}`), "/wanted/0/points_file: none.csv cannot be read", `"none`},
+	{"input folder", withRequest(`{"points_file":"folder"}`), "folder is not a regular file", `"folder`},
+	{"input wrong", withRequest(`{"points_file":"wrong.csv"}`), `/wanted/0/points_file: wrong.csv:3: y is not a finite decimal number (got "b")`, `"wrong`},
+
+	// Hand checks.
+	{"hand empty", withRequest(`{"charges":true,"hand":[]}`), "/wanted/0/hand: hand must be a list of at least one object (hand)", "^[]"},
+	{"hand incomplete", withHand(`"points":[[0,0,0]]`, `{"quantity":"B.z","value":1}`), "/wanted/0/hand/0/within: within is missing", `{"quant`},
+	{"hand quantity", withHand(`"points":[[0,0,0]]`, `{"quantity":"Bz","value":1,"within":1}`), `/wanted/0/hand/0/quantity: unknown quantity "Bz"; did you mean`, `"Bz"`},
+	{"hand component", withHand(`"points":[[0,0,0]]`, `{"quantity":"B.w","value":1,"within":1}`), `unknown quantity "B.w"; write B, B.x, B.y, B.z, |B|`, `"B.w"`},
+	{"hand scalar component", withHand(`"points":[[0,0,0]]`, `{"quantity":"Vm.x","value":1,"within":1}`), `unknown quantity "Vm.x"; write Vm`, `"Vm.x"`},
+	{"hand vector value", withHand(`"points":[[0,0,0]]`, `{"quantity":"H","value":1,"within":1}`), "/wanted/0/hand/0/value: value of H must be three numbers (got 1)", "1,\"within"},
+	{"hand scalar value", withHand(`"points":[[0,0,0]]`, `{"quantity":"|H|","value":[1,2,3],"within":1}`), "value of |H| must be a number (got a list of 3)", "[1,2,3]"},
+	{"hand at", withHand(`"points":[[0,0,0]]`, `{"quantity":"B.z","at":1,"value":1,"within":1}`), "/wanted/0/hand/0/at: at must be a number of a point, from 0 to 0 (got 1)", "1,\"value"},
+	{"hand negative at", withHand(`"points":[[0,0,0]]`, `{"quantity":"B.z","at":-1,"value":1,"within":1}`), "/wanted/0/hand/0/at: at must be from 0", "-1"},
+	{"hand within", withHand(`"points":[[0,0,0]]`, `{"quantity":"B.z","value":1,"within":-1}`), "/wanted/0/hand/0/within: within must be ≥ 0 (got -1)", "-1"},
+	{"hand other kind", withHand(`"points":[[0,0,0]]`, `{"quantity":"E.z","value":1,"within":1}`), "nothing in the scene yields E.z", `"E.z"`},
+	{"hand part", withHand(`"charges":true`, `{"quantity":"b/total_charge","value":1,"within":1}`), `no part is called "b"; `, `"b/`},
+	{"hand face", withHand(`"charges":true`, `{"quantity":"a/top/charge","value":1,"within":1}`), `a sphere has no face "top"; its faces are: surface`, `"a/`},
+	{"hand without part", withHand(`"charges":true`, `{"quantity":"charge","value":1,"within":1}`), `quantity "charge" does not say of which face; write PART/FACE/charge`, `"charge",`},
+	{"hand range", withHand(`"charges":true`, `{"quantity":"a/surface/density","value":1,"within":1}`), `write PART/FACE/density.min, PART/FACE/density.max`, `"a/`},
+	{"hand at of charges", withHand(`"charges":true`, `{"quantity":"a/volume","at":1,"value":1,"within":1}`), "/wanted/0/hand/0/at: at is for requests at points", "1,\"value"},
+}
+
+// withLine returns a scene that asks for a line with further options.
+func withLine(options string) string {
+	return withRequest(`{"line":{"from":[0,0,0],"to":[0,0,1],"count":2},` + options + `}`)
+}
+
+// manyKeys returns an object with more keys than any object may have.
+func manyKeys() string {
+	var b strings.Builder
+	for i := range 80 {
+		fmt.Fprintf(&b, `,"k%d":0`, i)
+	}
+	return "{" + b.String()[1:] + "}"
+}
+
+// folder holds the input files of the tests.
+var folder = fstest.MapFS{
+	"good.csv":     {Data: []byte("x,y,z\n1,2,3\n")},
+	"wrong.csv":    {Data: []byte("# three\n1,2,3\n1,b,3\n")},
+	"folder/a.csv": {Data: []byte("1,2,3\n")},
+}
+
+func TestBadScenes(t *testing.T) {
+	if len(badScenes) < 45 {
+		t.Fatalf("only %d bad scenes", len(badScenes))
+	}
+	for _, c := range badScenes {
+		t.Run(c.name, func(t *testing.T) {
+			s, err := Parse("scene.json", []byte(c.scene), folder)
+			if err == nil || s != nil {
+				t.Fatalf("Parse(%.200s) = %v, %v; want an error with %q", c.scene, s, err, c.want)
+			}
+			if text := err.Error(); !strings.Contains(text, c.want) || strings.ContainsAny(text, "\n\r\t") || len(text) > 800 {
+				t.Errorf("Parse(%.200s)\n got %s\nwant one line with %s", c.scene, text, c.want)
+			}
+			var e *Error
+			if !errors.As(err, &e) {
+				t.Fatalf("error is a %T, want *Error", err)
+			}
+			if e.Remedy == "" {
+				t.Errorf("no remedy in %v", err)
+			}
+			if c.at == "" {
+				return
+			}
+			off := strings.Index(c.scene, c.at)
+			if last, ok := strings.CutPrefix(c.at, "^"); ok {
+				off = strings.LastIndex(c.scene, last)
+			}
+			doc := document{src: []byte(c.scene)}
+			if line, column := doc.position(off); e.Line != line || e.Column != column {
+				t.Errorf("Parse(%.200s)\n got %d:%d in %v\nwant %d:%d, that of %s", c.scene, e.Line, e.Column, err, line, column, c.at)
+			}
+		})
+	}
+}
