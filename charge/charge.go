@@ -112,7 +112,13 @@ func (m Model) At(x r3.Vec, side field.Side) Reading { return m.Readings(field.P
 
 // Readings returns the readings at a batch of points.
 func (m Model) Readings(at *field.Points, side field.Side) []Reading {
-	s := m.Parts.Sample(at, side, field.WantPhi|field.WantG|field.WantErr, r3.Scale(Epsilon0, m.Applied))
+	return m.ReadingsTowards(at, side, nil)
+}
+
+// ReadingsTowards is Readings where parts outside the model decide which side of a point is meant: ways gives for each point
+// the direction in which that side lies, zero for the mean; nil leaves it to the model.
+func (m Model) ReadingsTowards(at *field.Points, side field.Side, ways []r3.Vec) []Reading {
+	s := m.Parts.Sample(at, side, ways, field.WantPhi|field.WantG|field.WantErr, r3.Scale(Epsilon0, m.Applied))
 	out := make([]Reading, at.Len())
 	unit := m.Unit
 	if unit == 0 {

@@ -9,19 +9,23 @@ import (
 )
 
 // Member is one part of an assembly: a polarized body (Charge), or any other source, with the place of its sheet if it has
-// one.
+// one. A body without charge or source only takes part in telling where a point is.
 type Member struct {
 	Charge *Charge      // bound charge of a body, or nil
-	Source field.Source // what else makes the field, if Charge is nil
+	Source field.Source // what else makes the field, if Charge is nil; nil for nothing
 	Sheet  geom.Sheet   // where that source is a charged sheet, or nil
+	Body   geom.Body    // where a part is that carries nothing, or nil
 }
 
 // source returns what makes the field of the member.
 func (m *Member) source() field.Source {
-	if m.Charge != nil {
+	switch {
+	case m.Charge != nil:
 		return m.Charge
+	case m.Source != nil:
+		return m.Source
 	}
-	return m.Source
+	return field.Sum(nil)
 }
 
 // locate tells where x lies with respect to the member; a source without a place is nowhere.
@@ -31,6 +35,8 @@ func (m *Member) locate(p field.Point) geom.Place {
 		return m.Charge.body.Locate(p.X, p.Slack)
 	case m.Sheet != nil:
 		return m.Sheet.Locate(p.X, p.Slack)
+	case m.Body != nil:
+		return m.Body.Locate(p.X, p.Slack)
 	}
 	return geom.Place{Face: -1}
 }
@@ -127,41 +133,32 @@ func (a Assembly) towards(p field.Point, way r3.Vec, want field.Want) field.Valu
 	return total.At(0)
 }
 
-// Content returns the sum of the polarizations at a point, and the first part that contains it, -1 if none. On faces the
-// mean of both sides is taken, or the side wanted; NaN components on an edge, where more than two values meet.
-func (a Assembly) Content(p field.Point, side field.Side) (pol r3.Vec, inside int) {
-	way, _ := a.Way(p, side)
-	return a.contentTowards(p, way)
-}
-
-func (a Assembly) contentTowards(p field.Point, way r3.Vec) (pol r3.Vec, inside int) {
+// ContentTowards returns the sum of the polarizations at a point, and the first part that contains it, -1 if none. On faces
+// it is that of the side that lies in the direction way, or the mean of both for a zero direction, which lies in no part;
+// NaN components on an edge of a polarized body, where more than two values meet.
+func (a Assembly) ContentTowards(p field.Point, way r3.Vec) (pol r3.Vec, inside int) {
 	inside = -1
 	for i := range a {
-		c := a[i].Charge
-		if c == nil {
-			continue
-		}
 		place := a[i].locate(p)
-		share := 0.0
+		var share float64
 		switch place.Region {
 		case geom.Inside:
 			share = 1
 		case geom.On:
-			share = c.share(place, way)
+			share = shareOf(place, way)
 		}
-		if share == 0 {
-			continue
-		}
-		if inside < 0 && share == 1 {
+		if inside < 0 && share == 1 && a[i].Sheet == nil {
 			inside = i
 		}
-		pol = r3.Add(pol, r3.Scale(share, c.Polarization(p.X)))
+		if c := a[i].Charge; c != nil && share != 0 {
+			pol = r3.Add(pol, r3.Scale(share, c.Polarization(p.X)))
+		}
 	}
 	return pol, inside
 }
 
-// share returns how much of the polarization counts at a point of the surface.
-func (c *Charge) share(place geom.Place, way r3.Vec) float64 {
+// shareOf returns how much of a body's polarization counts at a point of its surface.
+func shareOf(place geom.Place, way r3.Vec) float64 {
 	if place.Edge {
 		return math.NaN()
 	}
@@ -181,33 +178,34 @@ type Sample struct {
 	Inside []int    // first part that contains the point, -1 if none
 }
 
-// Sample evaluates the assembly in a uniform field applied from outside, and the polarization at the points.
-func (a Assembly) Sample(at *field.Points, side field.Side, want field.Want, applied r3.Vec) Sample {
-	s := Sample{Values: field.NewValues(at.Len(), want|field.WantG), P: make([]r3.Vec, at.Len()), Inside: make([]int, at.Len())}
-	a.Evaluate(s.Values, at, side)
+// Sample evaluates the assembly in a uniform field applied from outside, and the polarization at the points. Where parts
+// outside the assembly decide the side of a point, ways gives for each point the direction in which it lies (zero: the
+// mean); ways is nil otherwise.
+func (a Assembly) Sample(at *field.Points, side field.Side, ways []r3.Vec, want field.Want, applied r3.Vec) Sample {
+	s := Sample{Values: field.NewValues(at.Len(), want), P: make([]r3.Vec, at.Len()), Inside: make([]int, at.Len())}
+	a.sum().Evaluate(s.Values, at, side)
 	if applied != (r3.Vec{}) {
-		out := field.NewValues(at.Len(), want|field.WantG)
+		out := field.NewValues(at.Len(), want)
 		field.Constant{G: applied}.Evaluate(out, at, side)
 		s.Values.Add(out)
 	}
 	for i := range at.Len() {
-		s.P[i], s.Inside[i] = a.Content(at.At(i), side)
+		p := at.At(i)
+		var way r3.Vec
+		if ways != nil {
+			way = ways[i]
+		} else {
+			way, _ = a.Way(p, side)
+		}
+		if way != (r3.Vec{}) {
+			v := a.towards(p, way, want)
+			v.G, v.Phi = r3.Add(v.G, applied), v.Phi-r3.Dot(applied, p.X.Value())
+			s.Values.Set(i, v)
+		}
+		s.P[i], s.Inside[i] = a.ContentTowards(p, way)
 		if math.IsNaN(s.P[i].X) {
 			s.Values.Status[i] = max(s.Values.Status[i], field.OnEdge)
 		}
 	}
 	return s
-}
-
-// Towards puts at point i what holds on the side that lies in the direction way, for a place where parts outside this
-// assembly decide which side that is; way zero is the mean.
-func (s *Sample) Towards(a Assembly, i int, p field.Point, way, applied r3.Vec) {
-	v := a.towards(p, way, s.Values.Want())
-	v.G = r3.Add(v.G, applied)
-	v.Phi -= r3.Dot(applied, p.X.Value())
-	s.P[i], s.Inside[i] = a.contentTowards(p, way)
-	if math.IsNaN(s.P[i].X) {
-		v.Status = max(v.Status, field.OnEdge)
-	}
-	s.Values.Set(i, v)
 }

@@ -9,7 +9,9 @@ import (
 
 // Check is a hand check with what came out.
 type Check struct {
-	Quantity   string
+	Quantity   string // as written in the scene
+	Name       string // without address and component
+	Kind       Kind   // of the part it speaks of, if it speaks of one
 	At         int
 	Hand       []float64 // SI; one number or three
 	Value      []float64
@@ -42,32 +44,34 @@ func CheckRecord(h *scenefile.HandCheck, rec *Record) Check {
 
 // CheckCharge holds one hand check against what the parts carry.
 func (s *Setup) CheckCharge(h *scenefile.HandCheck, all []PartCharge) Check {
-	q := h.Quantity
 	for i := range all {
-		c := &all[i]
-		if s.Parts[c.Part].Name != q.Part {
-			continue
+		if p := &s.Parts[all[i].Part]; p.Name == h.Quantity.Part {
+			check := chargeCheck(h, &all[i])
+			check.Kind = p.Kind
+			return check
 		}
-		if q.Face != "" {
-			for _, f := range c.Faces {
-				if f.Face == q.Face {
-					return held(h, faceQuantity(&f, q))
-				}
-			}
-			break
+	}
+	return held(h, math.NaN())
+}
+
+func chargeCheck(h *scenefile.HandCheck, c *PartCharge) Check {
+	q := h.Quantity
+	for _, f := range c.Faces {
+		if q.Face != "" && f.Face == q.Face {
+			return held(h, faceQuantity(&f, q))
 		}
-		switch q.Name {
-		case "volume":
-			return held(h, c.Volume)
-		case "volume_charge":
-			return held(h, c.Inside)
-		case "volume_density":
-			return held(h, extreme(q.Of, c.Min, c.Max))
-		case "total_charge":
-			return held(h, c.Total)
-		case "moment":
-			return held(h, component(c.Moment, q.Of)...)
-		}
+	}
+	switch q.Name {
+	case "volume":
+		return held(h, c.Volume)
+	case "volume_charge":
+		return held(h, c.Inside)
+	case "volume_density":
+		return held(h, extreme(q.Of, c.Min, c.Max))
+	case "total_charge":
+		return held(h, c.Total)
+	case "moment":
+		return held(h, component(c.Moment, q.Of)...)
 	}
 	return held(h, math.NaN())
 }
@@ -108,7 +112,7 @@ func component(v r3.Vec, of string) []float64 {
 
 // held compares; a value that does not exist fails.
 func held(h *scenefile.HandCheck, value ...float64) Check {
-	c := Check{Quantity: h.Text, At: h.At, Hand: h.Value, Value: value, Within: h.Within, Formula: h.Formula}
+	c := Check{Quantity: h.Text, Name: h.Quantity.Name, At: h.At, Hand: h.Value, Value: value, Within: h.Within, Formula: h.Formula}
 	if len(value) != len(h.Value) {
 		c.Difference = math.NaN()
 		return c

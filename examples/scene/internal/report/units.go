@@ -1,0 +1,99 @@
+package report
+
+import (
+	"math"
+	"strconv"
+	"strings"
+
+	"gonum.org/v1/gonum/spatial/r3"
+)
+
+// scale is a unit of the trade.
+type scale struct {
+	unit   string
+	factor float64 // SI per unit
+}
+
+// ladders list the units of a quantity from large to small; the first in which the value is at least 1 is taken, the last
+// for anything smaller.
+var ladders = map[string][]scale{
+	"B":  {{"mT", 1e-3}, {"µT", 1e-6}, {"nT", 1e-9}},
+	"H":  {{"kA/m", 1e3}, {"A/m", 1}, {"mA/m", 1e-3}},
+	"Vm": {{"A", 1}, {"mA", 1e-3}, {"µA", 1e-6}},
+	"E":  {{"MV/m", 1e6}, {"kV/m", 1e3}, {"V/m", 1}, {"mV/m", 1e-3}},
+	"D":  {{"mC/m²", 1e-3}, {"µC/m²", 1e-6}, {"nC/m²", 1e-9}},
+	"V":  {{"kV", 1e3}, {"V", 1}, {"mV", 1e-3}, {"µV", 1e-6}},
+	"q":  {{"µC", 1e-6}, {"nC", 1e-9}, {"pC", 1e-12}, {"fC", 1e-15}},
+	"g":  {{"A·m", 1}, {"mA·m", 1e-3}, {"µA·m", 1e-6}},
+	"M":  {{"kA/m", 1e3}, {"A/m", 1}},
+	"P":  {{"mC/m²", 1e-3}, {"µC/m²", 1e-6}, {"nC/m²", 1e-9}},
+	"dM": {{"MA/m²", 1e6}, {"kA/m²", 1e3}, {"A/m²", 1}},
+	"dP": {{"C/m³", 1}, {"mC/m³", 1e-3}, {"µC/m³", 1e-6}},
+	"m":  {{"A·m²", 1}, {"mA·m²", 1e-3}, {"µA·m²", 1e-6}},
+	"p":  {{"nC·m", 1e-9}, {"pC·m", 1e-12}, {"fC·m", 1e-15}},
+	"m²": {{"m²", 1}, {"cm²", 1e-4}, {"mm²", 1e-6}, {"µm²", 1e-12}},
+	"m³": {{"m³", 1}, {"cm³", 1e-6}, {"mm³", 1e-9}, {"µm³", 1e-18}},
+}
+
+// pick returns the unit of a quantity in which a value of the size reads well.
+func pick(quantity string, size float64) scale {
+	steps := ladders[quantity]
+	for _, s := range steps {
+		if size >= 0.9995*s.factor {
+			return s
+		}
+	}
+	if size == 0 {
+		return steps[0]
+	}
+	return steps[len(steps)-1]
+}
+
+// places returns how many decimals show a size with n significant digits.
+func places(size float64, n int) int {
+	if size == 0 || math.IsNaN(size) || math.IsInf(size, 0) {
+		return 0
+	}
+	return min(max(n-1-int(math.Floor(math.Log10(size))), 0), 12)
+}
+
+// significant digits of the report: what inputs of three or four digits deserve, and one more to see rounding.
+const significant = 5
+
+// fixed prints v with the decimals of a value of the given size; nothing of a size too small for those is shown but 0.
+func fixed(v, size float64) string {
+	if math.IsNaN(v) {
+		return "none"
+	}
+	text := strconv.FormatFloat(v, 'f', places(size, significant), 64)
+	if strings.Trim(text, "-0.") == "" {
+		return "0"
+	}
+	return text
+}
+
+// plain prints a number that the reader typed.
+func plain(v float64) string { return strconv.FormatFloat(v, 'g', 7, 64) }
+
+// value prints a number with its unit.
+func value(quantity string, v float64) string {
+	s := pick(quantity, math.Abs(v))
+	switch {
+	case math.IsNaN(v):
+		return "none"
+	case v == 0:
+		return "0"
+	}
+	return fixed(v/s.factor, math.Abs(v)/s.factor) + " " + s.unit
+}
+
+// vector prints three components in a common unit, and the unit.
+func vector(quantity string, v r3.Vec) (x, y, z, norm, unit string) {
+	n := r3.Norm(v)
+	if math.IsNaN(n) {
+		return "none", "none", "none", "none", pick(quantity, 0).unit
+	}
+	s := pick(quantity, n)
+	size := n / s.factor
+	return fixed(v.X/s.factor, size), fixed(v.Y/s.factor, size), fixed(v.Z/s.factor, size), fixed(size, size), s.unit
+}
