@@ -51,6 +51,7 @@ func run() error {
 		return err
 	}
 	model := charge.Model{Parts: []charge.Part{disc, {Source: corona}}}
+	fmt.Println("The wire obeys the laws of the static field (package verify/law).")
 	fmt.Println("Electret disc 16 mm x 0.5 mm, P = 2 uC/m^2, below a wire of 40 mm at 15 mm that carries -2 nC/m.")
 	fmt.Println("\n  height       E of both      of the disc      of the wire")
 	fmt.Println("      mm            kV/m             kV/m             kV/m")
