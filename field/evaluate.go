@@ -123,7 +123,11 @@ type Posed struct {
 
 // Field returns g at x, in the outer frame.
 func (s Posed) Field(x r3.Vec) r3.Vec {
-	return single(s, x)
+	work := singles.Get().(*one)
+	defer singles.Put(work)
+	work.x[0], work.y[0], work.z[0] = x.X, x.Y, x.Z
+	s.Evaluate(&work.values, &work.points, Mean)
+	return r3.Vec{X: work.gx[0], Y: work.gy[0], Z: work.gz[0]}
 }
 
 // Evaluate computes the arrays of dst at points of the outer frame; see Evaluator.
@@ -225,16 +229,7 @@ func everywhere() r3.Box {
 	return r3.Box{Min: r3.Vec{X: -inf, Y: -inf, Z: -inf}, Max: r3.Vec{X: inf, Y: inf, Z: inf}}
 }
 
-// single evaluates the field of an Evaluator at one point.
-func single(e Evaluator, x r3.Vec) r3.Vec {
-	work := singles.Get().(*one)
-	defer singles.Put(work)
-	work.x[0], work.y[0], work.z[0] = x.X, x.Y, x.Z
-	e.Evaluate(&work.values, &work.points, Mean)
-	return r3.Vec{X: work.gx[0], Y: work.gy[0], Z: work.gz[0]}
-}
-
-// one is a batch of one point and its field.
+// one is a batch of one point and its field, reused between calls.
 type one struct {
 	x, y, z, gx, gy, gz [1]float64
 	points              Points

@@ -2,7 +2,6 @@ package bound_test
 
 import (
 	"math"
-	"os"
 	"sort"
 	"testing"
 
@@ -70,10 +69,7 @@ func referenceBody(t *testing.T, c *refcase.Case) (body geom.Body, p field.Affin
 
 // TestReference walks the whole path from body to field for every reference body: the accuracy contract is 1e-12.
 func TestReference(t *testing.T) {
-	files := []string{"../../verify/testdata/dev.json"}
-	if extra := os.Getenv("BOUNDPOLE_REFERENCE"); extra != "" {
-		files = append(files, extra)
-	}
+	files := []string{"../../verify/testdata/dev.json", "../../verify/testdata/hard.json"}
 	worst, where := map[string]float64{}, map[string]string{}
 	for _, file := range files {
 		cases, err := refcase.Load(file)

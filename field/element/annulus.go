@@ -10,10 +10,11 @@ import (
 //
 // Units: natural; g in the unit of the density, phi in that times the unit of length.
 // Frame: that of the shape, about the z axis; the normal is +z.
-// Domain: all finite x. NaN in, NaN out. Built by NewAnnulus; immutable.
+// Domain: all finite x; radii within 1e-70 and 1e70. NaN in, NaN out. Built by NewAnnulus; immutable.
 // Singular: |g| grows as log(1/d) at distance d from a rim; on it G is NaN, Phi finite, field.OnEdge. On the face the
 // mean of both sides, or the side asked for; Outside is above.
-// Accuracy: |error| <= 1e-13 of phi and |g| (TestRoundReference).
+// Accuracy: |error| <= 1e-13 max(|g|, 1e-3 g0) for g, g0 = |Density| min(1, (a/R)^2) with a the outer radius; 2e-14 for phi
+// likewise (TestRoundReference).
 // Source: the outer disc less the inner one, see Disc; where that would cancel, Gauss-Legendre over rings, and for the
 // potential close by product integration of the logarithm.
 type Annulus struct {

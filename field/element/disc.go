@@ -13,12 +13,12 @@ import (
 //
 // Units: natural; g in the unit of the density, phi in that times the unit of length.
 // Frame: that of the shape, about the z axis; the normal is +z.
-// Domain: all finite x. NaN in, NaN out. Built by NewDisc; immutable.
+// Domain: all finite x; radius within 1e-70 and 1e70. NaN in, NaN out. Built by NewDisc; immutable.
 // Singular: |g| grows as log(1/d) at distance d from the rim; on it G is NaN, Phi finite, field.OnEdge. On the face the
 // mean of both sides, or the side asked for; Outside is above.
-// Accuracy: |error| <= 1e-13 of phi and |g| (TestRoundReference).
-// Source: phi = a U - rho T1 - z Omega by Green's theorem, see Paxton (1959) Rev. Sci. Instrum. 30, 254 for Omega; zonal
-// harmonics beyond 2.5 radii.
+// Accuracy: |error| <= 2e-14 of phi and 4e-15 of |g| (TestRoundReference).
+// Source: phi = (a U - rho T1 - z Omega)/4 pi by Green's theorem, see Paxton (1959) Rev. Sci. Instrum. 30, 254 (from memory)
+// for Omega; zonal harmonics beyond 2.5 radii.
 type Disc struct {
 	flat flatRing
 }
@@ -101,7 +101,7 @@ func (f *flatRing) value(x field.Point, side field.Side, want field.Want) field.
 	}
 	h := sign(p.height(f.level))
 	if status == field.OnFace {
-		h = float64(sideSign(side))
+		h = sideSign(side)
 	}
 	v := f.near(&p, h, want)
 	if status == field.OnFace && f.density != 0 {
@@ -169,7 +169,7 @@ func sign(x float64) float64 {
 }
 
 // sideSign returns +1 for Outside, -1 for Inside, 0 for the mean.
-func sideSign(s field.Side) int {
+func sideSign(s field.Side) float64 {
 	switch s {
 	case field.Outside:
 		return 1

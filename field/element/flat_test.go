@@ -2,7 +2,6 @@ package element_test
 
 import (
 	"math"
-	"os"
 	"sort"
 	"testing"
 
@@ -75,10 +74,7 @@ func vecs(a [][3]float64) []r3.Vec {
 // TestFlatReference holds every element with plane faces against the reference, values to the contract of 1e-12 and
 // estimates to being true.
 func TestFlatReference(t *testing.T) {
-	files := []string{"../../verify/testdata/dev.json"}
-	if extra := os.Getenv("BOUNDPOLE_REFERENCE"); extra != "" {
-		files = append(files, extra)
-	}
+	files := []string{"../../verify/testdata/dev.json", "../../verify/testdata/hard.json"}
 	worst := map[string]float64{}
 	where := map[string]string{}
 	for _, file := range files {

@@ -8,16 +8,16 @@ import (
 	"gonum.org/v1/gonum/spatial/r3"
 )
 
-// This file holds what the round sources (disc, annulus, wall, tube) share: a point in cylinder coordinates, and the way
-// from the two harmonics of a potential, constant and cos(phi) in the azimuth, to a field.Value.
-//
-// All sums are kept without the factor 1/4pi until roundPoint.value.
+// The round sources (disc, annulus, wall, tube) share this: a point in cylinder coordinates, and the way from the two
+// harmonics of a potential, constant and cos(phi) in the azimuth, to a field.Value. Geometry comes in pairs, so that the
+// distances from faces and rims keep their digits; all else is float64. Sums carry no factor 1/4pi until
+// roundPoint.value.
 
 // roundPoint is a field point seen from the axis of a round source.
 type roundPoint struct {
 	rho2  pair.Float // x^2 + y^2
 	rho   float64
-	e     r3.Vec // u vector from the axis; zero on the axis
+	e     r3.Vec // unit vector from the axis; zero on the axis
 	z     pair.Float
 	tol   float64 // distance within which the point counts as on a face
 	reach float64 // distance from the centre of the source
@@ -28,7 +28,7 @@ func newRoundPoint(p field.Point, centre, bound float64) roundPoint {
 	x, y := p.X.X, p.X.Y
 	q := roundPoint{rho2: x.Mul(x).Add(y.Mul(y)), z: p.X.Z}
 	q.rho = math.Sqrt(q.rho2.Hi)
-	if q.rho2.Hi > 1e300 || q.rho2.Hi < 1e-280 { // the squares leave the range
+	if !(q.rho2.Hi < 1e300) || q.rho2.Hi < 1e-280 { // the squares leave the range
 		q.rho = math.Hypot(x.Hi, y.Hi)
 		if q.rho2.Hi < 1e-280 {
 			q.rho2 = pair.Float{}
@@ -71,7 +71,7 @@ type cosine struct {
 }
 
 // rounding is the number of units of rounding that a sum of terms is allowed, of the sum of the sizes of the terms.
-// Free; TestRoundEstimate holds the bounds against reference values.
+// Free; TestRoundReference holds the bounds against reference values.
 const rounding = 12
 
 // value puts the two harmonics together; the cosine one stands along the transverse vector t.
@@ -88,8 +88,10 @@ func (p *roundPoint) value(c *constant, k *cosine, t r3.Vec, want field.Want) fi
 	}
 	if want&field.WantErr != 0 {
 		tn := math.Hypot(t.X, t.Y)
-		v.ErrPhi = over4P*u*(rounding*(c.sizeU+math.Abs(te)*p.rho*k.sizeS)+3*tn*p.rho*k.sizeS) + 3*u*math.Abs(v.Phi) + 8*u*u*p.reach*r3.Norm(v.G)
-		v.ErrG = over4P*rounding*u*(c.sizeG+tn*k.sizeG) + 4*u*r3.Norm(v.G)
+		size := r3.Norm(v.G)
+		v.ErrPhi = over4P*u*(rounding*(c.sizeU+math.Abs(te)*p.rho*k.sizeS)+3*tn*p.rho*k.sizeS) +
+			3*u*math.Abs(v.Phi) + 8*u*u*p.reach*size // the last for the rounding of a pair
+		v.ErrG = over4P*rounding*u*(c.sizeG+tn*k.sizeG) + 4*u*size
 		v.ErrGrad = over4P * 2 * rounding * u * (c.sizeH + tn*k.sizeH)
 	}
 	return v

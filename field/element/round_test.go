@@ -112,7 +112,7 @@ func loadRound(t *testing.T, path string) []roundCase {
 }
 
 // TestRoundReference holds potential, field and estimates against reference values, by the contract: an error is at
-// most 1e-12 of the value or 1e-15 of what the density could give there. Compact sources must do ten times better.
+// most 1e-12 of the value or 1e-15 of what the density could give there. The docs of the sources quote what is measured here.
 func TestRoundReference(t *testing.T) {
 	var over []float64
 	under, claims := 0, 0

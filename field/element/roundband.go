@@ -6,8 +6,8 @@ import (
 	"example.com/boundpole/field/internal/elliptic"
 )
 
-// band is a straight generatrix turned about the axis, cut to one panel: the rings of radius a + slope t at height
-// offset, |t| <= half, seen from (rho, z). Radial bands (annuli) and axial bands (walls) are all there are.
+// band is a charged wall or annulus seen from a point at rho: rings along a straight generatrix, with the position s
+// counted from the foot of the point on it.
 //
 // With q1 and Q the squares of the smallest and the largest distance to a ring and m1 = q1/Q, the ring potential
 // U = a oint dphi/R is
@@ -15,8 +15,9 @@ import (
 //	U = 2 pi a / agm(sqrt Q, sqrt q1)
 //	  = A ( ln(1/q1) + ln Q + L ),   A = (4/pi) a K(m1)/sqrt Q,   L = -ln(q(m1)/m1),   q the elliptic nome
 //
-// [DLMF 19.8.5, 20.9.1, 19.2.19]. A and L are smooth where the band comes close, so the logarithm is integrated in closed
-// form against the Legendre polynomials of the rule (product integration) and no distance is too small.
+// (Gauss's mean, DLMF 19.8(i), and K'/K from the nome, DLMF 20.9(i); from memory, held by TestBandIntegral). A and L are
+// smooth where the band comes close, so the logarithm is integrated in closed form against the Legendre polynomials of
+// the rule (product integration) and no distance is too small.
 type band struct {
 	a, rho float64
 	near   float64 // distance from the line that carries the generatrix: a - rho of a wall, z of an annulus
@@ -104,7 +105,7 @@ func (b *band) split(s float64) (a, l float64) {
 	m1 := q1 / q
 	k := math.Sqrt(max(0, 1-m1))
 	r := math.Sqrt(k)
-	// q = e + 2 e^5 + 15 e^9 + 150 e^13 + 1707 e^17, e = (1 - sqrt k)/(2 (1 + sqrt k)) [DLMF 20.9.1]
+	// q = e + 2 e^5 + 15 e^9 + 150 e^13 + 1707 e^17, e = (1 - sqrt k)/(2 (1 + sqrt k)) (Jacobi)
 	f := 0.5 / ((1 + k) * (1 + r) * (1 + r))
 	e4 := f * m1
 	e4 *= e4
@@ -128,8 +129,9 @@ func agm(x, y float64) float64 {
 // logWeights returns the weights for which sum weight f(node) is the integral over [-1, 1] of f(t) ln((t-x)^2 + y^2), f
 // of degree below 16, in the order -x0, x0, -x1, x1 ... of gauss16.
 //
-// With tau = x + iy, int P_n ln(t - tau) dt = 2 (Q_(n+1) - Q_(n-1))/(2n+1) for n > 0 [DLMF 14.10.4 and 14.12.6 by parts];
-// Q_n goes upward, which is stable enough inside the ellipse of sum 3.2: errors grow like the coefficients of f fall.
+// With tau = x + iy, int P_n ln(t - tau) dt = 2 (Q_(n+1) - Q_(n-1))/(2n+1) for n > 0 (by parts, with
+// Neumann's integral of Q_n). Q_n goes upward, which is stable enough inside the ellipse of sum 3.2: errors grow no faster
+// than the coefficients of f fall.
 func logWeights(x, y float64) (weight [16]float64) {
 	if y < 1e-40 && math.Abs(math.Abs(x)-1) < 1e-40 {
 		y = 1e-40 // on the end itself: the limit

@@ -66,5 +66,9 @@ func TestRoundAllocs(t *testing.T) {
 		if n := testing.AllocsPerRun(20, func() { c.src.Evaluate(dst, pts, field.Mean) }); n > 0 {
 			t.Errorf("%s: %v allocations", c.name, n)
 		}
+		f := c.src.(field.Source)
+		if n := testing.AllocsPerRun(20, func() { f.Field(c.x) }); n > 0 {
+			t.Errorf("%s: Field makes %v allocations", c.name, n)
+		}
 	}
 }

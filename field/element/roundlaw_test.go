@@ -266,3 +266,53 @@ func TestRoundRims(t *testing.T) {
 		}
 	}
 }
+
+// TestRoundExtremes holds that points at any distance give finite values, and bad input is refused.
+func TestRoundExtremes(t *testing.T) {
+	for _, s := range roundSources() {
+		f := s.src.(field.Source)
+		for _, x := range []r3.Vec{
+			{X: 1e200, Y: 1e200, Z: -1e200}, {X: 1e150, Z: 1}, {X: 1e-200, Y: 1e-210, Z: 0.3}, {Z: 1e300},
+			{X: 1e-170, Y: -1e-160, Z: s.centre}, {X: 5e-324}, {Z: s.centre}, {X: 1e8}, {Y: -1e100, Z: 1e-300},
+		} {
+			v := field.At(f, x, field.Mean, field.WantPhi|field.WantG|field.WantGrad|field.WantErr)
+			sum := v.Phi + v.G.X + v.G.Y + v.G.Z + v.ErrPhi + v.ErrG
+			for _, g := range v.Grad {
+				sum += g
+			}
+			if sum-sum != 0 || v.Status != field.Regular && v.Status != field.OnFace {
+				t.Errorf("%s at %v: %+v", s.name, x, v)
+			}
+		}
+		if v := field.At(f, r3.Vec{X: math.NaN()}, field.Mean, 3); v.Status != field.BadInput || !math.IsNaN(v.G.X) {
+			t.Errorf("%s: NaN gave %+v", s.name, v)
+		}
+		if g := f.Field(r3.Vec{Z: math.Inf(1)}); !math.IsNaN(g.Z) {
+			t.Errorf("%s: infinity gave %v", s.name, g)
+		}
+	}
+}
+
+func TestRoundRefusals(t *testing.T) {
+	nan, inf := math.NaN(), math.Inf(1)
+	for name, make := range map[string]func() error{
+		"disc radius":    func() error { _, err := NewDisc(geom.Disc{Radius: -1}, 1); return err },
+		"disc density":   func() error { _, err := NewDisc(geom.Disc{Radius: 1}, nan); return err },
+		"annulus radii":  func() error { _, err := NewAnnulus(geom.Annulus{Inner: 2, Outer: 1}, 1); return err },
+		"annulus charge": func() error { _, err := NewAnnulus(geom.Annulus{Inner: 1, Outer: 2}, inf); return err },
+		"wall ends":      func() error { _, err := NewWall(geom.Wall{Radius: 1, Z1: 1, Z2: 0}, 1, 0, 0); return err },
+		"wall radius":    func() error { _, err := NewWall(geom.Wall{Radius: nan, Z1: 0, Z2: 1}, 1, 0, 0); return err },
+		"wall charge":    func() error { _, err := NewWall(geom.Wall{Radius: 1, Z1: 0, Z2: 1}, 1, nan, 0); return err },
+		"tube radii":     func() error { _, err := NewTube(geom.Tube{Inner: 2, Outer: 1, Height: 1}, r3.Vec{}, 0); return err },
+		"tube slope":     func() error { _, err := NewTube(geom.Tube{Inner: 1, Outer: 2, Height: 1}, r3.Vec{}, inf); return err },
+		"cylinder p": func() error {
+			_, err := NewCylinder(geom.Cylinder{Radius: 1, Height: 1}, r3.Vec{X: nan}, 0)
+			return err
+		},
+		"cylinder size": func() error { _, err := NewCylinder(geom.Cylinder{Radius: 1}, r3.Vec{X: 1}, 0); return err },
+	} {
+		if make() == nil {
+			t.Errorf("%s: no error", name)
+		}
+	}
+}

@@ -17,12 +17,13 @@ const (
 	needLoop                    // field of the loop
 )
 
-// rimValues holds the integrals of one rim of radius a at (rho, z), see the package formulas at each:
+// rimValues holds the integrals over one rim of radius a at (rho, z); R is the distance to a point of the rim at the azimuth
+// phi from the field point, Omega the solid angle of the disc:
 //
 //	u            a oint dphi/R
 //	t1, t1r      T1 = a oint cos phi dphi/R, and T1/rho
 //	disc         potential of the disc of unit density, a U - rho T1 - z Omega
-//	solid        solid angle Omega of the disc, odd in z
+//	solid        Omega, odd in z
 //	s, sat       S(z) = (1/rho) int_0^z T1 dz as sat S_inf + s
 //	e, full      int_0^z of the ring's field across the axis as full E_inf + e
 //	s3a, c3a     a oint dphi/R^3, a oint cos phi dphi/R^3; d3a is their difference
@@ -65,10 +66,7 @@ func (r *rim) values(what need) (v rimValues) {
 
 // setDisc sets the solid angle on the side that sign says, and what else comes from series far off.
 func (r *rim) setDisc(v *rimValues, omega float64) {
-	v.solid = omega
-	if side := sign(r.z); side != r.sign { // on the disc: another limit than the one of z
-		v.solid += 2 * math.Pi * r.within() * (r.sign - side)
-	}
+	v.solid = onSide(omega, r.z, r.sign, r.d)
 	if r.away {
 		far, side := r.series(), sign(r.z)
 		v.disc = far.i
@@ -77,6 +75,14 @@ func (r *rim) setDisc(v *rimValues, omega float64) {
 		return
 	}
 	v.disc = r.d*v.u + r.rho*(v.u-v.t1) - r.z*omega
+}
+
+// onSide returns the solid angle of a disc on the wanted side of its plane, from the one at height z, d within its rim.
+func onSide(omega, z, side, d float64) float64 {
+	if at := sign(z); at != side {
+		omega += math.Pi * (1 + sign(d)) * (side - at)
+	}
+	return omega
 }
 
 // overRho returns T1/rho, on the axis its limit.
@@ -169,7 +175,7 @@ func (c *constant) join(o *constant) {
 }
 
 // Below thin times the radius the extent of a part is small enough for Gauss-Legendre across it where the point is more
-// than clear extents away: 8 nodes then leave 9.9^-16 = 1e-16, while differences lose radius/extent. Elsewhere the
+// than clearBy extents away: 8 nodes then leave 9.9^-16 = 1e-16, while differences lose radius/extent. Elsewhere the
 // differences lose nothing. Both free.
 const (
 	thin    = 0.1

@@ -10,37 +10,23 @@ type rim struct {
 	away         bool    // beyond rimFar radii, where the series take over
 }
 
-// rimFar is the distance in radii from which the solid angle and what goes with it come from series: the closed forms lose
-// u (R/a)^2. Free.
+// rimFar is the distance in radii from which the potential of a disc comes from a series, for its closed form loses
+// u (R/a)^2, and from which S and E are counted from infinity, for they level off. Free.
 const rimFar = 3
 
 // rim returns the circle of radius a in the plane z = end as seen from p.
 func (p *roundPoint) rim(a, end float64) rim { return rimAt(a, p.rho, p.inward(a), p.height(end)) }
 
+// rimAt returns the circle of radius a at d = a - rho and z.
 func rimAt(a, rho, d, z float64) rim {
 	if d == 0 && z == 0 {
 		d = 0x1p-60 * a // on the rim itself: the potential to full precision, all else infinite
 	}
-	r := rim{a: a, rho: rho, d: d, z: z, away: rho*rho+z*z > rimFar*rimFar*a*a}
-	switch {
-	case z > 0:
-		r.sign = 1
-	case z < 0:
-		r.sign = -1
-	}
-	return r
+	return rim{a: a, rho: rho, d: d, z: z, sign: sign(z), away: rho*rho+z*z > rimFar*rimFar*a*a}
 }
 
 // within is 1 inside the cylinder through the circle, 0 outside and 1/2 on it.
-func (r *rim) within() float64 {
-	switch {
-	case r.d > 0:
-		return 1
-	case r.d < 0:
-		return 0
-	}
-	return 0.5
-}
+func (r *rim) within() float64 { return 0.5 + 0.5*sign(r.d) }
 
 // rimSeries holds the sums over the far series of one rim.
 type rimSeries struct{ i, s, e float64 }

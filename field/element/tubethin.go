@@ -6,10 +6,14 @@ import (
 	"example.com/boundpole/field"
 )
 
-// addLayers adds the flat body within a wall as stacked dipole layers, 16 of them: for points clear of the wall.
+// addLayers adds the body within a wall as stacked dipole layers, 8 of them or, with a slope, 16.
 func (n *tubePoint) addLayers(i int, c *constant, k *cosine, axial, transverse bool, want field.Want) {
 	w, h := &n.walls[i], n.body.half
-	for _, g := range gauss8 {
+	rule := gauss8[:]
+	if n.body.slope != 0 {
+		rule = gauss16[:]
+	}
+	for _, g := range rule {
 		for _, t := range [2]float64{-g.x, g.x} {
 			n.addLayer(w, h*t, h*g.w, c, k, axial, transverse, want)
 		}
@@ -54,14 +58,7 @@ func (n *tubePoint) addLayer(w *tubeWall, at, dz float64, c *constant, k *cosine
 	v := r.values(what)
 	dz *= w.sign
 	if axial {
-		p := dz * (n.body.p.Z + n.body.slope*at)
-		if want&field.WantPhi != 0 {
-			c.u += p * (v.solid - 2*math.Pi*w.within*r.sign)
-			c.sizeU += math.Abs(p) * 2 * math.Pi
-		}
-		c.rho -= p * v.br
-		c.z -= p * v.bz
-		c.sizeG += math.Abs(p) * (math.Abs(v.br) + math.Abs(v.bz))
+		c.addDipoles(&r, &v, dz*(n.body.p.Z+n.body.slope*at), w.within, 1, want)
 	}
 	if transverse {
 		k.s += dz * v.t1r
@@ -91,7 +88,7 @@ func (n *tubePoint) addStep(c *constant) {
 
 // addCloseLayers is addLayers for axial dipoles at a point close to the wall: the heights are spread as |d| sinh(v) about
 // the foot of the point on the wall, in panels of 16 nodes no wider than 2, which leave 3.4^-32 (Johnston and Elliott
-// (2005) Int. J. Numer. Methods Eng. 62, 564).
+// (2005) Int. J. Numer. Methods Eng. 62, 564, from memory).
 func (n *tubePoint) addCloseLayers(i int, c *constant, want field.Want) {
 	near := n.walls[i]
 	near.d = math.Copysign(max(math.Abs(near.d), 0x1p-60*near.radius), near.d) // on the wall: the limit
@@ -126,13 +123,20 @@ func (n *tubePoint) addCloseLayer(w *tubeWall, v, d, dv float64, c *constant, wa
 	}
 	o := r.values(what)
 	p := w.sign * dv * d * math.Cosh(v) * (n.body.p.Z + n.body.slope*(n.z.Hi-zeta))
+	c.addDipoles(&r, &o, p, w.within, 1+0.3*math.Abs(v), want) // v times u is the error of sinh
+}
+
+// addDipoles adds a disc of axial dipoles p, without the step of its potential 4 pi p from side to side; loss raises the
+// sizes that the estimate is made of.
+func (c *constant) addDipoles(r *rim, v *rimValues, p, within, loss float64, want field.Want) {
+	size := math.Abs(p) * loss
 	if want&field.WantPhi != 0 {
-		c.u += p * (o.solid - 2*math.Pi*w.within*r.sign)
-		c.sizeU += math.Abs(p) * (1 + 0.2*math.Abs(v)) * 2 * math.Pi // v times u is the error of sinh
+		c.u += p * (v.solid - 2*math.Pi*within*r.sign)
+		c.sizeU += size * 2 * math.Pi
 	}
-	c.rho -= p * o.br
-	c.z -= p * o.bz
-	c.sizeG += math.Abs(p) * (1 + 0.2*math.Abs(v)) * (math.Abs(o.br) + math.Abs(o.bz))
+	c.rho -= p * v.br
+	c.z -= p * v.bz
+	c.sizeG += size * (math.Abs(v.br) + math.Abs(v.bz))
 }
 
 // clearOfShell reports whether the wall of the tube is thin and the point clear of its ends, or of all of it.
@@ -152,11 +156,10 @@ func (n *tubePoint) clearOfShell() bool {
 // within the point and those around it make one panel each, and the step of f by 4 pi from one to the other adds to
 // df/drho.
 func (n *tubePoint) addShells(k *cosine, want field.Want) {
-	b := n.body
-	width := b.outer - b.inner
-	cut := min(max(n.walls[0].d/width, 0), 1)
-	n.addShellPanel(k, width, 0, cut)
-	n.addShellPanel(k, width, cut, 1)
+	r := n.shells()
+	for i := range r.count {
+		n.addShell(&r.shells[i], k)
+	}
 	k.tau += 4 * math.Pi * n.inside()
 	if want&field.WantGrad != 0 {
 		var only cosine
@@ -167,18 +170,38 @@ func (n *tubePoint) addShells(k *cosine, want field.Want) {
 	}
 }
 
-// addShellPanel adds the shells from lo to hi, in wall thicknesses below the outer radius.
-func (n *tubePoint) addShellPanel(k *cosine, width, lo, hi float64) {
-	if lo == hi {
-		return
-	}
-	half := 0.5 * (hi - lo)
-	for _, g := range gauss8 {
-		for _, t := range [2]float64{lo + half*(1-g.x), lo + half*(1+g.x)} {
-			w := tubeWall{radius: n.body.outer - t*width, sign: g.w * half * width, d: n.walls[0].d - t*width}
-			n.addShell(&w, k)
+// shellRule is a rule of at most two panels of 8 nodes across a thin wall; sign is the thickness of a shell.
+type shellRule struct {
+	shells [16]tubeWall
+	count  int
+}
+
+// shells returns the rule for the thin wall as seen from the point.
+func (n *tubePoint) shells() (r shellRule) {
+	width := n.body.outer - n.body.inner
+	cut := min(max(n.walls[0].d/width, 0), 1) // the place of the point, in thicknesses below the outer radius
+	for _, p := range [2][2]float64{{0, cut}, {cut, 1}} {
+		half := 0.5 * (p[1] - p[0])
+		if half == 0 {
+			continue
+		}
+		for _, g := range gauss8 {
+			for _, t := range [2]float64{p[0] + half*(1-g.x), p[0] + half*(1+g.x)} {
+				r.shells[r.count] = tubeWall{radius: n.body.outer - t*width, sign: g.w * half * width, d: n.walls[0].d - t*width}
+				r.count++
+			}
 		}
 	}
+	return r
+}
+
+// shellPotential returns the potential of the thin wall filled with unit charge.
+func (n *tubePoint) shellPotential() (sum float64) {
+	r := n.shells()
+	for i := range r.count {
+		sum += r.shells[i].sign * n.wallPotential(&r.shells[i])
+	}
+	return sum
 }
 
 // addShell adds one shell; sign is its thickness.

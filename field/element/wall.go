@@ -13,10 +13,11 @@ import (
 //
 // Units: natural; g in the unit of the density, phi in that times the unit of length.
 // Frame: that of the shape, about the z axis; phi is counted from x to y, the normal points outward.
-// Domain: all finite x. NaN in, NaN out. Built by NewWall; immutable.
+// Domain: all finite x; lengths of the shape within 1e-70 and 1e70. NaN in, NaN out. Built by NewWall; immutable.
 // Singular: |g| grows as log(1/d) at distance d from a rim; on it G is NaN, Phi finite, field.OnEdge. On the wall the
 // mean of both sides, or the side asked for; Outside is away from the axis.
-// Accuracy: |error| <= 1e-13 of phi and |g|, or 1e-16 of the density (TestRoundReference).
+// Accuracy: |error| <= 1e-13 max(|g|, 1e-3 g0) for g, g0 = max|sigma| min(1, (a/R)^2) with a the bounding radius, and for phi
+// likewise (TestRoundReference).
 // Source: cos(phi) part as in Tube; constant part E_z = U_2 - U_1 and E_rho from z U + a Omega (own derivation, checked by
 // quadrature), its potential by product integration of the ring potential along the wall; multipoles beyond 2.5 bounding
 // radii.
@@ -77,7 +78,7 @@ func (w *Wall) value(x field.Point, side field.Side, want field.Want) field.Valu
 		if beyond >= -p.tol && charged {
 			return onEdge(w.near(&p, within, field.WantPhi|want&field.WantErr))
 		}
-		on, within = charged, 0.5-0.5*float64(sideSign(side))
+		on, within = charged, 0.5-0.5*sideSign(side)
 	}
 	v := w.near(&p, within, want)
 	if on {
