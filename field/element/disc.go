@@ -5,6 +5,7 @@ import (
 	"math"
 
 	"example.com/boundpole/field"
+	"example.com/boundpole/field/internal/elliptic"
 	"example.com/boundpole/geom"
 	"gonum.org/v1/gonum/spatial/r3"
 )
@@ -95,15 +96,18 @@ func (f *flatRing) value(x field.Point, side field.Side, want field.Want) field.
 		c, k := f.far.sum(&p, want)
 		return p.value(&c, &k, r3.Vec{}, want)
 	}
-	status := f.place(&p)
+	o, i := p.rim(f.outer, f.level), rim{}
+	if f.inner > 0 {
+		i = p.rim(f.inner, f.level)
+	}
+	status := f.place(&p, &o, &i)
 	if status == field.OnEdge && f.density != 0 {
-		return onEdge(f.near(&p, 0, want&^field.WantG|field.WantPhi))
+		return onEdge(f.near(&p, &o, &i, want&^field.WantG|field.WantPhi))
 	}
-	h := sign(p.height(f.level))
 	if status == field.OnFace {
-		h = sideSign(side)
+		o.sign, i.sign = sideSign(side), sideSign(side)
 	}
-	v := f.near(&p, h, want)
+	v := f.near(&p, &o, &i, want)
 	if status == field.OnFace && f.density != 0 {
 		v.Status, v.ErrGrad = field.OnFace, math.Inf(1)
 	}
@@ -111,13 +115,13 @@ func (f *flatRing) value(x field.Point, side field.Side, want field.Want) field.
 }
 
 // place tells whether p is on the sheet or its rim.
-func (f *flatRing) place(p *roundPoint) field.Status {
-	out := -p.inward(f.outer)
+func (f *flatRing) place(p *roundPoint, o, i *rim) field.Status {
+	out := -o.d // how far beyond the nearer rim
 	if f.inner > 0 {
-		out = max(out, p.inward(f.inner))
+		out = max(out, i.d)
 	}
-	switch h := p.height(f.level); {
-	case max(math.Abs(h), out) > p.tol || math.Hypot(h, max(0, out)) > p.tol:
+	switch h := math.Abs(o.z); {
+	case max(h, out) > p.tol || math.Hypot(h, max(0, out)) > p.tol:
 		return field.Regular
 	case out >= -p.tol:
 		return field.OnEdge
@@ -125,20 +129,26 @@ func (f *flatRing) place(p *roundPoint) field.Status {
 	return field.OnFace
 }
 
-// near is the closed form; h is the side of the plane.
-func (f *flatRing) near(p *roundPoint, h float64, want field.Want) field.Value {
-	var s sheet
-	o := p.rim(f.outer, f.level)
-	o.sign = h
-	if f.inner == 0 {
-		s = o.disc(needsOf(want))
-	} else {
-		i := p.rim(f.inner, f.level)
-		i.sign = h
-		s = annulus(&o, &i, needsOf(want))
+// near is the closed form.
+func (f *flatRing) near(p *roundPoint, o, i *rim, want field.Want) (v field.Value) {
+	if f.inner > 0 {
+		s := annulus(o, i, needsOf(want))
+		return f.charged(p, &s, want)
 	}
+	if want == field.WantG {
+		_, t1, omega := elliptic.Disc(o.a, o.rho, o.z, o.d, o.d*o.d+o.z*o.z)
+		g := over4P * f.density
+		v.G = r3.Vec{X: g * t1 * p.e.X, Y: g * t1 * p.e.Y, Z: g * onSide(omega, o.z, o.sign, o.d)}
+		return v
+	}
+	s := o.disc(needsOf(want))
+	return f.charged(p, &s, want)
+}
+
+// charged returns the value of the sheet s of unit density with the density of f.
+func (f *flatRing) charged(p *roundPoint, s *sheet, want field.Want) field.Value {
 	var c constant
-	c.add(&s, f.density)
+	c.add(s, f.density)
 	return p.value(&c, &cosine{}, r3.Vec{}, want)
 }
 
