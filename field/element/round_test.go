@@ -98,17 +98,30 @@ func roundAt(src field.Evaluator, pose geom.Pose, x r3.Vec, size float64, side f
 	return r
 }
 
-func loadRound(t *testing.T, path string) []roundCase {
+// loadRound returns the round cases of the reference files of verify and of testdata/round.json, which holds seeded ones.
+func loadRound(t *testing.T) []roundCase {
 	t.Helper()
-	data, err := os.ReadFile(path)
-	if err != nil {
-		t.Fatal(err)
+	var round []roundCase
+	for _, path := range []string{"../../verify/testdata/dev.json", "../../verify/testdata/hard.json", "testdata/round.json"} {
+		data, err := os.ReadFile(path)
+		if err != nil {
+			t.Fatal(err)
+		}
+		var cases []roundCase
+		if err := json.Unmarshal(data, &cases); err != nil {
+			t.Fatal(err)
+		}
+		for _, c := range cases {
+			if slices.Contains([]string{"disc", "annulus", "wall", "cylinder", "tube"}, c.Body.Type) &&
+				slices.Contains([]string{"uniform", "axial_z", "sheet_linear", "wall"}, c.Polarization.Kind) {
+				round = append(round, c)
+			}
+		}
 	}
-	var cases []roundCase
-	if err := json.Unmarshal(data, &cases); err != nil {
-		t.Fatal(err)
+	if len(round) < 80 {
+		t.Fatalf("only %d round cases found", len(round))
 	}
-	return cases
+	return round
 }
 
 // TestRoundReference holds potential, field and estimates against reference values, by the contract: an error is at
@@ -116,7 +129,7 @@ func loadRound(t *testing.T, path string) []roundCase {
 func TestRoundReference(t *testing.T) {
 	var over []float64
 	under, claims := 0, 0
-	for _, c := range loadRound(t, "testdata/round.json") {
+	for _, c := range loadRound(t) {
 		src, pose, a, pmax := c.build(t)
 		power := 2.0
 		if k := c.Polarization.Kind; k == "sheet_linear" || k == "wall" {
