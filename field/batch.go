@@ -1,8 +1,6 @@
 package field
 
 import (
-	"fmt"
-
 	"example.com/boundpole/geom/pair"
 	"gonum.org/v1/gonum/spatial/r3"
 )
@@ -209,7 +207,7 @@ func (v *Values) check(n int) {
 	for _, a := range [...][]float64{v.Phi, v.GX, v.GY, v.GZ, v.Grad[0], v.Grad[1], v.Grad[2], v.Grad[3], v.Grad[4], v.Grad[5],
 		v.ErrPhi, v.ErrG, v.ErrGrad} {
 		if a != nil && len(a) != n {
-			panic(fmt.Sprintf("field: an array of Values has length %d, the batch %d points", len(a), n))
+			panic("field: an array of Values has not the length of the batch")
 		}
 	}
 	if v.Status != nil && len(v.Status) != n {

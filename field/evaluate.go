@@ -174,6 +174,10 @@ func (w *scratch) local(pose geom.Pose, shift float64, at *Points, lo, hi int) *
 	return &w.points
 }
 
+// turnError bounds what turning a vector by a rounded matrix adds to its relative error: half a rounding of each entry and
+// three of each sum.
+const turnError = 4 * 0x1p-53
+
 // turnInto copies v into dst with vectors and tensors turned by m.
 func turnInto(dst, v *Values, m *[3][3]float64, turned bool) {
 	copy(dst.Phi, v.Phi)
@@ -193,6 +197,9 @@ func turnInto(dst, v *Values, m *[3][3]float64, turned bool) {
 	for i := range dst.GX {
 		g := turnVec(m, r3.Vec{X: v.GX[i], Y: v.GY[i], Z: v.GZ[i]})
 		dst.GX[i], dst.GY[i], dst.GZ[i] = g.X, g.Y, g.Z
+		if dst.ErrG != nil {
+			dst.ErrG[i] += turnError * r3.Norm(g)
+		}
 	}
 	for i := range dst.Grad[0] {
 		var t [6]float64

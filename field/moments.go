@@ -9,11 +9,13 @@ import (
 
 // Moments is the multipole expansion of charge about a centre: a source that stands for a body far away from it.
 //
+// Units: natural; g in the unit of charge per length^2, phi in that times the length unit.
+// Frame: that of Centre.
 // Domain: points at a distance R > Radius from Centre, where all charge lies within Radius. Points nearer get a value
 // without claim and status NotConverged.
+// Singular: nowhere in the domain.
 // Accuracy: the relative size of what order N leaves out is (Radius/R)^(N+1); orders beyond 1e-18 are not summed.
-// Source: solid harmonics and their derivatives as in W. Dehnen, Comput. Astrophys. Cosmol. 1 (2014) 1, sec. 2 (from
-// memory); 1/|x-y| = sum conj(R_n^m(y)) I_n^m(x).
+// Source: solid harmonics and their derivatives as in [Dehnen2014] sec. 2; 1/|x-y| = sum conj(R_n^m(y)) I_n^m(x).
 type Moments struct {
 	centre r3.Vec
 	radius float64

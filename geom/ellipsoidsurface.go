@@ -16,7 +16,7 @@ type EllipsoidSurface struct {
 
 // Area returns the area.
 //
-// Source: B. C. Carlson, SIAM J. Math. Anal. 8 (1977) 231 and DLMF 19.33.1, from memory: 4 pi R_G((ab)^2, (ac)^2,
+// Source: [Carlson1977] and [DLMF] 19.33.1: 4 pi R_G((ab)^2, (ac)^2,
 // (bc)^2), with R_G from R_F and R_D by DLMF 19.21.10.
 func (e EllipsoidSurface) Area() float64 {
 	axes := []float64{e.SemiAxes.X, e.SemiAxes.Y, e.SemiAxes.Z}

@@ -4,7 +4,7 @@ package geom
 // their vertices in the sense of the loop. A convex polygon gives a fan. A loop that is not simple gives triangles too,
 // which then overlap.
 //
-// Source: G. H. Meisters, Amer. Math. Monthly 82 (1975) 648 (two ears).
+// Source: [Meisters1975] (two ears).
 func triangles(l loop) [][3]int {
 	n := l.len()
 	if n < 3 {

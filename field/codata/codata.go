@@ -1,8 +1,7 @@
 // Package codata holds the physical constants, in one place: CODATA 2022 recommended values with their standard
 // uncertainties.
 //
-// Source: P. J. Mohr, D. B. Newell, B. N. Taylor, E. Tiesinga, Rev. Mod. Phys. 97 (2025) 025002 (CODATA 2022); the digits
-// are those of the NIST table of fundamental constants.
+// Source: [Mohr2025], CODATA 2022; the digits are those of the NIST table of fundamental constants.
 package codata
 
 const (

@@ -18,7 +18,7 @@ import (
 // Singular: |g| grows as log(1/d) at distance d from the rim; on it G is NaN, Phi finite, field.OnEdge. On the face the
 // mean of both sides, or the side asked for; Outside is above.
 // Accuracy: |error| <= 2e-14 of phi and 4e-15 of |g| (TestRoundReference).
-// Source: phi = (a U - rho T1 - z Omega)/4 pi by Green's theorem, see Paxton (1959) Rev. Sci. Instrum. 30, 254 (from memory)
+// Source: phi = (a U - rho T1 - z Omega)/4 pi by Green's theorem, see [Paxton1959]
 // for Omega; zonal harmonics beyond 2.5 radii.
 type Disc struct {
 	flat flatRing

@@ -20,8 +20,8 @@ import (
 // Accuracy: |error of g| <= 5e-15 max(|g|, 1e-3 g0), |error of phi| <= 5e-14 max(|phi|, 1e-3 phi0), with a the longest
 // semi-axis, q = min(1, a/|x|), g0 = p q^3, phi0 = p a q^2, for axis ratios to 1e6 (worst 1e-15 and 1.5e-14 of 3600
 // points, TestSimpleReference); of grad g as its estimate says.
-// Source: Maxwell, Treatise on Electricity and Magnetism (1873), art. 437; with Carlson's integral R_D in place of
-// Legendre's, DLMF 19.33 (https://dlmf.nist.gov/19.33#ii).
+// Source: [Maxwell1873] art. 437; with Carlson's integral R_D in place of
+// Legendre's, [DLMF] 19.33 (https://dlmf.nist.gov/19.33#ii).
 type Ellipsoid struct {
 	shape   geom.Ellipsoid
 	p       r3.Vec

@@ -12,12 +12,13 @@ import (
 // Polyhedron is the bound charge of a body with plane faces and uniform or affine polarization: sigma = p.n on each
 // face, rho = -div p inside.
 //
-// Units: natural; g in the unit of p, phi in that times the length unit. Frame: that of the vertices.
+// Units: natural; g in the unit of p, phi in that times the length unit.
+// Frame: that of the vertices.
 // Domain: all finite x. Built by NewPolyhedron; immutable.
 // Singular: |g| grows as log(1/d) at a distance d from an edge with charge at it; on it G is NaN with status OnEdge and
 // Phi finite. On a charged face: the mean of both sides, or the side asked for.
-// Accuracy: |g error| <= 1e-13 max(|g|, 1e-3 g0), g0 = max|p| min(1, (a/R)^3), a the bounding radius, R the distance from
-// its centre, from 1e-12 of the size off an edge to 1e6 sizes away (TestPolyhedronReference).
+// Accuracy: |g error| <= 1e-12 max(|g|, 1e-3 g0), g0 = max|p| min(1, (a/R)^3), a the bounding radius, R the distance from
+// its centre, from 1e-12 of the size off an edge to 1e6 sizes away (TestFlatReference).
 // Source: [Wilton1984], [VanOosterom1983], shared edges as in [Werner1997]; linear charge by the divergence identities of
 // [Wilton1984] sec. III; far field by solid harmonics (field.Moments).
 type Polyhedron struct {
@@ -82,11 +83,12 @@ func (s *Polyhedron) point(p field.Point, side field.Side, want field.Want) fiel
 
 // Polygon is a plane sheet with the charge density Density + Gradient.x.
 //
-// Units: natural; g in the unit of the density, phi in that times the length unit. Frame: that of the vertices; the normal
-// follows the right-hand rule. Domain: all finite x. Built by NewPolygon; immutable.
+// Units: natural; g in the unit of the density, phi in that times the length unit.
+// Frame: that of the vertices; the normal follows the right-hand rule.
+// Domain: all finite x. Built by NewPolygon; immutable.
 // Singular: |g| grows as log(1/d) at a distance d from an edge; on it G is NaN with status OnEdge and Phi finite. On the
 // sheet: the mean of both sides, or the side asked for; Outside is where the normal points.
-// Accuracy: |g error| <= 1e-13 max(|g|, 1e-3 g0), g0 = max|sigma| min(1, (a/R)^2) (TestPolygonReference).
+// Accuracy: |g error| <= 1e-12 max(|g|, 1e-3 g0), g0 = max|sigma| min(1, (a/R)^2) (TestFlatReference).
 // Source: [Wilton1984], [VanOosterom1983].
 type Polygon struct {
 	flat *facets

@@ -16,7 +16,7 @@ import (
 // Domain: all finite x, for a shape whose Check is nil. NaN in, NaN out.
 // Singular: nowhere. On the surface (geom.OnTolerance) g jumps by (P.n) n; the gradient has no claim there.
 // Accuracy: |error| <= 2e-15 of phi and |g|, 4e-15 of |grad g| (TestSimpleReference, TestGradientDifferences).
-// Source: Maxwell, Treatise on Electricity and Magnetism (1873), art. 437: uniform inside, a dipole outside.
+// Source: [Maxwell1873] art. 437: uniform inside, a dipole outside.
 type Sphere struct {
 	Shape geom.Sphere
 	P     r3.Vec
@@ -131,7 +131,7 @@ func (s HollowSphere) outside(x pair.Vec, n r3.Vec, r float64) field.Value {
 // Domain: all finite x, for a shape whose Check is nil. NaN in, NaN out.
 // Singular: nowhere; only the gradient jumps on the surface and has no claim there.
 // Accuracy: |error| <= 2e-15 of phi and |g| (TestChargedSpheres).
-// Source: Newton, Principia (1687), book 1, props. 71 and 73.
+// Source: [Newton1687] book 1, props. 71 and 73.
 type ChargedBall struct {
 	Shape   geom.Sphere
 	Density float64
@@ -172,7 +172,7 @@ func (s ChargedBall) value(p field.Point, _ field.Side) field.Value {
 // Domain: all finite x, for a shape whose Check is nil. NaN in, NaN out.
 // Singular: nowhere. On the surface (geom.OnTolerance) g jumps by Density n.
 // Accuracy: |error| <= 2e-15 of phi and |g| (TestChargedSpheres).
-// Source: Newton, Principia (1687), book 1, props. 70 and 71.
+// Source: [Newton1687] book 1, props. 70 and 71.
 type ChargedSphere struct {
 	Shape   geom.Sphere
 	Density float64

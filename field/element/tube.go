@@ -20,8 +20,8 @@ import (
 // to a point carry no charge the point is regular.
 // Accuracy: |error| <= 1e-13 max(|g|, 1e-3 g0) for g, 2e-13 max(|phi|, 1e-3 phi0) for phi, with g0 = max|p| min(1, (a/R)^3),
 // phi0 = max|p| a min(1, (a/R)^2), a the bounding radius (worst of 5000 points 7.2e-14 and 1.9e-13, TestRoundReference).
-// Source: end faces as discs (see Disc); transverse P as cos(phi) on the walls, Caciagli et al. (2018) J. Magn. Magn. Mater.
-// 456, 423 (from memory) in the form W_rho = -W/rho - Omega_1 + Omega_2 + 4 pi [inside]; the volume charge -Slope by
+// Source: end faces as discs (see Disc); transverse P as cos(phi) on the walls, [Caciagli2018]
+// in the form W_rho = -W/rho - Omega_1 + Omega_2 + 4 pi [inside]; the volume charge -Slope by
 // the divergence theorem. Multipoles of the whole, neutral body beyond 2.5 bounding radii; stacked dipole layers for
 // flat bodies and nested dipole shells for thin walls, which keep the small difference of their faces.
 type Tube struct {

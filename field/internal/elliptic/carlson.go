@@ -20,7 +20,7 @@ const (
 //
 // Domain: x, y, z >= 0, at most one of them zero; finite.
 // Accuracy: relative error <= 1e-15 (TestCarlsonReference).
-// Source: Carlson 1995, Numer. Algorithms 10:13; series DLMF 19.36.1,
+// Source: [Carlson1995]; series [DLMF] 19.36.1,
 // https://dlmf.nist.gov/19.36.E1 (from memory).
 func RF(x, y, z float64) float64 {
 	if !inDomain(x, y, z) {

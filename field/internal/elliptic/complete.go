@@ -21,7 +21,7 @@ const agmEnd = 2e-8
 //	Complete(0) = +Inf, 1, 1, +Inf
 //	Complete(+Inf) = 0, +Inf, 0, 0
 //
-// Source: Bulirsch 1965, Numer. Math. 7:78 (cel2, from memory): one
+// Source: [Bulirsch1965] (cel2, from memory): one
 // arithmetic-geometric mean carries the numerators (1,0) and (0,1); every term
 // is positive.
 func Complete(kc2 float64) (k, e, b, d float64) {
@@ -75,7 +75,7 @@ func D(kc2 float64) float64 { _, _, _, d := Complete(kc2); return d }
 // Domain: kc != 0 (its sign is ignored), p > 0.
 // Accuracy: relative error <= 2e-15 if a and b do not differ in sign
 // (TestCelReference); where they do, the two parts cancel.
-// Source: Bulirsch 1969, Numer. Math. 13:305 (from memory).
+// Source: [Bulirsch1969].
 func Cel(kc, p, a, b float64) float64 {
 	kc = math.Abs(kc)
 	if !(kc > 0 && p > 0 && kc <= math.MaxFloat64 && p <= math.MaxFloat64) {
