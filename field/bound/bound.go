@@ -10,12 +10,10 @@ package bound
 
 import (
 	"errors"
-	"fmt"
 	"math"
 	"slices"
 
 	"example.com/boundpole/field"
-	"example.com/boundpole/field/element"
 	"example.com/boundpole/geom"
 	"example.com/boundpole/geom/pair"
 	"gonum.org/v1/gonum/spatial/r3"
@@ -34,9 +32,9 @@ type Charge struct {
 	body   geom.Body // as given, perhaps placed
 	local  geom.Body // in its own frame
 	pose   geom.Pose
-	p      field.Affine
-	own    field.Source // in the body's own frame
-	source field.Source // in the outer frame
+	p      field.Polarization // in the body's own frame
+	own    field.Source       // in the body's own frame
+	source field.Source       // in the outer frame
 }
 
 // Layer is what one face carries.
@@ -60,9 +58,8 @@ type Volume struct {
 // Of returns the bound charge of a body with polarization p.
 //
 // It fails if the body's Check fails, if p is not finite, if the identities of bound charge do not hold (a face whose
-// normal points inward and a divergence that disagrees with p are named), or with ErrUnsupported.
-// Bodies with plane faces take uniform and affine polarization; cylinders and tubes uniform polarization whose axial part
-// may grow linearly along the axis; spheres, hollow spheres and ellipsoids uniform polarization.
+// normal points inward and a divergence that disagrees with p are named, with both numbers and the place), or with
+// ErrUnsupported.
 func Of(body geom.Body, p field.Polarization) (*Charge, error) {
 	if body == nil || p == nil {
 		return nil, errors.New("bound: body or polarization is nil; give both")
@@ -70,18 +67,18 @@ func Of(body geom.Body, p field.Polarization) (*Charge, error) {
 	if err := body.Check(); err != nil {
 		return nil, err
 	}
-	a, err := affine(p)
+	p, err := simplest(p)
 	if err != nil {
 		return nil, err
 	}
-	c := &Charge{body: body, local: body, p: a}
+	c := &Charge{body: body, local: body, p: p}
 	if at, ok := body.(geom.Placed); ok {
 		c.local, c.pose = at.Body, at.Pose
 	}
 	if err := c.fill(); err != nil {
 		return nil, err
 	}
-	c.own, err = evaluator(c.local, a)
+	c.own, err = c.evaluator()
 	if err != nil {
 		return nil, err
 	}
@@ -107,100 +104,6 @@ func (c *Charge) At(pose geom.Pose) *Charge {
 		d.Volumes[i].Cell = cell
 	}
 	return &d
-}
-
-// affine returns p as value and gradient.
-func affine(p field.Polarization) (field.Affine, error) {
-	var a field.Affine
-	switch q := p.(type) {
-	case field.Uniform:
-		a.Value = q.P
-	case field.Affine:
-		a = q
-	case field.Times:
-		b, err := affine(q.Polarization)
-		if err != nil {
-			return a, err
-		}
-		a = b
-		a.Value = r3.Scale(q.Factor, b.Value)
-		for i := range a.Gradient {
-			for j := range a.Gradient[i] {
-				a.Gradient[i][j] *= q.Factor
-			}
-		}
-	default:
-		return a, fmt.Errorf("bound: polarization of type %T: %w; give field.Uniform or field.Affine", p, ErrUnsupported)
-	}
-	sum := a.Value.X + a.Value.Y + a.Value.Z + a.About.X + a.About.Y + a.About.Z
-	for _, row := range a.Gradient {
-		sum += row[0] + row[1] + row[2]
-	}
-	if math.IsNaN(sum) || math.IsInf(sum, 0) {
-		return a, fmt.Errorf("bound: polarization %+v is not finite; give finite components", p)
-	}
-	return a, nil
-}
-
-// evaluator chooses how the field of a body in its own frame is computed: the one place where that is decided.
-func evaluator(body geom.Body, p field.Affine) (field.Source, error) {
-	at0 := p.At(r3.Vec{})
-	uniform := p.Gradient == [3][3]float64{}
-	slope := p.Gradient[2][2]
-	axial := p.Gradient
-	axial[2][2] = 0
-	switch b := body.(type) {
-	case geom.Flat:
-		return element.NewPolyhedron(b.Polyhedron(), p), nil
-	case geom.Cylinder:
-		if axial == [3][3]float64{} {
-			return element.NewCylinder(b, at0, slope)
-		}
-	case geom.Tube:
-		if axial == [3][3]float64{} {
-			return element.NewTube(b, at0, slope)
-		}
-	case geom.Sphere:
-		if uniform {
-			return element.Sphere{Shape: b, P: p.Value}, nil
-		}
-	case geom.HollowSphere:
-		if uniform {
-			return element.HollowSphere{Shape: b, P: p.Value}, nil
-		}
-	case geom.Ellipsoid:
-		if uniform {
-			return element.NewEllipsoid(b, p.Value)
-		}
-	default:
-		return nil, fmt.Errorf("bound: body of type %T: %w; give a body of package geom", body, ErrUnsupported)
-	}
-	return nil, fmt.Errorf("bound: affine polarization on a %s: %w yet; give a uniform polarization%s", shapeName(body),
-		ErrUnsupported, alongAxis(body))
-}
-
-func shapeName(body geom.Body) string {
-	switch body.(type) {
-	case geom.Cylinder:
-		return "cylinder"
-	case geom.Tube:
-		return "tube"
-	case geom.Sphere:
-		return "sphere"
-	case geom.HollowSphere:
-		return "hollow sphere"
-	case geom.Ellipsoid:
-		return "ellipsoid"
-	}
-	return "body"
-}
-
-func alongAxis(body geom.Body) string {
-	switch body.(type) {
-	case geom.Cylinder, geom.Tube:
-		return ", or one whose z component alone grows along z"
-	}
-	return ""
 }
 
 // Body returns the body as it was given.

@@ -14,8 +14,9 @@ import (
 
 // referenceBody returns the placed body and its polarization of a reference case, ok false for sheets and for families that
 // need integrators.
-func referenceBody(t *testing.T, c *refcase.Case) (body geom.Body, p field.Affine, ok bool) {
+func referenceBody(t *testing.T, c *refcase.Case) (body geom.Body, pol field.Polarization, ok bool) {
 	t.Helper()
+	var p field.Affine
 	b, q := &c.Body, &c.Polarization
 	pose, err := c.Pose()
 	if err != nil {
@@ -61,6 +62,10 @@ func referenceBody(t *testing.T, c *refcase.Case) (body geom.Body, p field.Affin
 				p.Gradient[i/3][i%3] += m[j/3][i/3] * g[j/3][j%3] * m[j%3][i%3]
 			}
 		}
+	case "ball_r":
+		return geom.At(body, pose), field.CentralPower{Coefficient: q.C, Power: 1}, true
+	case "ball_r2":
+		return geom.At(body, pose), field.CentralPower{Coefficient: q.C, Power: 2}, true
 	default:
 		return nil, p, false
 	}

@@ -76,7 +76,6 @@ type facetCorner struct {
 	sign     float64
 	m        r3.Vec
 	mp       pair.Vec
-
 }
 
 // facetSpec is one face to be built: vertex indices counter-clockwise about the normal and the density at a point.

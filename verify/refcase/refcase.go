@@ -240,7 +240,7 @@ func (c *Case) Ball() (centre r3.Vec, radius float64, err error) {
 // largest returns the largest density or polarization on the vertices or in the bounding ball.
 func (c *Case) largest() (p float64, sheet bool, err error) {
 	q := &c.Polarization
-	centre, _, err := c.Ball()
+	centre, a, err := c.Ball()
 	if err != nil {
 		return 0, false, err
 	}
@@ -249,6 +249,10 @@ func (c *Case) largest() (p float64, sheet bool, err error) {
 		return r3.Norm(Vec(q.P)), false, nil
 	case "axial_z":
 		return math.Abs(q.C) * c.Body.HalfLen, false, nil
+	case "ball_r":
+		return math.Abs(q.C) * a, false, nil
+	case "ball_r2":
+		return math.Abs(q.C) * a * a, false, nil
 	case "sheet_linear":
 		if len(c.Body.Vertices) == 0 {
 			return math.Abs(q.A + r3.Dot(Vec(q.B), centre)), true, nil

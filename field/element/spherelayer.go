@@ -1,0 +1,42 @@
+package element
+
+import (
+	"example.com/boundpole/field"
+	"example.com/boundpole/geom"
+	"gonum.org/v1/gonum/spatial/r3"
+)
+
+// spherical is charge between two concentric spheres about the origin, inner 0 for none, whose field has one formula in each
+// of three regions.
+type spherical interface {
+	cavity(x r3.Vec, r float64) field.Value
+	wall(x, n r3.Vec, r float64) field.Value
+	outside(x, n r3.Vec, r float64) field.Value
+}
+
+// between evaluates a spherical source at a point, with the limits on both of its spheres.
+func between(s spherical, inner, outer float64, p field.Point, side field.Side) field.Value {
+	x := p.X.Value()
+	n, r := direction(x)
+	bounds := cube(outer)
+	if inner > 0 {
+		switch _, where := height(p, r, inner, bounds); where {
+		case geom.Inside:
+			return s.cavity(x, r)
+		case geom.On:
+			return onFace(s.wall(x, n, r), s.cavity(x, r), side)
+		}
+	}
+	switch _, where := height(p, r, outer, bounds); where {
+	case geom.Inside:
+		return s.wall(x, n, r)
+	case geom.On:
+		return onFace(s.wall(x, n, r), s.outside(x, n, r), side)
+	}
+	return s.outside(x, n, r)
+}
+
+// cube returns the box of a sphere about the origin.
+func cube(a float64) r3.Box {
+	return r3.Box{Min: r3.Vec{X: -a, Y: -a, Z: -a}, Max: r3.Vec{X: a, Y: a, Z: a}}
+}
