@@ -1,7 +1,7 @@
 // Package codata holds the physical constants, in one place: CODATA 2022 recommended values with their standard
 // uncertainties.
 //
-// Source: [Mohr2025], CODATA 2022; the digits are those of the NIST table of fundamental constants.
+// Source: [Mohr2025]; the digits are those of the NIST table of fundamental constants.
 package codata
 
 const (

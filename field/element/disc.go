@@ -137,9 +137,9 @@ func (f *flatRing) near(p *roundPoint, o, i *rim, want field.Want) (v field.Valu
 	}
 	if want == field.WantG {
 		_, t1, omega := elliptic.Disc(o.a, o.rho, o.z, o.d, o.d*o.d+o.z*o.z)
-		g := over4P * f.density
-		v.G = r3.Vec{X: g * t1 * p.e.X, Y: g * t1 * p.e.Y, Z: g * onSide(omega, o.z, o.sign, o.d)}
-		return v
+		var c constant // summed as in charged, bit for bit
+		c.add(&sheet{rho: -t1, z: -onSide(omega, o.z, o.sign, o.d)}, f.density)
+		return p.value(&c, &cosine{}, r3.Vec{}, want)
 	}
 	s := o.disc(needsOf(want))
 	return f.charged(p, &s, want)

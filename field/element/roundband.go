@@ -82,12 +82,11 @@ func (b *band) panel(lo, hi float64) float64 {
 		return h * sum
 	}
 	weight := logWeights(x, y)
-	lnh := 2 * math.Log(h)
 	sum := 0.0
 	for i, g := range gauss16 {
 		for side, s := range [2]float64{-g.x, g.x} {
-			a, l := b.split(c + h*s)
-			sum += a * (g.w*(l-lnh) - weight[2*i+side])
+			a, l := b.split(c+h*s, h)
+			sum += a * (g.w*l - weight[2*i+side])
 		}
 	}
 	return h * sum
@@ -100,7 +99,7 @@ func (b *band) plain(s float64) float64 {
 }
 
 // split returns A and ln Q + L.
-func (b *band) split(s float64) (a, l float64) {
+func (b *band) split(s, h float64) (a, l float64) {
 	q1, q, a := b.ring(s)
 	m1 := q1 / q
 	k := math.Sqrt(max(0, 1-m1))
@@ -111,7 +110,7 @@ func (b *band) split(s float64) (a, l float64) {
 	e4 *= e4
 	e4 *= e4
 	f *= 1 + e4*(2+e4*(15+e4*(150+e4*1707)))
-	return 2 * a / (math.Sqrt(q) * agm(1, k)), math.Log(q / f)
+	return 2 * a / (math.Sqrt(q) * agm(1, k)), math.Log(q / (h * h) / f)
 }
 
 // agm returns the arithmetic-geometric mean of x > 0 and y >= 0.
@@ -180,16 +179,15 @@ func rimDifference(r1, r2 *rim) float64 {
 	line := band{a: r1.a, rho: r1.rho, near: r1.d, axial: true}
 	c, h := 0.5*(r1.z+r2.z), 0.5*(r1.z-r2.z)
 	weight := logWeights(-c/h, math.Abs(r1.d)/h)
-	lnh := 2 * math.Log(h)
 	sum := 0.0
 	for i, g := range gauss16 {
 		for side, t := range [2]float64{-g.x, g.x} {
 			s := c + h*t
 			q1, q, _ := line.ring(s)
 			kp, ep, _, _ := elliptic.Complete(1 - q1/q)
-			_, l := line.split(s)
+			_, l := line.split(s, h)
 			f := 2 * s / (r1.rho * math.Sqrt(q))
-			sum -= f * (ep/math.Pi*(g.w*(l-lnh)-weight[2*i+side]) - g.w*math.Pi/2/kp)
+			sum -= f * (ep/math.Pi*(g.w*l-weight[2*i+side]) - g.w*math.Pi/2/kp)
 		}
 	}
 	return h * sum

@@ -169,14 +169,15 @@ func (n *tubePoint) near(want field.Want) field.Value {
 }
 
 // axialField is near for the field alone of a cylinder polarized along its axis.
-func (n *tubePoint) axialField() (v field.Value) {
+func (n *tubePoint) axialField() field.Value {
 	w, p := &n.walls[0], n.body.p.Z
-	_, bottom, solidBottom := elliptic.Disc(w.radius, n.rho, n.zb, w.d, w.d*w.d+n.zb*n.zb)
-	_, top, solidTop := elliptic.Disc(w.radius, n.rho, n.zt, w.d, w.d*w.d+n.zt*n.zt)
-	across := over4P * (p*top - p*bottom)
-	along := over4P * (p*onSide(solidTop, n.zt, n.top, w.d) - p*onSide(solidBottom, n.zb, n.bottom, w.d))
-	v.G.X, v.G.Y, v.G.Z = across*n.e.X, across*n.e.Y, along
-	return v
+	var c constant // summed as in addEnds, bit for bit
+	_, t1, solid := elliptic.Disc(w.radius, n.rho, n.zb, w.d, w.d*w.d+n.zb*n.zb)
+	c.add(&sheet{rho: -t1, z: -onSide(solid, n.zb, n.bottom, w.d)}, -p)
+	_, t1, solid = elliptic.Disc(w.radius, n.rho, n.zt, w.d, w.d*w.d+n.zt*n.zt)
+	c.add(&sheet{rho: -t1, z: -onSide(solid, n.zt, n.top, w.d)}, p)
+	n.addStep(&c)
+	return n.value(&c, &cosine{}, n.body.across(), field.WantG)
 }
 
 // closeForm returns how the ends are evaluated at a point close to the wall.

@@ -12,7 +12,6 @@ import (
 	"fmt"
 	"math"
 	"math/big"
-	"os"
 
 	"example.com/boundpole/geom"
 	"example.com/boundpole/geom/pair"
@@ -61,15 +60,11 @@ type Polarization struct {
 	A0   float64
 }
 
-// Load reads the cases of a file.
-func Load(file string) ([]Case, error) {
-	raw, err := os.ReadFile(file)
-	if err != nil {
-		return nil, fmt.Errorf("refcase: %w", err)
-	}
+// Parse reads the cases of a file from its content; name is used in errors.
+func Parse(name string, content []byte) ([]Case, error) {
 	var cases []Case
-	if err := json.Unmarshal(raw, &cases); err != nil {
-		return nil, fmt.Errorf("refcase: %s: %w", file, err)
+	if err := json.Unmarshal(content, &cases); err != nil {
+		return nil, fmt.Errorf("refcase: %s: %w", name, err)
 	}
 	return cases, nil
 }
