@@ -11,10 +11,11 @@ import (
 // What the types of this package are.
 var (
 	_ = []Flat{Box{}, Prism{}, Polyhedron{}}
-	_ = []Body{Cylinder{}, Tube{}, Sphere{}, HollowSphere{}, Ellipsoid{}, Placed{}}
+	_ = []Body{Cylinder{}, Tube{}, Arc{}, Cone{}, Sphere{}, HollowSphere{}, Ellipsoid{}, Torus{}, Placed{}}
 	_ = []Sheet{Polygon{}, Disc{}, Annulus{}, PlacedSheet{}}
-	_ = []Surface{Wall{}, SphereSurface{}, EllipsoidSurface{}, PlacedSurface{}}
-	_ = []Cell{Box{}, Prism{}, Cylinder{}, Tube{}, Sphere{}, HollowSphere{}, Ellipsoid{}, Pyramid{}, PlacedCell{}}
+	_ = []Charted{Polygon{}, Disc{}, Annulus{}, Sector{}, Wall{}, WallSector{}, ConeWall{}, SphereSurface{}, EllipsoidSurface{}, TorusSurface{}}
+	_ = []Charted{PlacedSurface{}, PlacedSheet{}}
+	_ = []Blocked{Box{}, Prism{}, Pyramid{}, Cylinder{}, Tube{}, Arc{}, Cone{}, Sphere{}, HollowSphere{}, Ellipsoid{}, Torus{}, PlacedCell{}}
 )
 
 // u is the unit roundoff.
@@ -77,6 +78,18 @@ func bodies() []named {
 		{"sphere", Sphere{Radius: 1.1}},
 		{"hollow sphere", HollowSphere{Inner: 0.3, Outer: 1.1}},
 		{"ellipsoid", Ellipsoid{SemiAxes: r3.Vec{X: 0.3, Y: 1.1, Z: 0.7}}},
+		{"arc", Arc{Inner: 0.3, Outer: 0.7, Height: 1.3, From: 0.3, To: 2.1}},
+		{"half arc", ArcDegrees(0.3, 0.7, 1.3, -30, 150)},
+		{"wide arc", ArcDegrees(0.5, 0.7, 0.4, -100, 170)},
+		{"slit tube", Arc{Inner: 0.3, Outer: 0.7, Height: 1.3, From: -3, To: 3.2}},
+		{"arc of a turn", Arc{Inner: 0.3, Outer: 0.7, Height: 1.3, From: 0.1, To: 0.1 + 2*math.Pi}},
+		{"wedge", Arc{Outer: 0.7, Height: 1.3, From: 4, To: 4.9}},
+		{"wide wedge", ArcDegrees(0, 0.7, 1.3, 0, 270)},
+		{"truncated cone", Cone{Bottom: 0.7, Top: 0.3, Height: 1.3}},
+		{"flat cone", Cone{Bottom: 0.3, Top: 1.9, Height: 1.4}},
+		{"cone", Cone{Bottom: 0.9, Height: 0.7}},
+		{"cone on its tip", Cone{Top: 0.3, Height: 1.1}},
+		{"torus", Torus{Major: 1.1, Minor: 0.3}},
 		{"prism", Prism{Base: ell, Height: 0.3}},
 		{"sloped prism", Prism{Base: star, Height: 1.1, BottomSlope: [2]float64{0.1, -0.2}, TopSlope: [2]float64{0.3, 0.07}}},
 		{"tetrahedron", tetrahedron()},
@@ -115,14 +128,21 @@ func TestBodiesPass(t *testing.T) {
 
 func TestFaceNames(t *testing.T) {
 	want := map[string][]string{
-		"box":           {"-x", "+x", "-y", "+y", "-z", "+z"},
-		"cylinder":      {"bottom", "top", "wall"},
-		"tube":          {"bottom", "top", "inner", "outer"},
-		"sphere":        {"surface"},
-		"hollow sphere": {"inner", "outer"},
-		"ellipsoid":     {"surface"},
-		"prism":         {"bottom", "top", "side 0", "side 1", "side 2", "side 3", "side 4", "side 5"},
-		"tetrahedron":   {"0", "1", "2", "3"},
+		"box":             {"-x", "+x", "-y", "+y", "-z", "+z"},
+		"cylinder":        {"bottom", "top", "wall"},
+		"tube":            {"bottom", "top", "inner", "outer"},
+		"arc":             {"bottom", "top", "inner", "outer", "from", "to"},
+		"arc of a turn":   {"bottom", "top", "inner", "outer"},
+		"wedge":           {"bottom", "top", "outer", "from", "to"},
+		"truncated cone":  {"bottom", "top", "wall"},
+		"cone":            {"bottom", "wall"},
+		"cone on its tip": {"top", "wall"},
+		"torus":           {"surface"},
+		"sphere":          {"surface"},
+		"hollow sphere":   {"inner", "outer"},
+		"ellipsoid":       {"surface"},
+		"prism":           {"bottom", "top", "side 0", "side 1", "side 2", "side 3", "side 4", "side 5"},
+		"tetrahedron":     {"0", "1", "2", "3"},
 	}
 	for _, b := range bodies() {
 		names, ok := want[b.name]

@@ -37,9 +37,8 @@ type Place struct {
 // with c the centre and size the half diagonal of the bounds. The slack is what the rounding of the coordinates
 // outside the frame amounts to (see field.Points); it is zero for a point given in the frame itself.
 func OnTolerance(bounds r3.Box, x r3.Vec, slack float64) float64 {
-	c := r3.Scale(0.5, r3.Add(bounds.Min, bounds.Max))
-	half := r3.Scale(0.5, r3.Sub(bounds.Max, bounds.Min))
-	return slack + 4*0x1p-53*(r3.Norm(x)+r3.Norm(c)+r3.Norm(half))
+	e := extentOf(bounds)
+	return e.tolerance(x, slack)
 }
 
 // Body is a solid part in its own frame.

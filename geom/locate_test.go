@@ -82,6 +82,10 @@ func edgePoints(b Body) (points []pair.Vec) {
 	case Tube:
 		ring(b.Inner, b.Height/2)
 		ring(b.Outer, b.Height/2)
+	case Arc:
+		return arcEdges(b)
+	case Cone:
+		return coneEdges(b)
 	case Flat:
 		p := b.Polyhedron()
 		for f := range p.Loops {

@@ -29,6 +29,14 @@ func exactPoints(b Body) (points []pair.Vec, normals []pair.Vec) {
 			for a, n := range map[float64]pair.Vec{b.Inner: e.Neg(), b.Outer: e} {
 				add(pair.Vec{X: c.Scale(a), Y: s.Scale(a), Z: z}, n)
 			}
+		case Arc:
+			x, n := arcPoint(b, k)
+			add(x, n)
+		case Cone:
+			x, n := conePoint(b, k, e)
+			add(x, n)
+		case Torus:
+			add(torusPoint(b, k, e))
 		case Sphere:
 			add(sphere.Scale(pair.Of(b.Radius)), sphere)
 		case HollowSphere:

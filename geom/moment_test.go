@@ -70,6 +70,14 @@ func TestMomentsByHand(t *testing.T) {
 		{"box", Box{Size: r3.Vec{X: 1, Y: 2, Z: 3}}, 6, r3.Vec{}, [3][3]float64{{0.5, 0, 0}, {0, 2, 0}, {0, 0, 4.5}}},
 		{"cylinder", Cylinder{Radius: 2, Height: 3}, 12 * math.Pi, r3.Vec{}, [3][3]float64{{12 * math.Pi, 0, 0}, {0, 12 * math.Pi, 0}, {0, 0, 9 * math.Pi}}},
 		{"tube", Tube{Inner: 1, Outer: 2, Height: 3}, 9 * math.Pi, r3.Vec{}, [3][3]float64{{45 * math.Pi / 4, 0, 0}, {0, 45 * math.Pi / 4, 0}, {0, 0, 27 * math.Pi / 4}}},
+		// A quarter of a ring: 4/(3 pi) (b^3 - a^3)/(b^2 - a^2) along each axis; half and none of the polar moment beside it.
+		{"quarter wedge", ArcDegrees(0, 3, 2, 0, 90), 9 * math.Pi / 2, r3.Vec{X: 4 / math.Pi, Y: 4 / math.Pi}, [3][3]float64{
+			{81*math.Pi/8 - 72/math.Pi, 81.0/4 - 72/math.Pi, 0}, {81.0/4 - 72/math.Pi, 81*math.Pi/8 - 72/math.Pi, 0}, {0, 0, 3 * math.Pi / 2}}},
+		{"half arc", Arc{Inner: 1, Outer: 2, Height: 2, From: -math.Pi / 2, To: math.Pi / 2}, 3 * math.Pi, r3.Vec{X: 28 / (9 * math.Pi)}, [3][3]float64{
+			{15*math.Pi/4 - 784/(27*math.Pi), 0, 0}, {0, 15 * math.Pi / 4, 0}, {0, 0, math.Pi}}},
+		{"cone", Cone{Bottom: 2, Height: 3}, 4 * math.Pi, r3.Vec{Z: -0.75}, [3][3]float64{{12 * math.Pi / 5, 0, 0}, {0, 12 * math.Pi / 5, 0}, {0, 0, 27 * math.Pi / 20}}},
+		{"torus", Torus{Major: 2, Minor: 1}, 4 * math.Pi * math.Pi, r3.Vec{}, [3][3]float64{
+			{19 * math.Pi * math.Pi / 2, 0, 0}, {0, 19 * math.Pi * math.Pi / 2, 0}, {0, 0, math.Pi * math.Pi}}},
 		{"sphere", Sphere{Radius: 3}, 36 * math.Pi, r3.Vec{}, [3][3]float64{{324 * math.Pi / 5, 0, 0}, {0, 324 * math.Pi / 5, 0}, {0, 0, 324 * math.Pi / 5}}},
 		{"hollow sphere", HollowSphere{Inner: 1, Outer: 2}, 28 * math.Pi / 3, r3.Vec{}, [3][3]float64{{124 * math.Pi / 15, 0, 0}, {0, 124 * math.Pi / 15, 0}, {0, 0, 124 * math.Pi / 15}}},
 		{"ellipsoid", Ellipsoid{SemiAxes: r3.Vec{X: 1, Y: 2, Z: 3}}, 8 * math.Pi, r3.Vec{}, [3][3]float64{{8 * math.Pi / 5, 0, 0}, {0, 32 * math.Pi / 5, 0}, {0, 0, 72 * math.Pi / 5}}},
@@ -132,6 +140,12 @@ func TestAreas(t *testing.T) {
 		{"annulus", Annulus{Inner: 1, Outer: 2}, 3 * math.Pi},
 		{"wall", Wall{Radius: 2, Z1: -1, Z2: 2}, 12 * math.Pi},
 		{"sphere", SphereSurface{Radius: 2}, 16 * math.Pi},
+		{"sector", Sector{Inner: 1, Outer: 2, From: 1, To: 2}, 1.5},
+		{"sector in degrees", Sector{Inner: 1, Outer: 2, From: 350, To: 380, Degrees: true}, math.Pi / 4},
+		{"wall sector", WallSector{Radius: 2, Z1: -1, Z2: 2, From: -60, To: 0, Degrees: true}, 2 * math.Pi},
+		{"cone wall", ConeWall{R1: 3, R2: 0, Z1: -2, Z2: 2}, 15 * math.Pi},
+		{"truncated cone wall", ConeWall{R1: 1, R2: 4, Z1: 0, Z2: 4}, 25 * math.Pi},
+		{"torus", TorusSurface{Major: 2, Minor: 1}, 8 * math.Pi * math.Pi},
 		{"tilted triangle", Polygon{Vertices: []r3.Vec{{X: 1}, {Y: 1}, {Z: 1}}}, math.Sqrt(3) / 2},
 		// 25 digits of 4 pi R_G((ab)^2, (ac)^2, (bc)^2) by mpmath, the first two also by integration of the element
 		{"ellipsoid 1 2 3", EllipsoidSurface{r3.Vec{X: 1, Y: 2, Z: 3}}, 48.88214630258205969571955},

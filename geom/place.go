@@ -24,6 +24,21 @@ func beyond(b r3.Box, x r3.Vec, tol float64) bool {
 		x.Z >= b.Min.Z-tol && x.Z <= b.Max.Z+tol)
 }
 
+// extent is what OnTolerance needs to know of bounds.
+type extent struct {
+	box          r3.Box
+	centre, half float64 // distance of the centre from the origin, half diagonal
+}
+
+func extentOf(b r3.Box) extent {
+	return extent{b, r3.Norm(r3.Scale(0.5, r3.Add(b.Min, b.Max))), r3.Norm(r3.Scale(0.5, r3.Sub(b.Max, b.Min)))}
+}
+
+// tolerance is OnTolerance.
+func (e *extent) tolerance(x r3.Vec, slack float64) float64 {
+	return slack + 4*0x1p-53*(r3.Norm(x)+e.centre+e.half)
+}
+
 // meet tells where a point lies from its signed distances (positive outside, -Inf for none) to faces that meet at
 // right angles: the region, and for On the one distance that is within tol, -1 if several are.
 func meet(d [3]float64, tol float64) (Region, int) {

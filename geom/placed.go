@@ -23,7 +23,7 @@ func At(body Body, pose Pose) Placed {
 func (p Placed) Check() error { return p.Body.Check() }
 
 // Bounds returns a box along the outer axes.
-func (p Placed) Bounds() r3.Box { return p.Pose.bounds(p.Body.Bounds()) }
+func (p Placed) Bounds() r3.Box { return PosedBox(p.Body.Bounds(), p.Pose) }
 
 // Volume returns the volume of the body.
 func (p Placed) Volume() float64 { return p.Body.Volume() }
@@ -97,7 +97,7 @@ func (p PlacedSheet) Check() error { return p.Sheet.Check() }
 func (p PlacedSheet) Area() float64 { return p.Sheet.Area() }
 
 // Bounds returns a box along the outer axes.
-func (p PlacedSheet) Bounds() r3.Box { return p.Pose.bounds(p.Sheet.Bounds()) }
+func (p PlacedSheet) Bounds() r3.Box { return PosedBox(p.Sheet.Bounds(), p.Pose) }
 
 // Centroid returns the centre of area in the outer frame.
 func (p PlacedSheet) Centroid() r3.Vec { return p.Pose.point(p.Sheet.Centroid()) }
@@ -123,7 +123,7 @@ type PlacedSurface struct {
 func (p PlacedSurface) Area() float64 { return p.Surface.Area() }
 
 // Bounds returns a box along the outer axes.
-func (p PlacedSurface) Bounds() r3.Box { return p.Pose.bounds(p.Surface.Bounds()) }
+func (p PlacedSurface) Bounds() r3.Box { return PosedBox(p.Surface.Bounds(), p.Pose) }
 
 // Nodes visits the nodes of the surface in the outer frame.
 func (p PlacedSurface) Nodes(n int, visit func(x, normal r3.Vec, weight float64)) {
@@ -169,25 +169,4 @@ func (p Pose) slack(x pair.Vec) float64 {
 func (p Pose) turnNormal(at Place) Place {
 	at.Normal = p.VectorToOuter(at.Normal)
 	return at
-}
-
-// bounds returns a box along the outer axes that contains the box b of the frame.
-func (p Pose) bounds(b r3.Box) r3.Box {
-	out := nothing()
-	for i := range 8 {
-		corner := b.Min
-		if i&1 != 0 {
-			corner.X = b.Max.X
-		}
-		if i&2 != 0 {
-			corner.Y = b.Max.Y
-		}
-		if i&4 != 0 {
-			corner.Z = b.Max.Z
-		}
-		x := p.ToOuter(pair.VecOf(corner))
-		v := x.Value()
-		out = include(include(out, v), rounded(v, x.Low()))
-	}
-	return out
 }

@@ -77,20 +77,23 @@ func (p Polygon) Locate(x pair.Vec, slack float64) Place {
 
 // Nodes visits the points of a product Gauss rule on a parallelogram, else of collapsed Gauss rules on the triangles
 // of the polygon. All weights are positive.
+//
+// Points are rounded to float64, so low parts of vertices show in them only by a last bit. Weights are taken from
+// differences in pairs: on a thin strip far from the origin they too are right to a few roundings.
 func (p Polygon) Nodes(n int, visit func(x, normal r3.Vec, weight float64)) {
 	if len(p.Vertices) < 3 {
 		return
 	}
-	normal := p.Normal().Value()
+	l, normal := p.loop(), p.Normal()
 	if p.parallelogram() {
-		p.visitParallelogram(n, normal, visit)
+		l.visitQuadrilateral(n, normal, visit)
 		return
 	}
-	v := p.Vertices
-	for _, t := range triangles(p.loop()) {
-		a, b, c := v[t[0]], v[t[1]], v[t[2]]
-		double := r3.Norm(r3.Cross(r3.Sub(b, a), r3.Sub(c, a)))
-		visitTriangle(n, a, b, c, func(x r3.Vec, weight float64) { visit(x, normal, double*weight) })
+	out, v := normal.Value(), p.Vertices
+	for _, t := range triangles(l) {
+		a := l.at(t[0])
+		double := l.at(t[1]).Sub(a).Cross(l.at(t[2]).Sub(a)).Norm().Value()
+		visitTriangle(n, v[t[0]], v[t[1]], v[t[2]], func(x r3.Vec, weight float64) { visit(x, out, double*weight) })
 	}
 }
 
@@ -104,14 +107,22 @@ func (p Polygon) parallelogram() bool {
 	return r3.Norm(skew) <= 4*0x1p-53*largest(v)
 }
 
-func (p Polygon) visitParallelogram(n int, normal r3.Vec, visit func(x, normal r3.Vec, weight float64)) {
-	v := p.Vertices
-	a, b := r3.Sub(v[1], v[0]), r3.Sub(v[3], v[0])
-	area := r3.Norm(r3.Cross(a, b))
+// visitQuadrilateral visits the points of the product rule on the square (s, t), mapped to
+//
+//	x = v0 + s a + t b + s t d,  dA = n.(a x b + s a x d + t d x b) ds dt,
+//
+// with d what the vertices lack to a parallelogram: little beside a and b, but not beside the area of a thin strip.
+func (l loop) visitQuadrilateral(n int, normal pair.Vec, visit func(x, normal r3.Vec, weight float64)) {
+	v0 := l.at(0)
+	a, b := l.at(1).Sub(v0), l.at(3).Sub(v0)
+	d := l.at(2).Sub(v0).Sub(a).Sub(b)
+	area, areaS, areaT := normal.Dot(a.Cross(b)).Value(), normal.Dot(a.Cross(d)).Value(), normal.Dot(d.Cross(b)).Value()
+	out, origin, p, q, r := normal.Value(), v0.Value(), a.Value(), b.Value(), d.Value()
 	rule := gauss(n, 0, 1)
 	for _, s := range rule {
 		for _, t := range rule {
-			visit(r3.Add(v[0], r3.Add(r3.Scale(s.x, a), r3.Scale(t.x, b))), normal, area*s.w*t.w)
+			x := r3.Add(r3.Scale(s.x, p), r3.Add(r3.Scale(t.x, q), r3.Scale(s.x*t.x, r)))
+			visit(r3.Add(origin, x), out, (area+s.x*areaS+t.x*areaT)*s.w*t.w)
 		}
 	}
 }

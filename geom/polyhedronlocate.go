@@ -7,7 +7,7 @@ import (
 	"gonum.org/v1/gonum/spatial/r3"
 )
 
-// Locate tells where x lies.
+// Locate tells where x lies. The time is that of all planes; who asks often asks LocatorOf(p).
 //
 // A point within tolerance of a face or its rim is on it. Any other point is told by a ray that counts the faces it
 // meets. The ray runs along a fixed direction that is no direction of a drawing, and which edge it passes on which side
@@ -140,9 +140,11 @@ func (l loop) hides(x pair.Vec, at flat, v r3.Vec) bool {
 	}
 	n := l.area()
 	height := n.Dot(x.Sub(l.mean()))
-	rise := n.Z.Sub(n.X.Scale(slantX)).Sub(n.Y.Scale(slantY))
-	return height.Sign() == -rise.Sign()
+	return height.Sign() == -rise(n).Sign()
 }
+
+// rise returns the component of n along the ray.
+func rise(n pair.Vec) pair.Float { return n.Z.Sub(n.X.Scale(slantX)).Sub(n.Y.Scale(slantY)) }
 
 // passesLeft reports whether p is left of the edge from a to b taken upwards. It is computed in the direction of rising
 // vertex numbers, so that both faces of the edge get the same answer, also for a point exactly on it.

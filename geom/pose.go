@@ -26,7 +26,7 @@ func Translate(d r3.Vec) Pose { return Pose{shift: pair.VecOf(d)} }
 func Shift(d pair.Vec) Pose { return Pose{shift: d} }
 
 // Turn returns the right-handed rotation by an angle in degrees about an axis of any length through the origin.
-// Multiples of 90 degrees about a frame axis are exact.
+// Multiples of 90 degrees about a frame axis are exact; other matrices are right to the precision of pairs.
 func Turn(axis r3.Vec, degrees float64) (Pose, error) {
 	if !finite(axis) || axis == (r3.Vec{}) {
 		return Pose{}, fmt.Errorf("geom: rotation axis %v has no direction; give a finite vector other than zero", axis)
@@ -49,7 +49,7 @@ func Turn(axis r3.Vec, degrees float64) (Pose, error) {
 
 // Frame returns the rotation that takes the z axis along z (any length), the x axis along the part of x perpendicular
 // to z, and y to z cross x. A zero x stands for the outer axis least aligned with z, the first of them in the order
-// x, y, z if several tie.
+// x, y, z if several tie. The frame is orthonormal to the precision of pairs.
 func Frame(z, x r3.Vec) (Pose, error) {
 	if !finite(z) || z == (r3.Vec{}) {
 		return Pose{}, fmt.Errorf("geom: frame axis z %v has no direction; give a finite vector other than zero", z)
@@ -60,21 +60,24 @@ func Frame(z, x r3.Vec) (Pose, error) {
 	if x == (r3.Vec{}) {
 		x = leastAligned(z)
 	}
-	e3 := pair.VecOf(z).Unit()
-	u := pair.VecOf(x).Unit()
-	e1 := u.Sub(e3.Scale(u.Dot(e3)))
-	if e1.Norm().Hi < 1e-14 {
+	near := nearOne(z)
+	e3 := pair.VecOf(near).Unit()
+	e2 := pair.VecOf(near).Cross(pair.VecOf(nearOne(x))) // every component is right to a few u^2, also for x close to z
+	if e2.Norm().Hi < parallel {
 		return Pose{}, fmt.Errorf("geom: frame axis x %v is parallel to z %v; give a vector that is not", x, z)
 	}
-	e1 = e1.Unit()
-	e1 = e1.Sub(e3.Scale(e1.Dot(e3))).Unit() // once more: the first pass loses digits where x is nearly along z
-	e2 := e3.Cross(e1)
+	e2 = e2.Unit()
+	e1 := e2.Cross(e3)
 	return Pose{turned: true, turn: [3]pair.Vec{
 		{X: e1.X, Y: e2.X, Z: e3.X},
 		{X: e1.Y, Y: e2.Y, Z: e3.Y},
 		{X: e1.Z, Y: e2.Z, Z: e3.Z},
 	}}, nil
 }
+
+// parallel is the size of a cross product of two vectors of about unit length below which they count as parallel: their
+// decimals leave some 1e-16.
+const parallel = 1e-14
 
 // leastAligned returns the frame axis with the smallest component in z.
 func leastAligned(z r3.Vec) r3.Vec {
@@ -88,8 +91,19 @@ func leastAligned(z r3.Vec) r3.Vec {
 	return r3.Vec{Z: 1}
 }
 
-// About returns the pose that acts like p about the point c instead of the origin.
-func (p Pose) About(c r3.Vec) Pose { return Translate(r3.Scale(-1, c)).Then(p).Then(Translate(c)) }
+// nearOne returns v times a power of two that brings its largest component close to 1.
+func nearOne(v r3.Vec) r3.Vec {
+	_, e := math.Frexp(max(math.Abs(v.X), math.Abs(v.Y), math.Abs(v.Z)))
+	return r3.Vec{X: math.Ldexp(v.X, -e), Y: math.Ldexp(v.Y, -e), Z: math.Ldexp(v.Z, -e)}
+}
+
+// About returns the pose that acts like p about the point c instead of the origin. A translation stays the same.
+func (p Pose) About(c r3.Vec) Pose {
+	if !p.turned {
+		return p
+	}
+	return Translate(r3.Scale(-1, c)).Then(p).Then(Translate(c))
+}
 
 // Then returns the pose that applies p first and q after it.
 func (p Pose) Then(q Pose) Pose {
@@ -174,22 +188,4 @@ func transpose(m [3]pair.Vec) [3]pair.Vec {
 func finite(v r3.Vec) bool {
 	s := v.X - v.X + (v.Y - v.Y) + (v.Z - v.Z)
 	return s == 0
-}
-
-// PosedBox returns the box, along the axes of the outer frame, that holds the box b of the frame.
-func PosedBox(b r3.Box, p Pose) r3.Box {
-	if b.Min.X > b.Max.X {
-		return b
-	}
-	m := p.Matrix()
-	c := p.ToOuter(pair.VecOf(r3.Scale(0.5, r3.Add(b.Min, b.Max)))).Value()
-	h := r3.Scale(0.5, r3.Sub(b.Max, b.Min))
-	reach := func(row [3]float64) float64 {
-		return math.Abs(row[0])*h.X + math.Abs(row[1])*h.Y + math.Abs(row[2])*h.Z
-	}
-	d := r3.Vec{X: reach(m[0]), Y: reach(m[1]), Z: reach(m[2])}
-	if p.turned { // the matrix is rounded: keep the promise to contain
-		d = r3.Scale(1+0x1p-50, d)
-	}
-	return r3.Box{Min: r3.Sub(c, d), Max: r3.Add(c, d)}
 }

@@ -133,8 +133,7 @@ func (p Prism) Centroid() r3.Vec { return p.Polyhedron().Centroid() }
 // SecondMoment returns the second moment about the centroid.
 func (p Prism) SecondMoment() [3][3]float64 { return p.Polyhedron().SecondMoment() }
 
-// Locate tells where x lies. It makes the polyhedron for points within the bounds; who asks often keeps Polyhedron and
-// asks that.
+// Locate tells where x lies. It makes the polyhedron for points within the bounds; who asks often asks LocatorOf(p).
 func (p Prism) Locate(x pair.Vec, slack float64) Place {
 	bounds, v := p.Bounds(), x.Value()
 	if beyond(bounds, v, OnTolerance(bounds, v, slack)) {

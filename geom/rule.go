@@ -16,9 +16,12 @@ func gauss(n int, a, b float64) []node {
 	n = max(n, 1)
 	rule := make([]node, n)
 	middle, half := a+(b-a)/2, (b-a)/2
-	for k := 0; k <= n/2 && k < n; k++ {
+	for k := 0; 2*k < n; k++ {
 		t, w := quad.Legendre{}.FixedLocationSingle(n, k, -1, 1)
 		t = math.Abs(t)
+		if n == 26 && k == 0 {
+			w = 0.010551372617343007156 // the table of gonum v0.17.0 has 0
+		}
 		if 2*k+1 == n {
 			t = 0
 		}

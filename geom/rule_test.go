@@ -9,7 +9,7 @@ import (
 )
 
 func TestGaussExact(t *testing.T) {
-	for n := 1; n <= 24; n++ {
+	for n := 1; n <= 64; n++ {
 		rule := gauss(n, 0, 1)
 		if len(rule) != n {
 			t.Fatalf("gauss(%d) has %d points", n, len(rule))
@@ -21,6 +21,11 @@ func TestGaussExact(t *testing.T) {
 			}
 			if want := 1 / float64(d+1); !near(sum, want, float64(8+d)*u*want) { // d products in the power
 				t.Errorf("n = %d, degree %d: %v, want %v", n, d, sum, want)
+			}
+		}
+		for k := 1; k < n; k++ {
+			if rule[k-1].x >= rule[k].x {
+				t.Errorf("n = %d: points %d and %d are not ascending", n, k-1, k)
 			}
 		}
 		for k, p := range gauss(n, -3, 3) {

@@ -1,6 +1,8 @@
 package main
 
 import (
+	"bytes"
+	"context"
 	"io"
 
 	"example.com/boundpole/examples/scene/internal/output"
@@ -12,9 +14,10 @@ import (
 // mostRecords is how many records of a request go into results.json where a data file holds them all.
 const mostRecords = 20_000
 
-// answer does what the scene wants: the report on w, and files in the folder dir unless that is empty.
-func answer(setup *solve.Setup, dir string, w io.Writer) (status int, err error) {
-	r := &runner{setup: setup, report: report.New(setup)}
+// answer does what the scene wants: the report on w, and files in the folder dir unless that is empty. Files get their
+// names last, when all is computed and the report is out.
+func answer(ctx context.Context, setup *solve.Setup, dir string, w io.Writer) (status int, err error) {
+	r := &runner{ctx: ctx, setup: setup, report: report.New(setup, dir != "")}
 	if dir != "" {
 		if r.folder, err = output.OpenFolder(dir); err != nil {
 			return wrong, err
@@ -24,9 +27,6 @@ func answer(setup *solve.Setup, dir string, w io.Writer) (status int, err error)
 			return wrong, err
 		}
 		r.results = output.NewResults(setup, r.answers)
-	}
-	for _, s := range setup.Scene.Skipped {
-		r.report.Skip(s)
 	}
 	charges := setup.Charges()
 	r.report.Charges(charges)
@@ -41,7 +41,16 @@ func answer(setup *solve.Setup, dir string, w io.Writer) (status int, err error)
 			return wrong, err
 		}
 	}
-	r.report.Print(w, cautions)
+	var text bytes.Buffer
+	r.report.Print(&text, cautions)
+	if err := printed(w, text.Bytes()); err != nil {
+		return wrong, err
+	}
+	if r.folder != nil {
+		if err := r.folder.Commit(); err != nil {
+			return wrong, err
+		}
+	}
 	if r.missed {
 		return missed, nil
 	}
@@ -50,6 +59,7 @@ func answer(setup *solve.Setup, dir string, w io.Writer) (status int, err error)
 
 // runner answers requests one after the other.
 type runner struct {
+	ctx     context.Context
 	setup   *solve.Setup
 	report  *report.Report
 	folder  *output.Folder // nil: no files
@@ -69,7 +79,9 @@ func (r *runner) request(q *scenefile.Request, charges []solve.PartCharge) error
 			checks = append(checks, r.setup.CheckCharge(&q.Hand[i], charges))
 		}
 		if r.results != nil {
-			r.results.Charges(charges)
+			if err := r.results.Charges(charges); err != nil {
+				return err
+			}
 		}
 	} else {
 		var err error
@@ -103,8 +115,9 @@ func (r *runner) points(q *scenefile.Request) ([]solve.Check, error) {
 	}
 	checks := make([]solve.Check, len(q.Hand))
 	see, end := r.report.Points(q)
-	err := r.setup.Records(q, func(i int, rec *solve.Record) error {
-		r.watch.See(rec)
+	err := r.setup.Records(r.ctx, q, func(i int, rec *solve.Record) error {
+		r.watch.See(rec, solve.SideOf(q.Side))
+		r.missed = r.missed || len(rec.Missed) > 0
 		see(i, rec)
 		for k := range q.Hand {
 			if q.Hand[k].At == i {
@@ -134,7 +147,7 @@ func (r *runner) points(q *scenefile.Request) ([]solve.Check, error) {
 	return checks, nil
 }
 
-// finish puts the answers between head and tail and gives all files their names.
+// finish puts the answers between head and tail, and all files on the disk.
 func (r *runner) finish(cautions []string) error {
 	if err := r.results.Flush(); err != nil {
 		return err
@@ -156,5 +169,5 @@ func (r *runner) finish(cautions []string) error {
 	if err := output.Tail(file); err != nil {
 		return err
 	}
-	return r.folder.Commit()
+	return r.folder.Close()
 }

@@ -36,10 +36,11 @@ func (a Vec) Neg() Vec { return Vec{a.X.Neg(), a.Y.Neg(), a.Z.Neg()} }
 // Scale returns s a.
 func (a Vec) Scale(s Float) Vec { return Vec{a.X.Mul(s), a.Y.Mul(s), a.Z.Mul(s)} }
 
-// Dot returns a.b.
+// Dot returns a.b. Accuracy: error below 12 u^2 of the sum of the magnitudes of the three products.
 func (a Vec) Dot(b Vec) Float { return a.X.Mul(b.X).Add(a.Y.Mul(b.Y)).Add(a.Z.Mul(b.Z)) }
 
-// Cross returns a x b.
+// Cross returns a x b. Accuracy: the error of a component is below 9 u^2 of the sum of the magnitudes of its two products;
+// if all Lo of a and b are zero, below 4 u^2 of the component itself, however small.
 func (a Vec) Cross(b Vec) Vec {
 	return Vec{
 		a.Y.Mul(b.Z).Sub(a.Z.Mul(b.Y)),
@@ -48,23 +49,31 @@ func (a Vec) Cross(b Vec) Vec {
 	}
 }
 
-// Norm returns |a|. Components are scaled by a power of two first, so it neither overflows nor underflows.
+// Norm returns |a|. It neither overflows, unless |a| does, nor underflows. Accuracy: relative error below 10 u^2.
 func (a Vec) Norm() Float {
-	m := max(math.Abs(a.X.Hi), math.Abs(a.Y.Hi), math.Abs(a.Z.Hi))
+	m := a.reach()
 	if m == 0 || math.IsInf(m, 0) || math.IsNaN(m) {
 		return Of(m)
 	}
-	_, e := math.Frexp(m)
-	down, up := math.Ldexp(1, -e), math.Ldexp(1, e)
-	if e < -1021 || e > 1022 { // the inverse scale would itself leave the range
-		return a.Dot(a).Sqrt()
-	}
-	b := Vec{a.X.Scale(down), a.Y.Scale(down), a.Z.Scale(down)}
+	b, up := a.scaled(m)
 	return b.Dot(b).Sqrt().Scale(up)
 }
 
-// Unit returns a/|a|; of the zero vector it returns NaN components.
+// Unit returns a/|a|, for a of any length; of the zero vector and of vectors that are not finite it returns NaN
+// components. Accuracy: the relative error of each component is below 22 u^2.
 func (a Vec) Unit() Vec {
-	n := a.Norm()
-	return Vec{a.X.Div(n), a.Y.Div(n), a.Z.Div(n)}
+	b, _ := a.scaled(a.reach())
+	n := b.Dot(b).Sqrt()
+	return Vec{b.X.Div(n), b.Y.Div(n), b.Z.Div(n)}
+}
+
+// reach returns the greatest magnitude of a component.
+func (a Vec) reach() float64 { return max(math.Abs(a.X.Hi), math.Abs(a.Y.Hi), math.Abs(a.Z.Hi)) }
+
+// scaled returns a divided by a power of two that brings its reach m close to 1, and that power.
+func (a Vec) scaled(m float64) (b Vec, up float64) {
+	_, e := math.Frexp(m)
+	e = min(max(e, -1021), 1021) // so that both powers are normal numbers
+	down := Of(math.Ldexp(1, -e))
+	return a.Scale(down), math.Ldexp(1, e)
 }

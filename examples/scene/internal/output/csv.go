@@ -32,7 +32,8 @@ func NewTable(setup *solve.Setup, q *scenefile.Request, w io.Writer) *Table {
 	meta("request", q.Kind)
 	meta("name", q.Name)
 	meta("side", string(q.Side))
-	t.w.WriteString("# units: SI, frame of the scene; an empty field does not exist, see status\n")
+	meta("units", "SI, lengths in m, frame of the scene; an empty field does not exist, see status")
+	meta("constants", string(constants()))
 	header := "x[m],y[m],z[m]"
 	if setup.Electric {
 		header += ",V[V],Ex[V/m],Ey[V/m],Ez[V/m],Dx[C/m^2],Dy[C/m^2],Dz[C/m^2]"
@@ -47,16 +48,16 @@ func NewTable(setup *solve.Setup, q *scenefile.Request, w io.Writer) *Table {
 // Record writes one row.
 func (t *Table) Record(rec *solve.Record) error {
 	t.row = t.row[:0]
-	t.vec(rec.X)
+	t.vector(rec.X)
 	if t.setup.Electric {
 		t.number(rec.Electric.V)
-		t.vec(rec.Electric.E)
-		t.vec(rec.Electric.D)
+		t.vector(rec.Electric.E)
+		t.vector(rec.Electric.D)
 	}
 	if t.setup.Magnetic {
 		t.number(rec.Magnetic.Vm)
-		t.vec(rec.Magnetic.H)
-		t.vec(rec.Magnetic.B)
+		t.vector(rec.Magnetic.H)
+		t.vector(rec.Magnetic.B)
 	}
 	if rec.Inside >= 0 {
 		t.row = append(t.row, field1(t.setup.Parts[rec.Inside].Name)...)
@@ -64,6 +65,17 @@ func (t *Table) Record(rec *solve.Record) error {
 	t.row = append(t.row, ',')
 	if rec.Status != field.Regular {
 		t.row = append(t.row, rec.Status.String()...)
+	}
+	for i, name := range rec.Missed {
+		switch {
+		case i > 0:
+			t.row = append(t.row, ' ')
+		case rec.Status != field.Regular:
+			t.row = append(t.row, "; accuracy missed: "...)
+		default:
+			t.row = append(t.row, "accuracy missed: "...)
+		}
+		t.row = append(t.row, name...)
 	}
 	t.row = append(t.row, '\n')
 	_, err := t.w.Write(t.row)
@@ -75,7 +87,12 @@ func (t *Table) Flush() error { return t.w.Flush() }
 
 func (t *Table) number(v float64) { t.row = append(appendNumber(t.row, v, ""), ',') }
 
-func (t *Table) vec(v r3.Vec) {
+// vector writes three components, none where the vector does not exist.
+func (t *Table) vector(v r3.Vec) {
+	if solve.MissingVec(v) {
+		t.row = append(t.row, ",,,"...)
+		return
+	}
 	t.number(v.X)
 	t.number(v.Y)
 	t.number(v.Z)

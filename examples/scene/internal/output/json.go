@@ -4,10 +4,10 @@ package output
 
 import (
 	"bufio"
+	"bytes"
 	"encoding/json"
 	"fmt"
 	"io"
-	"math"
 	"strconv"
 
 	"example.com/boundpole/charge"
@@ -39,7 +39,7 @@ func Head(w io.Writer, scene *scenefile.Scene, cautions, warnings []string) erro
 	}{
 		{"version", 1},
 		{"title", scene.Title},
-		{"constants", map[string]float64{"epsilon0": charge.Epsilon0, "mu0": magnet.Mu0}},
+		{"constants", json.RawMessage(constants())},
 		{"cautions", list(cautions)},
 		{"warnings", list(warnings)},
 	}
@@ -47,9 +47,12 @@ func Head(w io.Writer, scene *scenefile.Scene, cautions, warnings []string) erro
 		return err
 	}
 	for _, f := range fields {
-		text, err := json.Marshal(f.value)
-		if err != nil {
-			return err
+		text, isText := f.value.(json.RawMessage)
+		if !isText {
+			var err error
+			if text, err = marshal(f.value); err != nil {
+				return err
+			}
 		}
 		if _, err := fmt.Fprintf(w, " %q: %s,\n", f.key, text); err != nil {
 			return err
@@ -57,6 +60,12 @@ func Head(w io.Writer, scene *scenefile.Scene, cautions, warnings []string) erro
 	}
 	_, err := io.WriteString(w, " \"answers\": [")
 	return err
+}
+
+// constants writes the constants of the models.
+func constants() []byte {
+	b := appendNumber([]byte(`{"epsilon0": `), charge.Epsilon0, "null")
+	return append(appendNumber(append(b, `, "mu0": `...), magnet.Mu0, "null"), '}')
 }
 
 // Tail writes the end of the document.
@@ -140,14 +149,18 @@ func (r *Results) check(c *solve.Check) {
 }
 
 // Charges writes what every part carries.
-func (r *Results) Charges(all []solve.PartCharge) {
+func (r *Results) Charges(all []solve.PartCharge) error {
 	r.key("parts")
 	r.buf = append(r.buf, '[')
 	for i := range all {
 		r.comma(i)
 		r.part(&all[i])
+		if err := r.drain(1 << 15); err != nil {
+			return err
+		}
 	}
 	r.buf = append(r.buf, ']')
+	return nil
 }
 
 func (r *Results) part(c *solve.PartCharge) {
@@ -160,10 +173,8 @@ func (r *Results) part(c *solve.PartCharge) {
 	} else {
 		r.text(string(p.Kind))
 	}
-	if c.Solid {
-		r.key("volume")
-		r.number(c.Volume)
-	}
+	r.key("volume")
+	r.number(c.Volume)
 	r.key("faces")
 	r.buf = append(r.buf, '[')
 	for i := range c.Faces {
@@ -184,12 +195,10 @@ func (r *Results) part(c *solve.PartCharge) {
 		r.buf = append(r.buf, '}')
 	}
 	r.buf = append(r.buf, ']')
-	if c.Solid {
-		r.key("volume_charge")
-		r.number(c.Inside)
-		r.key("volume_density")
-		r.extremes(c.Min, c.Max)
-	}
+	r.key("volume_charge")
+	r.number(c.Inside)
+	r.key("volume_density")
+	r.extremes(c.Min, c.Max)
 	r.key("total_charge")
 	r.number(c.Total)
 	r.key("moment")
@@ -243,6 +252,15 @@ func (r *Results) Record(i int, rec *solve.Record) error {
 		r.key("status")
 		r.text(rec.Status.String())
 	}
+	if len(rec.Missed) > 0 {
+		r.key("accuracy_missed")
+		r.buf = append(r.buf, '[')
+		for k, name := range rec.Missed {
+			r.comma(k)
+			r.text(name)
+		}
+		r.buf = append(r.buf, ']')
+	}
 	if rec.ByPart != nil {
 		r.byPart(rec.ByPart)
 	}
@@ -285,11 +303,15 @@ func (r *Results) byPart(all []solve.Contribution) {
 			r.number(c.V)
 			r.key("E")
 			r.vec(c.E)
+			r.key("D")
+			r.vec(c.D)
 		case solve.Magnetized:
 			r.key("Vm")
 			r.number(c.Vm)
 			r.key("H")
 			r.vec(c.H)
+			r.key("B")
+			r.vec(c.B)
 		}
 		r.buf = append(r.buf, '}')
 	}
@@ -315,11 +337,20 @@ func (r *Results) comma(i int) {
 }
 
 func (r *Results) text(s string) {
-	quoted, err := json.Marshal(s)
+	quoted, err := marshal(s)
 	if err != nil { // strings always marshal
 		quoted = []byte(`""`)
 	}
 	r.buf = append(r.buf, quoted...)
+}
+
+// marshal is json.Marshal that leaves <, > and & as they are.
+func marshal(v any) ([]byte, error) {
+	var b bytes.Buffer
+	e := json.NewEncoder(&b)
+	e.SetEscapeHTML(false)
+	err := e.Encode(v)
+	return bytes.TrimSuffix(b.Bytes(), []byte("\n")), err
 }
 
 // number writes v, null if it does not exist.
@@ -335,7 +366,7 @@ func (r *Results) numbers(v []float64) {
 
 // vec writes a vector, null as a whole if it does not exist.
 func (r *Results) vec(v r3.Vec) {
-	if solve.Missing(v.X) || solve.Missing(v.Y) || solve.Missing(v.Z) {
+	if solve.MissingVec(v) {
 		r.buf = append(r.buf, "null"...)
 		return
 	}
@@ -346,16 +377,4 @@ func (r *Results) vec(v r3.Vec) {
 	r.buf = append(r.buf, ", "...)
 	r.number(v.Z)
 	r.buf = append(r.buf, ']')
-}
-
-// appendNumber appends the shortest form that reads back, or missing where v is no number.
-func appendNumber(b []byte, v float64, missing string) []byte {
-	if math.IsNaN(v) || math.IsInf(v, 0) {
-		return append(b, missing...)
-	}
-	format := byte('f')
-	if a := math.Abs(v); a != 0 && (a < 1e-6 || a >= 1e21) {
-		format = 'e'
-	}
-	return strconv.AppendFloat(b, v, format, -1, 64)
 }

@@ -17,22 +17,21 @@ type scale struct {
 // ladders list the units of a quantity from large to small; the first in which the value is at least 1 is taken, the last
 // for anything smaller.
 var ladders = map[string][]scale{
-	"B":  {{"mT", 1e-3}, {"µT", 1e-6}, {"nT", 1e-9}},
-	"H":  {{"kA/m", 1e3}, {"A/m", 1}, {"mA/m", 1e-3}},
-	"Vm": {{"A", 1}, {"mA", 1e-3}, {"µA", 1e-6}},
-	"E":  {{"MV/m", 1e6}, {"kV/m", 1e3}, {"V/m", 1}, {"mV/m", 1e-3}},
-	"D":  {{"mC/m²", 1e-3}, {"µC/m²", 1e-6}, {"nC/m²", 1e-9}},
-	"V":  {{"kV", 1e3}, {"V", 1}, {"mV", 1e-3}, {"µV", 1e-6}},
-	"q":  {{"µC", 1e-6}, {"nC", 1e-9}, {"pC", 1e-12}, {"fC", 1e-15}},
-	"g":  {{"A·m", 1}, {"mA·m", 1e-3}, {"µA·m", 1e-6}},
-	"M":  {{"kA/m", 1e3}, {"A/m", 1}},
-	"P":  {{"mC/m²", 1e-3}, {"µC/m²", 1e-6}, {"nC/m²", 1e-9}},
+	"B":  {{"mT", 1e-3}, {"µT", 1e-6}, {"nT", 1e-9}, {"pT", 1e-12}},
+	"H":  {{"kA/m", 1e3}, {"A/m", 1}, {"mA/m", 1e-3}, {"µA/m", 1e-6}},
+	"Vm": {{"kA", 1e3}, {"A", 1}, {"mA", 1e-3}, {"µA", 1e-6}, {"nA", 1e-9}},
+	"E":  {{"MV/m", 1e6}, {"kV/m", 1e3}, {"V/m", 1}, {"mV/m", 1e-3}, {"µV/m", 1e-6}},
+	"D":  {{"C/m²", 1}, {"mC/m²", 1e-3}, {"µC/m²", 1e-6}, {"nC/m²", 1e-9}, {"pC/m²", 1e-12}, {"fC/m²", 1e-15}},
+	"V":  {{"kV", 1e3}, {"V", 1}, {"mV", 1e-3}, {"µV", 1e-6}, {"nV", 1e-9}},
+	"q":  {{"C", 1}, {"mC", 1e-3}, {"µC", 1e-6}, {"nC", 1e-9}, {"pC", 1e-12}, {"fC", 1e-15}},
+	"g":  {{"kA·m", 1e3}, {"A·m", 1}, {"mA·m", 1e-3}, {"µA·m", 1e-6}},
+	"Wb": {{"Wb", 1}, {"mWb", 1e-3}, {"µWb", 1e-6}, {"nWb", 1e-9}},
+	"M":  {{"kA/m", 1e3}, {"A/m", 1}, {"mA/m", 1e-3}},
+	"P":  {{"C/m²", 1}, {"mC/m²", 1e-3}, {"µC/m²", 1e-6}, {"nC/m²", 1e-9}},
 	"dM": {{"MA/m²", 1e6}, {"kA/m²", 1e3}, {"A/m²", 1}},
-	"dP": {{"C/m³", 1}, {"mC/m³", 1e-3}, {"µC/m³", 1e-6}},
-	"m":  {{"A·m²", 1}, {"mA·m²", 1e-3}, {"µA·m²", 1e-6}},
-	"p":  {{"nC·m", 1e-9}, {"pC·m", 1e-12}, {"fC·m", 1e-15}},
-	"m²": {{"m²", 1}, {"cm²", 1e-4}, {"mm²", 1e-6}, {"µm²", 1e-12}},
-	"m³": {{"m³", 1}, {"cm³", 1e-6}, {"mm³", 1e-9}, {"µm³", 1e-18}},
+	"dP": {{"kC/m³", 1e3}, {"C/m³", 1}, {"mC/m³", 1e-3}, {"µC/m³", 1e-6}},
+	"m":  {{"A·m²", 1}, {"mA·m²", 1e-3}, {"µA·m²", 1e-6}, {"nA·m²", 1e-9}},
+	"p":  {{"C·m", 1}, {"mC·m", 1e-3}, {"µC·m", 1e-6}, {"nC·m", 1e-9}, {"pC·m", 1e-12}, {"fC·m", 1e-15}, {"aC·m", 1e-18}},
 }
 
 // pick returns the unit of a quantity in which a value of the size reads well.
@@ -60,12 +59,20 @@ func places(size float64, n int) int {
 // significant digits of the report: what inputs of three or four digits deserve, and one more to see rounding.
 const significant = 5
 
-// fixed prints v with the decimals of a value of the given size; nothing of a size too small for those is shown but 0.
+// fixed prints v with the decimals of a value of the given size; of what is too small for those, only 0. Sizes that need
+// many zeros are printed with an exponent.
 func fixed(v, size float64) string {
-	if math.IsNaN(v) {
+	if math.IsNaN(v) || math.IsInf(v, 0) {
 		return "none"
 	}
-	text := strconv.FormatFloat(v, 'f', places(size, significant), 64)
+	var text string
+	if size != 0 && (size < 1e-3 || size >= 1e7) {
+		if math.Abs(v) < size*math.Pow(10, -significant)/2 {
+			return "0"
+		}
+		return strconv.FormatFloat(v, 'e', significant-1, 64)
+	}
+	text = strconv.FormatFloat(v, 'f', places(size, significant), 64)
 	if strings.Trim(text, "-0.") == "" {
 		return "0"
 	}
@@ -79,7 +86,7 @@ func plain(v float64) string { return strconv.FormatFloat(v, 'g', 7, 64) }
 func value(quantity string, v float64) string {
 	s := pick(quantity, math.Abs(v))
 	switch {
-	case math.IsNaN(v):
+	case math.IsNaN(v) || math.IsInf(v, 0):
 		return "none"
 	case v == 0:
 		return "0"
@@ -87,11 +94,14 @@ func value(quantity string, v float64) string {
 	return fixed(v/s.factor, math.Abs(v)/s.factor) + " " + s.unit
 }
 
-// vector prints three components in a common unit, and the unit.
+// vector prints three components in a common unit, the norm, and the unit; a vector that does not exist has no unit.
 func vector(quantity string, v r3.Vec) (x, y, z, norm, unit string) {
 	n := r3.Norm(v)
-	if math.IsNaN(n) {
-		return "none", "none", "none", "none", pick(quantity, 0).unit
+	switch {
+	case math.IsNaN(n) || math.IsInf(n, 0):
+		return "none", "none", "none", "none", ""
+	case n == 0:
+		return "0", "0", "0", "0", ""
 	}
 	s := pick(quantity, n)
 	size := n / s.factor

@@ -14,8 +14,8 @@ const (
 	MaxBytes  = 64 << 20 // size of a scene file or an input file
 	MaxDepth  = 32       // nesting of objects and lists
 	MaxPoints = 10_000_000
-	MaxBodies = 1_000_000 // parts, copies counted
-	maxKeys   = 64        // keys of one object; no object of the format has so many
+	MaxBodies = 100_000 // parts, copies counted: about 1 GB once they are placed
+	maxKeys   = 64      // keys of one object; no object of the format has so many
 )
 
 // A parser makes a document of a JSON text in one pass.

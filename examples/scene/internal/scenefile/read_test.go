@@ -5,9 +5,9 @@ import (
 	"fmt"
 	"os"
 	"path/filepath"
+	"runtime"
 	"strings"
 	"testing"
-	"time"
 )
 
 // write writes a file into a folder of the test and returns its name.
@@ -102,40 +102,73 @@ func polygonScene(size int) []byte {
 	return b.Bytes()
 }
 
-// TestSpeed shows that no input of permitted size takes more than a moment. A
-// quiet machine reads the polygon in about 0.6 s; the limit leaves room for a
-// loaded one, and what grows as the square of the size would take hours.
-func TestSpeed(t *testing.T) {
-	if testing.Short() {
-		t.Skip("reads 50 MB")
-	}
-	const limit = 10 * time.Second
-	within := func(name string, data []byte, good bool) {
-		start := time.Now()
-		_, err := Parse("scene.json", data, nil)
-		took := time.Since(start)
-		t.Logf("%s: %d bytes in %v", name, len(data), took)
-		if (err == nil) != good {
-			t.Errorf("%s: %.200v, want success: %t", name, err, good)
+// hostile are inputs of a size, made to cost more than their length: what is refused must not be kept first.
+var hostile = []struct {
+	name string
+	data func(size int) []byte
+	good bool
+}{
+	{"polygon", polygonScene, true},
+	{"open brackets", filled("["), false},
+	{"open objects", filled(`{"a":`), false},
+	{"blanks", filled(" "), false},
+	{"line ends", filled("\r"), false},
+	{"commas", filled(","), false},
+	{"empty lists", func(n int) []byte { return enclosed("[0", ",[]", "]", n) }, false},
+	{"full objects", func(n int) []byte { return enclosed("[0", ","+fullObject(), "]", n) }, false},
+	{"long text", func(n int) []byte { return enclosed(`{"title":"`, "é", `"}`, n) }, false},
+	{"long key", func(n int) []byte { return enclosed(`{"`, "k", `":1}`, n) }, false},
+	{"long number", func(n int) []byte { return enclosed(`{"version":1`, "0", "}", n) }, false},
+	{"wrong words", func(n int) []byte { return []byte(withTop(`"length":"` + strings.Repeat("m", n) + `"`)) }, false},
+}
+
+func filled(pattern string) func(size int) []byte {
+	return func(size int) []byte { return enclosed("", pattern, "", size) }
+}
+
+// enclosed returns about size bytes: a pattern repeated between a head and a tail.
+func enclosed(head, pattern, tail string, size int) []byte {
+	return []byte(head + strings.Repeat(pattern, size/len(pattern)) + tail)
+}
+
+// TestCost holds what an input of any kind costs in memory to a multiple of its length, at one length and at eight times
+// that: what grew as the square would leave the bound. BenchmarkHostile shows the time.
+func TestCost(t *testing.T) {
+	for _, c := range hostile {
+		for _, size := range []int{100_000, 800_000} {
+			data := c.data(size)
+			var before, after runtime.MemStats
+			runtime.ReadMemStats(&before)
+			s, err := Parse("scene.json", data, nil)
+			runtime.ReadMemStats(&after)
+			if (err == nil) != c.good {
+				t.Errorf("%s: %.200v, want success: %t", c.name, err, c.good)
+			}
+			// 12 bytes of node for 2 bytes of text at worst, doubled as the list of nodes grows, and the values themselves;
+			// 1 MB for the tables of the format.
+			if cost := after.TotalAlloc - before.TotalAlloc; cost > uint64(40*len(data)+1_000_000) {
+				t.Errorf("%s of %d bytes: %d bytes allocated, want at most 40 a byte", c.name, len(data), cost)
+			}
+			if s != nil && len(s.doc.nodes) > len(data)/2+1 {
+				t.Errorf("%s of %d bytes: %d nodes, want at most one for two bytes", c.name, len(data), len(s.doc.nodes))
+			}
 		}
-		if took > limit {
-			t.Errorf("%s took %v, want at most %v", name, took, limit)
-		}
 	}
-	const some = MaxBytes / 4 // enough to show what grows faster than the file
-	fill := func(pattern string) []byte { return bytes.Repeat([]byte(pattern), some/len(pattern)) }
-	within("polygon", polygonScene(50_000_000), true)
-	within("open brackets", fill("["), false)
-	within("open objects", fill(`{"a":`), false)
-	within("blanks", fill(" "), false)
-	within("line ends", fill("\r"), false)
-	within("commas", fill(","), false)
-	within("empty lists", append([]byte("[0"), append(bytes.Repeat([]byte(",[]"), some/3), ']')...), false)
-	within("full objects", append([]byte("[0"), append(bytes.Repeat([]byte(","+fullObject()), some/(len(fullObject())+1)), ']')...), false)
-	within("long text", append([]byte(`{"title":"`), append(bytes.Repeat([]byte("é"), some/2), `"}`...)...), false)
-	within("long key", append([]byte(`{"`), append(bytes.Repeat([]byte("k"), some), `":1}`...)...), false)
-	within("long number", append([]byte(`{"version":1`), append(bytes.Repeat([]byte("0"), some), '}')...), false)
-	within("wrong words", []byte(withTop(`"length":"`+strings.Repeat("m", some)+`"`)), false)
+}
+
+func BenchmarkHostile(b *testing.B) {
+	for _, c := range hostile {
+		b.Run(strings.ReplaceAll(c.name, " ", "_"), func(b *testing.B) {
+			data := c.data(MaxBytes / 4)
+			b.SetBytes(int64(len(data)))
+			b.ReportAllocs()
+			for b.Loop() {
+				if _, err := Parse("scene.json", data, nil); (err == nil) != c.good {
+					b.Fatal(err)
+				}
+			}
+		})
+	}
 }
 
 // fullObject returns an object with as many short keys as are allowed.

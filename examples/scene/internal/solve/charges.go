@@ -19,7 +19,7 @@ type PartCharge struct {
 	Max     float64
 	Total   float64
 	Moment  r3.Vec  // scene frame; about the part's centre if not neutral
-	Scale   float64 // sum of the magnitudes of the charges
+	Scale   float64 // sum of the magnitudes of the charges: what cancels
 	Checked []bound.Identity
 }
 
@@ -54,11 +54,11 @@ func (s *Setup) Charges() []PartCharge {
 
 // bodyCharge converts the bound charge of a body.
 func (s *Setup) bodyCharge(c *bound.Charge) PartCharge {
-	l, l2, l3 := s.Unit, s.Unit*s.Unit, s.Unit*s.Unit*s.Unit
-	out := PartCharge{Solid: true, Total: c.Total() * l2, Moment: r3.Scale(l3, c.Moment), Checked: c.Identities}
+	n, n2, n3 := s.perMetre, s.perMetre*s.perMetre, s.perMetre*s.perMetre*s.perMetre
+	out := PartCharge{Solid: true, Total: c.Total() / n2, Moment: over(c.Moment, n3), Checked: c.Identities}
 	for i := range c.Layers {
 		y := &c.Layers[i]
-		f := FaceCharge{Face: y.Face.Name, Area: y.Area * l2, Charge: y.Charge * l2, Min: y.Min, Max: y.Max}
+		f := FaceCharge{Face: y.Face.Name, Area: y.Area / n2, Charge: y.Charge / n2, Min: y.Min, Max: y.Max}
 		if y.Plane {
 			n := r3.Add(y.Normal, r3.Vec{}) // no negative zeros
 			f.Normal = &n
@@ -68,34 +68,38 @@ func (s *Setup) bodyCharge(c *bound.Charge) PartCharge {
 	}
 	out.Min, out.Max = math.Inf(1), math.Inf(-1)
 	for _, v := range c.Volumes {
-		out.Volume += v.Size * l3
-		out.Inside += v.Charge * l2
-		out.Min, out.Max = min(out.Min, v.Min/l), max(out.Max, v.Max/l)
+		out.Volume += v.Size / n3
+		out.Inside += v.Charge / n2
+		out.Min, out.Max = min(out.Min, v.Min*n), max(out.Max, v.Max*n)
 	}
 	out.Scale += math.Abs(out.Inside)
+	if len(c.Identities) > 0 { // the first says that the total is zero; one face may carry both signs
+		out.Scale = max(out.Scale, c.Identities[0].Scale/n2)
+	}
 	return out
 }
 
 // emptyBody is a body that carries nothing.
 func (s *Setup) emptyBody(b geom.Body) PartCharge {
-	l2 := s.Unit * s.Unit
-	out := PartCharge{Solid: true, Volume: b.Volume() * l2 * s.Unit}
+	n2 := s.perMetre * s.perMetre
+	out := PartCharge{Solid: true, Volume: b.Volume() / (n2 * s.perMetre)}
 	for _, f := range b.Faces() {
-		out.Faces = append(out.Faces, FaceCharge{Face: f.Name, Area: f.Surface.Area() * l2})
+		out.Faces = append(out.Faces, FaceCharge{Face: f.Name, Area: f.Surface.Area() / n2})
 	}
 	return out
 }
 
 // sheetCharge integrates the density of a sheet; the moment is about the part's centre.
 func (s *Setup) sheetCharge(p *Part) PartCharge {
-	l2, l3 := s.Unit*s.Unit, s.Unit*s.Unit*s.Unit
+	n2, n3 := s.perMetre*s.perMetre, s.perMetre*s.perMetre*s.perMetre
 	sheet := p.Sheet.(geom.PlacedSheet).Sheet
-	f := FaceCharge{Face: "sheet", Area: sheet.Area() * l2, Min: math.Inf(1), Max: math.Inf(-1)}
+	f := FaceCharge{Face: "sheet", Area: sheet.Area() / n2, Min: math.Inf(1), Max: math.Inf(-1)}
 	density := func(x r3.Vec) float64 { return p.Density + r3.Dot(p.Gradient, x) }
-	var q float64
+	var q, size, arm float64
 	var m, n r3.Vec
 	sheet.Nodes(4, func(x, normal r3.Vec, w float64) {
 		q += w * density(x)
+		size, arm = size+math.Abs(w*density(x)), arm+math.Abs(w*density(x))*r3.Norm(x)
 		m = r3.Add(m, r3.Scale(w*density(x), x))
 		n = normal
 	})
@@ -108,7 +112,17 @@ func (s *Setup) sheetCharge(p *Part) PartCharge {
 		see(r3.Vec{})
 	}
 	n = r3.Add(p.Pose.VectorToOuter(n), r3.Vec{})
-	f.Normal, f.Charge = &n, q*l2
-	return PartCharge{Faces: []FaceCharge{f}, Total: f.Charge, Scale: math.Abs(f.Charge),
-		Moment: p.Pose.VectorToOuter(r3.Scale(l3, m))}
+	f.Normal, f.Charge = &n, clean(q, size)/n2
+	m = r3.Vec{X: clean(m.X, arm), Y: clean(m.Y, arm), Z: clean(m.Z, arm)}
+	return PartCharge{Faces: []FaceCharge{f}, Total: f.Charge, Scale: size / n2, Moment: over(p.Pose.VectorToOuter(m), n3)}
 }
+
+// clean returns exactly zero for what only rounding has left of a sum whose terms have the magnitude size.
+func clean(v, size float64) float64 {
+	if math.Abs(v) <= 64*0x1p-53*size {
+		return 0
+	}
+	return v
+}
+
+func over(v r3.Vec, n float64) r3.Vec { return r3.Vec{X: v.X / n, Y: v.Y / n, Z: v.Z / n} }

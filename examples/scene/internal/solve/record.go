@@ -1,6 +1,7 @@
 package solve
 
 import (
+	"context"
 	"math"
 	"runtime"
 	"sync"
@@ -9,6 +10,7 @@ import (
 	"example.com/boundpole/examples/scene/internal/scenefile"
 	"example.com/boundpole/field"
 	"example.com/boundpole/field/bound"
+	"example.com/boundpole/geom"
 	"example.com/boundpole/magnet"
 	"gonum.org/v1/gonum/spatial/r3"
 )
@@ -20,6 +22,7 @@ type Record struct {
 	Electric charge.Reading
 	Magnetic magnet.Reading
 	Status   field.Status
+	Missed   []string       // names of the values that did not reach the wanted accuracy
 	ByPart   []Contribution // if asked for
 }
 
@@ -27,29 +30,35 @@ type Record struct {
 type Contribution struct {
 	Part int
 	V    float64
-	E    r3.Vec
+	E, D r3.Vec
 	Vm   float64
-	H    r3.Vec
+	H, B r3.Vec
 }
 
 // chunkSize is how many points are evaluated at a time; the result does not depend on it.
-const chunkSize = 2048
+const chunkSize = 1024
 
-// Records calls visit for every point of a point request, in order. Points are evaluated in parallel, chunk by chunk.
-func (s *Setup) Records(r *scenefile.Request, visit func(i int, rec *Record) error) error {
-	n := r.Count()
-	all := pointsOf(r)
-	batch := chunkSize * runtime.GOMAXPROCS(0)
-	for lo := 0; lo < n; lo += batch {
-		hi := min(lo+batch, n)
-		recs := make([]Record, hi-lo)
+// Records calls visit for every point of a point request, in order. Points are evaluated in parallel, chunk by chunk; when
+// ctx is done it stops between chunks and returns its error.
+func (s *Setup) Records(ctx context.Context, q *scenefile.Request, visit func(i int, rec *Record) error) error {
+	n := q.Count()
+	point := pointOf(q)
+	side := SideOf(q.Side)
+	stride := chunkSize * runtime.GOMAXPROCS(0)
+	recs := make([]Record, min(stride, n))
+	for lo := 0; lo < n; lo += stride {
+		if ctx.Err() != nil {
+			return ctx.Err()
+		}
+		hi := min(lo+stride, n)
+		clear(recs)
 		var wait sync.WaitGroup
 		for a := lo; a < hi; a += chunkSize {
 			b := min(a+chunkSize, hi)
-			wait.Go(func() { s.fill(recs[a-lo:b-lo], all.Slice(a, b), sideOf(r.Side), r.ByPart) })
+			wait.Go(func() { s.fill(recs[a-lo:b-lo], batch(point, a, b), side, q.ByPart) })
 		}
 		wait.Wait()
-		for i := range recs {
+		for i := range hi - lo {
 			if err := visit(lo+i, &recs[i]); err != nil {
 				return err
 			}
@@ -58,7 +67,8 @@ func (s *Setup) Records(r *scenefile.Request, visit func(i int, rec *Record) err
 	return nil
 }
 
-func sideOf(s scenefile.Side) field.Side {
+// SideOf returns the side that a request names.
+func SideOf(s scenefile.Side) field.Side {
 	switch s {
 	case "inside":
 		return field.Inside
@@ -66,20 +76,6 @@ func sideOf(s scenefile.Side) field.Side {
 		return field.Outside
 	}
 	return field.Mean
-}
-
-// pointsOf returns the points of a request, in the unit of the file.
-func pointsOf(r *scenefile.Request) *field.Points {
-	switch r.Kind {
-	case "line":
-		return field.Line(r.Line.From, r.Line.To, r.Line.Count)
-	case "plane":
-		return field.Plane(r.Plane.Corner, r.Plane.Edge1, r.Plane.Edge2, r.Plane.Counts[0], r.Plane.Counts[1])
-	case "grid":
-		c := r.Grid.Counts
-		return field.Grid(r3.Box{Min: r.Grid.Min, Max: r.Grid.Max}, c[0], c[1], c[2])
-	}
-	return field.PointsOf(r.Points...)
 }
 
 // fill evaluates one chunk.
@@ -96,20 +92,23 @@ func (s *Setup) fill(recs []Record, at *field.Points, side field.Side, byPart bo
 		}
 	}
 	for i := range recs {
-		p := at.At(i)
+		rec := &recs[i]
 		var way r3.Vec
 		if ways != nil {
 			way = ways[i]
 		}
-		_, inside := s.places.ContentTowards(p, way)
-		recs[i].X = r3.Scale(s.Unit, at.Vec(i))
-		recs[i].Inside = inside
-		recs[i].Status = max(recs[i].Electric.Status, recs[i].Magnetic.Status)
+		rec.X = s.metres(at.Vec(i))
+		rec.Inside = s.inside(at.At(i), side, way)
+		rec.Status = max(rec.Electric.Status, rec.Magnetic.Status)
+		s.judge(rec, at.Vec(i), side)
 		if byPart {
-			recs[i].ByPart = s.contributions(at.Slice(i, i+1), side, ways, i)
+			rec.ByPart = s.contributions(at.Slice(i, i+1), side, ways, i)
 		}
 	}
 }
+
+// metres converts a vector from the unit of the file; division by an exact number rounds once.
+func (s *Setup) metres(v r3.Vec) r3.Vec { return over(v, s.perMetre) }
 
 // ways returns, where a side is wanted, the direction of that side at every point, decided by the first part in file order
 // that has a face there, whatever its kind; nil for the mean.
@@ -124,12 +123,26 @@ func (s *Setup) ways(at *field.Points, side field.Side) []r3.Vec {
 	return ways
 }
 
-// contributions returns the field of every part alone at one point.
+// inside returns the first part in file order that contains a point: on a face the part for side Inside, else none.
+func (s *Setup) inside(p field.Point, side field.Side, way r3.Vec) int {
+	_, first := s.places.ContentTowards(p, way)
+	if side != field.Outside || first < 0 {
+		return first
+	}
+	for i := first; i < len(s.Parts); i++ { // what lies outside one face may lie inside another that touches it
+		if b := s.Parts[i].Body; b != nil && b.Locate(p.X, p.Slack).Region == geom.Inside {
+			return i
+		}
+	}
+	return -1
+}
+
+// contributions returns the field of every part that makes one, alone, at one point.
 func (s *Setup) contributions(at *field.Points, side field.Side, ways []r3.Vec, i int) []Contribution {
 	if ways != nil {
 		ways = ways[i : i+1]
 	}
-	var out []Contribution
+	out := make([]Contribution, 0, len(s.Parts))
 	for k := range s.Parts {
 		p := &s.Parts[k]
 		c := Contribution{Part: k}
@@ -137,15 +150,20 @@ func (s *Setup) contributions(at *field.Points, side field.Side, ways []r3.Vec, 
 		switch p.Kind {
 		case Polarized, Charged:
 			v := charge.Model{Parts: alone, Unit: s.Unit}.ReadingsTowards(at, side, ways)[0]
-			c.V, c.E = v.V, v.E
+			c.V, c.E, c.D = v.V, v.E, v.D
 		case Magnetized:
 			v := magnet.Model{Parts: alone, Unit: s.Unit}.ReadingsTowards(at, side, ways)[0]
-			c.Vm, c.H = v.Vm, v.H
+			c.Vm, c.H, c.B = v.Vm, v.H, v.B
+		default:
+			continue
 		}
 		out = append(out, c)
 	}
 	return out
 }
 
-// Missing reports whether a value of a record does not exist.
+// Missing reports whether a value does not exist.
 func Missing(v float64) bool { return math.IsNaN(v) || math.IsInf(v, 0) }
+
+// MissingVec reports whether a vector does not exist: it is whole or not at all.
+func MissingVec(v r3.Vec) bool { return Missing(v.X) || Missing(v.Y) || Missing(v.Z) }
