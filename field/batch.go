@@ -183,7 +183,13 @@ func (v *Values) set(i int, r *Value) {
 	}
 }
 
-// slice returns the arrays cut to lo <= i < hi; they share memory with v.
+// Slice returns the arrays cut to lo <= i < hi; they share memory with v.
+func (v *Values) Slice(lo, hi int) *Values {
+	r := v.slice(lo, hi)
+	return &r
+}
+
+// slice is Slice by value.
 func (v *Values) slice(lo, hi int) Values {
 	cut := func(a []float64) []float64 {
 		if a == nil {

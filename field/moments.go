@@ -49,10 +49,10 @@ func (e *Moments) AddGraded(y r3.Vec, q, v float64) {
 	e.charge += math.Abs(q) + math.Abs(v)/3
 	var row [maxOrder + 2]complex128
 	e.each(y, e.order, row[:], func(n int, r []complex128) {
-		w := complex(q+v/float64(n+3), 0)
+		w := q + v/float64(n+3)
 		m := e.m[n*(n+1)/2:]
 		for k := range n + 1 {
-			m[k] += w * complex(real(r[k]), -imag(r[k]))
+			m[k] += complex(w*real(r[k]), -w*imag(r[k]))
 		}
 	})
 }
@@ -101,11 +101,13 @@ func (e *Moments) each(y r3.Vec, order int, row []complex128, f func(n int, r []
 		case 0:
 			cur[0] = 1
 		default:
-			cur[n] = -w * last[n-1] / complex(float64(2*n), 0)
-			cur[n-1] = complex(d.Z, 0) * last[n-1]
+			cur[n] = times(-0.5/float64(n), w*last[n-1])
+			cur[n-1] = times(d.Z, last[n-1])
+			z := float64(2*n-1) * d.Z
 			for k := 0; k < n-1; k++ {
-				num := complex((float64(2*n-1))*d.Z, 0)*last[k] - complex(rr, 0)*before[k]
-				cur[k] = num / complex(float64((n+k)*(n-k)), 0)
+				inv := reciprocal[n+k] * reciprocal[n-k]
+				a, b := z*inv, rr*inv
+				cur[k] = complex(a*real(last[k])-b*real(before[k]), a*imag(last[k])-b*imag(before[k]))
 			}
 		}
 		f(n, cur[:n+1])
@@ -113,6 +115,16 @@ func (e *Moments) each(y r3.Vec, order int, row []complex128, f func(n int, r []
 		copy(last, cur[:n+1])
 	}
 }
+
+// reciprocal holds 1/n.
+var reciprocal = func() (r [2*maxOrder + 1]float64) {
+	for n := 1; n < len(r); n++ {
+		r[n] = 1 / float64(n)
+	}
+	return r
+}()
+
+func times(a float64, c complex128) complex128 { return complex(a*real(c), a*imag(c)) }
 
 // Neutral sets the total charge to exactly zero, as it is for a polarized body.
 func (e *Moments) Neutral() { e.m[0] = 0 }

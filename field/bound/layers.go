@@ -77,6 +77,9 @@ func (c *Charge) layer(f, outer geom.Face, sums *identitySums) Layer {
 	l.Min, l.Max = c.extremes(f)
 	if n, ok := planeNormal(f); ok {
 		l.Plane = true
+		if l.Min == l.Max {
+			l.Charge = l.Min * l.Area
+		}
 		l.Normal = c.pose.VectorToOuter(n)
 	}
 	return l

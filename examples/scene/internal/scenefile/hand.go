@@ -165,12 +165,10 @@ func (d *decoder) partNames(name string) string {
 	return suggest(name, names)
 }
 
-// checkKind refuses an electric quantity in a scene without electric parts and
-// applied field, and likewise for magnetic ones.
+// checkKind refuses an electric quantity in a scene without electric parts, and
+// likewise for magnetic ones.
 func (d *decoder) checkKind(q Quantity, m Measure) *fault {
-	applied := d.scene.Applied
-	electric := applied != nil && applied.E != nil
-	magnetic := applied != nil && applied.B != nil
+	var electric, magnetic bool
 	for i := range d.scene.Parts {
 		p := &d.scene.Parts[i]
 		electric = electric || p.Polarized != nil || p.Charged != nil

@@ -71,10 +71,10 @@ func Build(scene *scenefile.Scene) (*Setup, error) {
 	s.electric.Unit, s.magnetic.Unit = s.Unit, s.Unit
 	if a := scene.Applied; a != nil {
 		if a.E != nil {
-			s.electric.Applied, s.Electric = *a.E, true
+			s.electric.Applied = *a.E
 		}
 		if a.B != nil {
-			s.magnetic.Applied, s.Magnetic = *a.B, true
+			s.magnetic.Applied = *a.B
 		}
 	}
 	for i := range s.Parts {

@@ -168,11 +168,16 @@ func TestSides(t *testing.T) {
 
 // TestApplied checks that applied fields add to field and potential, which is zero at the origin.
 func TestApplied(t *testing.T) {
-	s := built(t, `{"length": "mm", "parts": [{"name": "a", "shape": "sphere", "radius": 1, "magnetized": {"uniform": [0,0,3]}}],
+	s := built(t, `{"length": "mm", "parts": [{"name": "a", "shape": "sphere", "radius": 1, "magnetized": {"uniform": [0,0,3]}},
+		{"name": "b", "shape": "disc", "radius": 1, "centre": [50,0,0], "charged": {"density": 0}}],
 		"applied": {"E": [2,0,0], "B": [0,0.5,0]}, "wanted": [{"points": [[3,4,0]]}]}`)
 	r := records(t, s, 0)[0]
 	if !s.Electric || !s.Magnetic {
 		t.Fatalf("kinds: %t %t, want both", s.Electric, s.Magnetic)
+	}
+	if alone := built(t, `{"parts": [{"name": "a", "shape": "sphere", "radius": 1, "magnetized": {"uniform": [0,0,3]}}],
+		"applied": {"E": [2,0,0]}, "wanted": [{"points": [[3,4,0]]}]}`); alone.Electric {
+		t.Error("a scene without electric parts has electric records")
 	}
 	close(t, "E", r.Electric.E, r3.Vec{X: 2}, 0)
 	close(t, "D", r.Electric.D, r3.Vec{X: 2 * epsilon0}, 1e-27)
