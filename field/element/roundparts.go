@@ -118,10 +118,13 @@ func (r *rim) sInf() float64 {
 }
 
 // eInf returns the integral of the ring's field up to infinite height: half the field 4 pi a/rho of the endless wall
-// outside it.
+// outside it, and the mean of both sides on it.
 func (r *rim) eInf() float64 {
-	if r.d >= 0 {
+	switch {
+	case r.d > 0:
 		return 0
+	case r.d == 0:
+		return math.Pi * r.a / r.rho
 	}
 	return 2 * math.Pi * r.a / r.rho
 }
