@@ -41,12 +41,8 @@ func (f *facets) near(p field.Point, side field.Side, want field.Want, w facetRo
 		x:   pair.Vec{X: p.X.X.Scale(s), Y: p.X.Y.Scale(s), Z: p.X.Z.Scale(s)},
 		tol: f.tolerance(p),
 	}
-	for i := range f.verts {
-		v := &f.verts[i]
-		a := r3.Vec{X: offset(v.X, sum.x.X), Y: offset(v.Y, sum.x.Y), Z: offset(v.Z, sum.x.Z)}
-		w.a[i], w.r[i] = a, math.Sqrt(a.X*a.X+a.Y*a.Y+a.Z*a.Z)
-	}
-	together, ok := f.bundled(&w, &sum)
+	f.offsets(&w, &sum.x)
+	together, ok := f.bundled.value(&w, &sum)
 	if ok && want == field.WantG {
 		return field.Value{G: r3.Scale(0.25/math.Pi, together)}
 	}
@@ -79,6 +75,23 @@ func (f *facets) finishGradient(v *field.Value, w *facetRoom, sum *facetSums, si
 	t, size := f.gradient(w, sum, side)
 	v.Grad = t.symmetric(k)
 	v.ErrGrad = k * 0x1p-53 * (8*size + 4*sum.shaky*size/(sum.size+1))
+}
+
+// offsets fills w.a with vertex - x and w.r with its norm.
+func (f *facets) offsets(w *facetRoom, x *pair.Vec) {
+	if f.exact && x.X.Lo == 0 && x.Y.Lo == 0 && x.Z.Lo == 0 { // the same bits: one difference, rounded once
+		for i := range f.verts {
+			v := &f.verts[i]
+			ax, ay, az := v.X.Hi-x.X.Hi, v.Y.Hi-x.Y.Hi, v.Z.Hi-x.Z.Hi
+			w.a[i], w.r[i] = r3.Vec{X: ax, Y: ay, Z: az}, math.Sqrt(ax*ax+ay*ay+az*az)
+		}
+		return
+	}
+	for i := range f.verts {
+		v := &f.verts[i]
+		ax, ay, az := offset(v.X, x.X), offset(v.Y, x.Y), offset(v.Z, x.Z)
+		w.a[i], w.r[i] = r3.Vec{X: ax, Y: ay, Z: az}, math.Sqrt(ax*ax+ay*ay+az*az)
+	}
 }
 
 // offset returns v - x rounded once.
@@ -231,7 +244,13 @@ func (f *facets) away(q *facet, h float64, sum *facetSums) bool {
 
 // fanAngle returns the solid angle as one arctangent of the product over the triangles of the fan [VanOosterom1983].
 func (q *facet) fanAngle(h float64, w *facetRoom) float64 {
-	re, im, turns := q.fanFactor(h, w, 1, 0, 0)
+	re, im, turns := 1.0, 0.0, 0.0
+	for k, t := range q.fan {
+		a, b, c := w.a[t[0]], w.a[t[1]], w.a[t[2]]
+		ra, rb, rc := w.r[t[0]], w.r[t[1]], w.r[t[2]]
+		den := (ra*rb+r3.Dot(a, b))*rc + r3.Dot(a, c)*rb + r3.Dot(b, c)*ra
+		re, im, turns = turn(re, im, den, h*q.twice[k], turns)
+	}
 	return 2 * (logatan.Atan2(im, re) + turns)
 }
 

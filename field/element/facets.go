@@ -39,7 +39,8 @@ type facets struct {
 	linear bool    // some gamma or rho is not zero
 	dense  float64 // largest |sigma| on a face
 
-	edgeBundles, faceBundles []bundle
+	bundled bundles
+	exact   bool // no vertex has a low part
 }
 
 // facetEdge is an edge and what it contributes whatever the position of x.
@@ -95,7 +96,9 @@ func newFacets(verts []pair.Vec, specs []facetSpec, rho float64) *facets {
 	f.rho *= f.unit
 	f.centre = r3.Scale(0.5*s, r3.Add(f.bounds.Min, f.bounds.Max))
 	c := pair.VecOf(f.centre)
+	f.exact = true
 	for _, v := range verts {
+		f.exact = f.exact && v.X.Lo == 0 && v.Y.Lo == 0 && v.Z.Lo == 0
 		w := pair.Vec{X: v.X.Scale(s), Y: v.Y.Scale(s), Z: v.Z.Scale(s)}
 		f.verts = append(f.verts, w)
 		f.size = max(f.size, r3.Norm(w.Sub(c).Value()))

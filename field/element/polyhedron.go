@@ -53,7 +53,7 @@ func NewPolyhedron(body geom.Polyhedron, p field.Affine) *Polyhedron {
 		s.far.reach, s.far.order = 2.5, 40
 	case body.Volume() < 0.1*a*a*a: // thin: what is left of opposite faces is small, so every term needs all its digits
 		s.far.reach, s.far.order = 2.6, 40
-		s.flat.edgeBundles, s.flat.faceBundles = nil, nil
+		s.flat.bundled = bundles{}
 	}
 	return s
 }
