@@ -76,8 +76,8 @@ func (f Face) Sign() float64 {
 	return 1
 }
 
-// Surface is a piece of surface with a normal of its own: Polygon, Disc, Annulus, Wall, SphereSurface,
-// EllipsoidSurface, or a caller's.
+// Surface is a piece of surface with a normal of its own: Polygon, Disc, Annulus, Sector, Wall, WallSector, ConeWall,
+// SphereSurface, EllipsoidSurface, TorusSurface, Patch, or a caller's.
 type Surface interface {
 	// Area returns the area. Units: length^2.
 	Area() float64

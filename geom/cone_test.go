@@ -86,7 +86,7 @@ func TestLocateConeSharp(t *testing.T) {
 		{"beyond the rim of the lid", lid, r3.Vec{X: 1 + 1e-12, Z: -0.5e-3}, outside()},
 		{"beyond the rim along the wall", lid, r3.Vec{X: 1 + 1e-12, Z: -0.5e-3 - 1e-15}, outside()},
 		{"beside an end", Cone{Bottom: 1, Top: 0.5, Height: 1}, r3.Vec{X: 0.75, Z: 0.5}, outside()},
-		{"line of the wall beyond an end", Cone{Bottom: 1, Top: 0.5, Height: 1}, r3.Vec{X: 0.5 - 1e-13, Z: 0.5 + 2e-13}, outside()},
+		{"line of the wall beyond an end", Cone{Bottom: 1, Top: 0.5, Height: 1e-3}, r3.Vec{X: 0.5 - 1e-13, Z: 0.5e-3 + 2e-16}, Place{Region: On, Face: 1, Normal: r3.Vec{Z: 1}}},
 		{"far along the wall", lid, r3.Vec{X: 0.999999999999, Z: 0}, outside()},
 	}
 	for _, c := range cases {

@@ -100,8 +100,8 @@ func (s *sampledChart) descend(x pair.Vec, u, v float64) foot {
 			nu, nv := clamp(u+t*du), clamp(v+t*dv)
 			next, nxu, nxv := s.chart.At(nu, nv)
 			if q := lessPoint(x, next); r3.Norm2(q) < r3.Norm2(r) {
-				moved = math.Abs(nu-u)+math.Abs(nv-v) > 1e-16
-				u, v, at, r, xu, xv = nu, nv, next, q, nxu, nxv
+				moved = r3.Norm2(q) < (1-1e-12)*r3.Norm2(r) // what remains along the chart is below 1e-6 of the distance
+				u, v, r, xu, xv = nu, nv, q, nxu, nxv
 				break
 			}
 		}
@@ -109,15 +109,7 @@ func (s *sampledChart) descend(x pair.Vec, u, v float64) foot {
 			break
 		}
 	}
-	f := foot{u: u, v: v, from: r, distance: r3.Norm(r)}
-	if n := r3.Cross(xu, xv); inner(u) && inner(v) && n != (r3.Vec{}) {
-		n = r3.Unit(n)
-		h := r3.Dot(r, n)
-		if aside := r3.Norm(r3.Sub(r, r3.Scale(h, n))); aside <= grain*(r3.Norm(at)+r3.Norm(r)) {
-			f.distance = math.Abs(h) // along the surface there is only the rounding of the search
-		}
-	}
-	return f
+	return foot{u: u, v: v, from: r, distance: r3.Norm(r)}
 }
 
 // lessPoint returns x - at, with the low part of x.
@@ -184,6 +176,12 @@ func (p *Parametric) Locate(x pair.Vec, slack float64) Place {
 		return outside()
 	}
 	best := math.Inf(1)
+	for i := range p.sampled {
+		for _, at := range p.sampled[i].points {
+			best = min(best, r3.Norm2(r3.Sub(at, v)))
+		}
+	}
+	best = math.Sqrt(best) * (1 + grain)
 	for i := range p.sampled {
 		s := &p.sampled[i]
 		if toBox(s.box, v) <= best {

@@ -22,6 +22,7 @@ func TestPolygonNodesArea(t *testing.T) {
 		{"trapezoid with low parts", strip(wedge)},
 		{"far parallelogram", Polygon{Vertices: []r3.Vec{{X: 1000.1}, {X: 1000.3}, {X: 1000.3, Y: 1e-9}, {X: 1000.1, Y: 1e-9}}}},
 		{"far skew parallelogram", Polygon{Vertices: []r3.Vec{{X: 1000.1, Y: 7}, {X: 1000.3, Y: 7}, {X: 1000.3, Y: 7 + 0x1p-50}, {X: 1000.1, Y: 7 + 0x1p-49}}}},
+		{"the same from the next vertex", Polygon{Vertices: []r3.Vec{{X: 1000.3, Y: 7}, {X: 1000.3, Y: 7 + 0x1p-50}, {X: 1000.1, Y: 7 + 0x1p-49}, {X: 1000.1, Y: 7}}}},
 		{"far triangle", Polygon{Vertices: []r3.Vec{{X: 1000.1}, {X: 1001.1, Y: 1}, {X: 1002.1, Y: 2 + 1e-9}}}},
 	} {
 		want := c.p.Area()

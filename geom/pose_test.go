@@ -237,7 +237,8 @@ func TestAbout(t *testing.T) {
 		if p.Matrix() != turn.Matrix() {
 			t.Errorf("about %v the rotation is another", c)
 		}
-		shift := Translate(randomVec(rng))
+		d := r3.Scale(1e-20, randomVec(rng))
+		shift := Shift(pair.WithLow(d, r3.Scale(u/4, d))) // its low part is below the last digit of c in pairs
 		if got := shift.About(c); got != shift {
 			t.Errorf("a translation about %v is %v, want %v", c, got, shift)
 		}

@@ -127,7 +127,8 @@ func (s span) middle() direction { return s.plainHeading(s.from).turned(s.angle(
 // Plain arithmetic answers where it is beyond doubt: it is off by at most 8 u times the distance from the axis.
 func (s span) distance(x pair.Vec, tol float64) (d float64, end int, both bool) {
 	v := x.Value()
-	w := s.beside(v.X, v.Y)
+	from, to := s.plain()
+	w := s.beside(from, to, v.X, v.Y)
 	if doubt := tol + 16*0x1p-53*w.axis; w.near(0) <= doubt || w.near(1) <= doubt {
 		f, t := s.ends()
 		w.across[0] = x.X.Mul(f.Y).Sub(x.Y.Mul(f.X)).Value()
@@ -143,9 +144,8 @@ func (s span) distance(x pair.Vec, tol float64) (d float64, end int, both bool) 
 	return d, end, w.near(1-end) <= tol
 }
 
-// beside returns where a point stands, in plain arithmetic.
-func (s span) beside(x, y float64) wedge {
-	from, to := s.plain()
+// beside returns where a point stands in plain arithmetic, given what plain returns.
+func (s span) beside(from, to direction, x, y float64) wedge {
 	return wedge{
 		across: [2]float64{x*from.sin - y*from.cos, y*to.cos - x*to.sin},
 		along:  [2]float64{x*from.cos + y*from.sin, x*to.cos + y*to.sin},
@@ -206,7 +206,7 @@ func (s span) bounds(inner, outer, z1, z2 float64) r3.Box {
 	}
 	for k := range 4 {
 		e := direction{cos: 1}.quarterTurns(k)
-		if s.beside(e.cos, e.sin).inside() { // in doubt it is an end, within the margin
+		if s.beside(from, to, e.cos, e.sin).inside() { // in doubt it is an end, within the margin
 			add(outer*e.cos, outer*e.sin, 0)
 		}
 	}
