@@ -4,6 +4,7 @@ import (
 	"math"
 
 	"example.com/boundpole/field/internal/logatan"
+	"example.com/boundpole/geom/pair"
 	"gonum.org/v1/gonum/spatial/r3"
 )
 
@@ -24,7 +25,7 @@ type bundledEdge struct {
 type edgeBundle struct {
 	v      r3.Vec
 	member []int32 // indices of bundles.edges
-	plus   []bool
+	minus  []int32 // those whose vector is minus v
 }
 
 type faceBundle struct {
@@ -42,6 +43,9 @@ type fanFace struct {
 	verts   []int32
 	edges   []int32 // edge k runs from vertex k on; indices of bundles.edges
 	twice   []float64
+	four    bool // a quadrangle; its numbers stand here again, side by side
+	v, e    [4]int32
+	t       [2]float64
 }
 
 // mostBundled is how many factors a product may have: lengths lie between 0.05 and 10 units, so 8 of them stay in range.
@@ -87,12 +91,17 @@ func sameVector(v, w r3.Vec, size float64) float64 {
 func (b *bundles) joinEdge(v r3.Vec, i int32, size float64) {
 	for k := range b.logs {
 		l := &b.logs[k]
-		if s := sameVector(v, l.v, size); s != 0 && len(l.member) < mostBundled {
-			l.member, l.plus = append(l.member, i), append(l.plus, s > 0)
-			return
+		switch s := sameVector(v, l.v, size); {
+		case s == 0 || len(l.member)+len(l.minus) == mostBundled:
+			continue
+		case s > 0:
+			l.member = append(l.member, i)
+		default:
+			l.minus = append(l.minus, i)
 		}
+		return
 	}
-	b.logs = append(b.logs, edgeBundle{v, []int32{i}, []bool{true}})
+	b.logs = append(b.logs, edgeBundle{v: v, member: []int32{i}})
 }
 
 // joinFace adds a face to the bundle that has its vector, or makes one.
@@ -101,6 +110,12 @@ func (b *bundles) joinFace(v r3.Vec, q *facet, index []int32, size float64) {
 	for k := range q.corners {
 		face.verts = append(face.verts, int32(q.corners[k].from))
 		face.edges = append(face.edges, index[q.corners[k].edge])
+	}
+	if len(face.verts) == 4 {
+		face.four = true
+		copy(face.v[:], face.verts)
+		copy(face.e[:], face.edges)
+		copy(face.t[:], face.twice)
 	}
 	for k := range b.fans {
 		l := &b.fans[k]
@@ -114,20 +129,25 @@ func (b *bundles) joinFace(v r3.Vec, q *facet, index []int32, size float64) {
 }
 
 // value returns 4 pi g where x is away from every charged face; ok is false elsewhere. It uses w.l for scalar products.
-func (b *bundles) value(w *facetRoom, sum *facetSums) (g r3.Vec, ok bool) {
+func (b *bundles) value(w *facetRoom, at *pair.Vec) (g r3.Vec, ok bool) {
 	if b.logs == nil {
 		return g, false
 	}
-	x := r3.Vec{X: sum.x.X.Hi, Y: sum.x.Y.Hi, Z: sum.x.Z.Hi}
+	var room [mostBundled]float64
+	heights := room[:0]
 	for k := range b.fans {
 		for j := range b.fans[k].faces {
 			q := &b.fans[k].faces[j]
 			a := &w.a[q.verts[0]]
-			if h := q.n.X*a.X + q.n.Y*a.Y + q.n.Z*a.Z; math.Abs(h) <= q.close {
-				dx, dy, dz := x.X-q.centre.X, x.Y-q.centre.Y, x.Z-q.centre.Z
+			h := q.n.X*a.X + q.n.Y*a.Y + q.n.Z*a.Z
+			if math.Abs(h) <= q.close {
+				dx, dy, dz := at.X.Hi-q.centre.X, at.Y.Hi-q.centre.Y, at.Z.Hi-q.centre.Z
 				if dx*dx+dy*dy+dz*dz <= q.around2 {
 					return g, false
 				}
+			}
+			if len(heights) < len(room) {
+				heights = append(heights, -q.sign*h)
 			}
 		}
 	}
@@ -142,7 +162,9 @@ func (b *bundles) value(w *facetRoom, sum *facetSums) (g r3.Vec, ok bool) {
 		g.X, g.Y, g.Z = math.FMA(v.X, l, g.X), math.FMA(v.Y, l, g.Y), math.FMA(v.Z, l, g.Z)
 	}
 	for k := range b.fans {
-		o := b.fans[k].angle(w, dots)
+		n := min(len(b.fans[k].faces), len(heights))
+		o := b.fans[k].angle(w, dots, heights[:n])
+		heights = heights[n:]
 		v := &b.fans[k].v
 		g.X, g.Y, g.Z = math.FMA(v.X, o, g.X), math.FMA(v.Y, o, g.Y), math.FMA(v.Z, o, g.Z)
 	}
@@ -152,72 +174,77 @@ func (b *bundles) value(w *facetRoom, sum *facetSums) (g r3.Vec, ok bool) {
 // logarithm returns the signed sum of the logarithms log(1 + n/d) of a bundle's edges.
 func (b *bundles) logarithm(l *edgeBundle, w *facetRoom, dots []float64) float64 {
 	num, den := 1.0, 1.0
-	for j, i := range l.member {
-		e := &b.edges[i]
-		ra, rb, ab := w.r[e.from], w.r[e.to], dots[i]
-		n := e.length * (ra + rb + e.length)
-		d := math.FMA(ra, rb, ab)
-		if ab < 0 {
-			p, q := &w.a[e.from], &w.a[e.to]
-			cx, cy, cz := p.Y*q.Z-p.Z*q.Y, p.Z*q.X-p.X*q.Z, p.X*q.Y-p.Y*q.X
-			d = (cx*cx + cy*cy + cz*cz) / (ra*rb - ab)
-		}
-		if l.plus[j] {
-			num, den = num*(n+d), den*d
-		} else {
-			num, den = num*d, den*(n+d)
-		}
+	for _, i := range l.member {
+		d, nd := b.edges[i].quotient(w, dots[i])
+		num, den = num*nd, den*d
+	}
+	for _, i := range l.minus {
+		d, nd := b.edges[i].quotient(w, dots[i])
+		num, den = num*d, den*nd
 	}
 	return logatan.LogRatio(num, den)
 }
 
-// angle returns the signed sum of the solid angles of a bundle of faces.
-func (l *faceBundle) angle(w *facetRoom, dots []float64) float64 {
+// quotient returns d and d + n of an edge with the scalar product ab of its ends.
+func (e *bundledEdge) quotient(w *facetRoom, ab float64) (d, nd float64) {
+	ra, rb := w.r[e.from], w.r[e.to]
+	if ab < 0 {
+		return e.beside(w, ab)
+	}
+	d = ra*rb + ab
+	return d, d + e.length*(ra+rb+e.length)
+}
+
+// beside is quotient where x lies between the ends.
+func (e *bundledEdge) beside(w *facetRoom, ab float64) (d, nd float64) {
+	ra, rb := w.r[e.from], w.r[e.to]
+	p, q := &w.a[e.from], &w.a[e.to]
+	cx, cy, cz := p.Y*q.Z-p.Z*q.Y, p.Z*q.X-p.X*q.Z, p.X*q.Y-p.Y*q.X
+	d = (cx*cx + cy*cy + cz*cz) / (ra*rb - ab)
+	return d, d + e.length*(ra+rb+e.length)
+}
+
+// angle returns the signed sum of the solid angles of a bundle of faces; heights holds those of the first of them.
+func (l *faceBundle) angle(w *facetRoom, dots, heights []float64) float64 {
 	re, im, turns := 1.0, 0.0, 0.0
 	for j := range l.faces {
 		q := &l.faces[j]
-		a := &w.a[q.verts[0]]
-		h := -q.sign * (q.n.X*a.X + q.n.Y*a.Y + q.n.Z*a.Z)
-		fr, fi, small := q.factor(h, w, dots)
-		if small {
-			re, im, turns = turn(re, im, fr, fi, turns)
+		var h float64
+		if j < len(heights) {
+			h = heights[j]
+		} else {
+			a := &w.a[q.verts[0]]
+			h = -q.sign * (q.n.X*a.X + q.n.Y*a.Y + q.n.Z*a.Z)
+		}
+		if !q.four {
+			re, im, turns = q.turn(h, w, dots, re, im, turns)
 			continue
 		}
-		re, im, turns = q.turn(h, w, dots, re, im, turns)
+		fr, fi := q.quadrangle(h, w, dots)
+		if fr >= 0 && re >= 0 { // less than a quarter turn each: no full turn
+			re, im = re*fr-im*fi, re*fi+im*fr
+		} else {
+			re, im, turns = q.turn(h, w, dots, re, im, turns)
+		}
 	}
 	return 2 * (logatan.Atan2(im, re) + turns)
 }
 
-// factor returns the product of the factors of a face's triangles; small is false where an argument may pass pi, which takes
-// more than two triangles of more than a quarter turn.
-func (q *fanFace) factor(h float64, w *facetRoom, dots []float64) (re, im float64, small bool) {
-	if len(q.twice) > 2 {
-		return 0, 0, false
+// quadrangle returns the product of the factors of the two triangles of a face with four corners; the real part is negative
+// where an argument may be more than a quarter turn.
+func (q *fanFace) quadrangle(h float64, w *facetRoom, dots []float64) (re, im float64) {
+	v, r := &q.v, w.r
+	r0, r1, r2, r3 := r[v[0]], r[v[1]], r[v[2]], r[v[3]]
+	d01, d12, d23, d30 := dots[q.e[0]], dots[q.e[1]], dots[q.e[2]], dots[q.e[3]]
+	a, c := &w.a[v[0]], &w.a[v[2]]
+	d02 := math.FMA(a.X, c.X, math.FMA(a.Y, c.Y, float64(a.Z*c.Z)))
+	t1 := (r0*r1+d01)*r2 + d02*r1 + d12*r0
+	t2 := (r0*r2+d02)*r3 + d30*r2 + d23*r0
+	if t1 < 0 || t2 < 0 {
+		return -1, 0
 	}
-	v0 := q.verts[0]
-	a, ra := &w.a[v0], w.r[v0]
-	rb, ab := w.r[q.verts[1]], dots[q.edges[0]]
-	re, im = 1, 0
-	last := len(q.twice) - 1
-	for k := range q.twice {
-		vc := q.verts[k+2]
-		rc, bc := w.r[vc], dots[q.edges[k+1]]
-		var ac float64
-		if k == last {
-			ac = dots[q.edges[k+2]]
-		} else {
-			c := &w.a[vc]
-			ac = math.FMA(a.X, c.X, math.FMA(a.Y, c.Y, float64(a.Z*c.Z)))
-		}
-		num := h * q.twice[k]
-		den := (ra*rb+ab)*rc + ac*rb + bc*ra
-		if den < 0 {
-			return 0, 0, false
-		}
-		re, im = re*den-im*num, re*num+im*den
-		rb, ab = rc, ac
-	}
-	return re, im, true
+	n1, n2 := h*q.t[0], h*q.t[1]
+	return t1*t2 - n1*n2, t1*n2 + n1*t2
 }
 
 // turn multiplies the factors of a face's triangles one by one into re + i im, counting turns.
