@@ -32,7 +32,7 @@ func (m *Member) source() field.Source {
 func (m *Member) locate(p field.Point) geom.Place {
 	switch {
 	case m.Charge != nil:
-		return m.Charge.body.Locate(p.X, p.Slack)
+		return m.Charge.place.Locate(p.X, p.Slack)
 	case m.Sheet != nil:
 		return m.Sheet.Locate(p.X, p.Slack)
 	case m.Body != nil:

@@ -29,8 +29,10 @@ type Charge struct {
 	Moment     r3.Vec     // integral of p over the volume: the dipole moment
 	Identities []Identity // what must vanish, and how far it does
 
-	body   geom.Body // as given, perhaps placed
-	local  geom.Body // in its own frame
+	body   geom.Body    // as given, perhaps placed
+	inner  geom.Locator // tells points of the body's own frame
+	place  geom.Locator // tells points of the outer frame
+	local  geom.Body    // in its own frame
 	pose   geom.Pose
 	p      field.Polarization // in the body's own frame
 	own    field.Source       // in the body's own frame
@@ -75,6 +77,11 @@ func Of(body geom.Body, p field.Polarization) (*Charge, error) {
 	if at, ok := body.(geom.Placed); ok {
 		c.local, c.pose = at.Body, at.Pose
 	}
+	c.inner = geom.LocatorOf(c.local)
+	c.place = c.inner
+	if _, ok := body.(geom.Placed); ok {
+		c.place = geom.LocatorAt(c.inner, c.local.Bounds(), c.pose)
+	}
 	if err := c.fill(); err != nil {
 		return nil, err
 	}
@@ -93,6 +100,7 @@ func Of(body geom.Body, p field.Polarization) (*Charge, error) {
 func (c *Charge) At(pose geom.Pose) *Charge {
 	d := *c
 	d.body, d.pose = geom.At(c.body, pose), c.pose.Then(pose)
+	d.place = geom.LocatorAt(c.inner, c.local.Bounds(), d.pose)
 	d.source = field.Posed{Source: c.own, Pose: d.pose}
 	d.Moment = pose.VectorToOuter(c.Moment)
 	d.Layers, d.Volumes = slices.Clone(c.Layers), slices.Clone(c.Volumes)
@@ -108,6 +116,9 @@ func (c *Charge) At(pose geom.Pose) *Charge {
 
 // Body returns the body as it was given.
 func (c *Charge) Body() geom.Body { return c.body }
+
+// Locate tells where a point lies with respect to the body, faster than the body itself for many points.
+func (c *Charge) Locate(x pair.Vec, slack float64) geom.Place { return c.place.Locate(x, slack) }
 
 // Polarization returns p at a point of the outer frame, continued outside the body.
 func (c *Charge) Polarization(x pair.Vec) r3.Vec {

@@ -76,7 +76,7 @@ func (c *Charge) checkPoints() error {
 
 // room returns a length over which the polarization may be asked for around x without leaving the body, 0 for none.
 func (c *Charge) room(x r3.Vec, size float64) float64 {
-	inside := func(y r3.Vec) bool { return c.local.Locate(pair.VecOf(y), 0).Region == geom.Inside }
+	inside := func(y r3.Vec) bool { return c.inner.Locate(pair.VecOf(y), 0).Region == geom.Inside }
 	if !inside(x) {
 		return 0
 	}

@@ -36,19 +36,15 @@ type facetSums struct {
 
 // near evaluates the closed form.
 func (f *facets) near(p field.Point, side field.Side, want field.Want, w facetRoom) field.Value {
-	s := 1 / f.unit
+	s := f.per
 	sum := facetSums{
 		x:   pair.Vec{X: p.X.X.Scale(s), Y: p.X.Y.Scale(s), Z: p.X.Z.Scale(s)},
 		tol: f.tolerance(p),
 	}
-	for i := range f.verts {
-		v := &f.verts[i]
-		a := r3.Vec{X: offset(v.X, sum.x.X), Y: offset(v.Y, sum.x.Y), Z: offset(v.Z, sum.x.Z)}
-		w.a[i], w.r[i] = a, math.Sqrt(a.X*a.X+a.Y*a.Y+a.Z*a.Z)
-	}
-	together, ok := f.bundled(&w, &sum)
+	f.offsets(&w, &sum.x)
+	together, ok := f.bundled.value(&w, &sum.x)
 	if ok && want == field.WantG {
-		return field.Value{G: r3.Scale(0.25/math.Pi, together)}
+		return field.Value{G: r3.Scale(over4P, together)}
 	}
 	for i := range f.edges {
 		f.edgeLog(i, &w, &sum, want)
@@ -69,6 +65,22 @@ func (f *facets) near(p field.Point, side field.Side, want field.Want, w facetRo
 	return v
 }
 
+// quick returns the field of a small body away from its faces, the same bits as value without its preparations.
+func (f *facets) quick(x r3.Vec) (g r3.Vec, ok bool) {
+	if f.bundled.logs == nil || len(f.verts) > smallVerts || len(f.edges) > smallEdges || x.X-x.X+(x.Y-x.Y)+(x.Z-x.Z) != 0 {
+		return g, false
+	}
+	var a [smallVerts]r3.Vec
+	var r [smallVerts]float64
+	var l [smallEdges]float64
+	s := f.per
+	at := pair.Vec{X: pair.Of(x.X * s), Y: pair.Of(x.Y * s), Z: pair.Of(x.Z * s)}
+	w := facetRoom{a: a[:len(f.verts)], r: r[:len(f.verts)], l: l[:len(f.edges)]}
+	f.offsets(&w, &at)
+	g, ok = f.bundled.value(&w, &at)
+	return r3.Vec{X: over4P * g.X, Y: over4P * g.Y, Z: over4P * g.Z}, ok
+}
+
 // finishGradient adds the gradient tensor and its estimate.
 func (f *facets) finishGradient(v *field.Value, w *facetRoom, sum *facetSums, side field.Side) {
 	k := 0.25 / math.Pi / f.unit
@@ -79,6 +91,23 @@ func (f *facets) finishGradient(v *field.Value, w *facetRoom, sum *facetSums, si
 	t, size := f.gradient(w, sum, side)
 	v.Grad = t.symmetric(k)
 	v.ErrGrad = k * 0x1p-53 * (8*size + 4*sum.shaky*size/(sum.size+1))
+}
+
+// offsets fills w.a with vertex - x and w.r with its norm.
+func (f *facets) offsets(w *facetRoom, x *pair.Vec) {
+	if f.exact && x.X.Lo == 0 && x.Y.Lo == 0 && x.Z.Lo == 0 { // the same bits: one difference, rounded once
+		for i := range f.verts {
+			v := &f.verts[i]
+			ax, ay, az := v.X.Hi-x.X.Hi, v.Y.Hi-x.Y.Hi, v.Z.Hi-x.Z.Hi
+			w.a[i], w.r[i] = r3.Vec{X: ax, Y: ay, Z: az}, math.Sqrt(ax*ax+ay*ay+az*az)
+		}
+		return
+	}
+	for i := range f.verts {
+		v := &f.verts[i]
+		ax, ay, az := offset(v.X, x.X), offset(v.Y, x.Y), offset(v.Z, x.Z)
+		w.a[i], w.r[i] = r3.Vec{X: ax, Y: ay, Z: az}, math.Sqrt(ax*ax+ay*ay+az*az)
+	}
 }
 
 // offset returns v - x rounded once.
@@ -231,7 +260,13 @@ func (f *facets) away(q *facet, h float64, sum *facetSums) bool {
 
 // fanAngle returns the solid angle as one arctangent of the product over the triangles of the fan [VanOosterom1983].
 func (q *facet) fanAngle(h float64, w *facetRoom) float64 {
-	re, im, turns := q.fanFactor(h, w, 1, 0, 0)
+	re, im, turns := 1.0, 0.0, 0.0
+	for k, t := range q.fan {
+		a, b, c := w.a[t[0]], w.a[t[1]], w.a[t[2]]
+		ra, rb, rc := w.r[t[0]], w.r[t[1]], w.r[t[2]]
+		den := (ra*rb+r3.Dot(a, b))*rc + r3.Dot(a, c)*rb + r3.Dot(b, c)*ra
+		re, im, turns = turn(re, im, den, h*q.twice[k], turns)
+	}
 	return 2 * (logatan.Atan2(im, re) + turns)
 }
 
@@ -319,7 +354,7 @@ func turn(re, im, zr, zi, turns float64) (float64, float64, float64) {
 
 // finish scales the sums and attaches the estimates.
 func (f *facets) finish(sum *facetSums, want field.Want) field.Value {
-	const k = 0.25 / math.Pi
+	const k = over4P
 	v := field.Value{Phi: k * sum.phi * f.unit, G: r3.Scale(k, sum.g), Status: sum.status}
 	if want&field.WantErr != 0 {
 		const u = 0x1p-53

@@ -28,6 +28,7 @@ import (
 // edge, because there the rounding of the difference x - vertex would be amplified by length/distance.
 type facets struct {
 	unit   float64 // power of two near the size; everything below is in this unit
+	per    float64 // 1/unit
 	size   float64 // bounding radius about centre
 	centre r3.Vec
 	bounds r3.Box  // in the caller's unit
@@ -39,7 +40,8 @@ type facets struct {
 	linear bool    // some gamma or rho is not zero
 	dense  float64 // largest |sigma| on a face
 
-	edgeBundles, faceBundles []bundle
+	bundled bundles
+	exact   bool // no vertex has a low part
 }
 
 // facetEdge is an edge and what it contributes whatever the position of x.
@@ -91,11 +93,14 @@ func newFacets(verts []pair.Vec, specs []facetSpec, rho float64) *facets {
 	half := r3.Scale(0.5, r3.Sub(f.bounds.Max, f.bounds.Min))
 	f.extent = geom.OnTolerance(f.bounds, r3.Vec{}, 0) / (4 * 0x1p-53)
 	f.unit = math.Ldexp(1, math.Ilogb(r3.Norm(half)))
-	s := 1 / f.unit
+	f.per = 1 / f.unit
+	s := f.per
 	f.rho *= f.unit
 	f.centre = r3.Scale(0.5*s, r3.Add(f.bounds.Min, f.bounds.Max))
 	c := pair.VecOf(f.centre)
+	f.exact = true
 	for _, v := range verts {
+		f.exact = f.exact && v.X.Lo == 0 && v.Y.Lo == 0 && v.Z.Lo == 0
 		w := pair.Vec{X: v.X.Scale(s), Y: v.Y.Scale(s), Z: v.Z.Scale(s)}
 		f.verts = append(f.verts, w)
 		f.size = max(f.size, r3.Norm(w.Sub(c).Value()))
@@ -219,6 +224,12 @@ func boxOf(verts []pair.Vec) r3.Box {
 	return b
 }
 
+// smallVerts and smallEdges are what fits on the stack; larger bodies take their room from a pool.
+const (
+	smallVerts = 12
+	smallEdges = 20
+)
+
 // facetRoom is the working memory of one evaluation.
 type facetRoom struct {
 	a     []r3.Vec  // vertex - x
@@ -229,12 +240,11 @@ type facetRoom struct {
 
 // value evaluates at one point, near or far.
 func (f *facets) value(p field.Point, side field.Side, want field.Want) field.Value {
-	const nv, ne = 16, 32
-	if len(f.verts) <= nv && len(f.edges) <= ne {
-		var a [nv]r3.Vec
-		var r [nv]float64
-		var l [ne]float64
-		var c [ne]bool
+	if len(f.verts) <= smallVerts && len(f.edges) <= smallEdges {
+		var a [smallVerts]r3.Vec
+		var r [smallVerts]float64
+		var l [smallEdges]float64
+		var c [smallEdges]bool
 		return f.near(p, side, want, facetRoom{a[:len(f.verts)], r[:len(f.verts)], l[:len(f.edges)], c[:len(f.edges)]})
 	}
 	room := facetRooms.Get().(*facetRoom)

@@ -53,13 +53,23 @@ func NewPolyhedron(body geom.Polyhedron, p field.Affine) *Polyhedron {
 		s.far.reach, s.far.order = 2.5, 40
 	case body.Volume() < 0.1*a*a*a: // thin: what is left of opposite faces is small, so every term needs all its digits
 		s.far.reach, s.far.order = 2.6, 40
-		s.flat.edgeBundles, s.flat.faceBundles = nil, nil
+		s.flat.bundled = bundles{}
 	}
 	return s
 }
 
 // Field returns g at x.
 func (s *Polyhedron) Field(x r3.Vec) r3.Vec {
+	if !s.far.beyond(x.X, x.Y, x.Z) {
+		if g, ok := s.flat.quick(x); ok {
+			return g
+		}
+	}
+	return s.full(x)
+}
+
+// full is Field without the short way.
+func (s *Polyhedron) full(x r3.Vec) r3.Vec {
 	return s.point(field.Point{X: pair.VecOf(x)}, field.Mean, field.WantG).G
 }
 
@@ -147,8 +157,12 @@ type farField struct {
 
 // covers reports whether the expansion is to be used at p.
 func (f *farField) covers(p field.Point) bool {
-	c, s := &f.flat.centre, 1/f.flat.unit
-	x, y, z := p.X.X.Hi*s-c.X, p.X.Y.Hi*s-c.Y, p.X.Z.Hi*s-c.Z
+	return f.beyond(p.X.X.Hi, p.X.Y.Hi, p.X.Z.Hi)
+}
+
+func (f *farField) beyond(x, y, z float64) bool {
+	c, s := &f.flat.centre, f.flat.per
+	x, y, z = x*s-c.X, y*s-c.Y, z*s-c.Z
 	limit := f.reach * f.flat.size
 	return x*x+y*y+z*z > limit*limit
 }
