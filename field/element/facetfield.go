@@ -135,6 +135,9 @@ func (f *facets) edgeLog(i int, w *facetRoom, sum *facetSums, want field.Want) {
 	}
 	if den == 0 { // on the edge: d L tends to 0
 		w.l[i] = 0
+		if f.linear && e.c != 0 {
+			f.addLinearEdge(e, 0, w, sum)
+		}
 		return
 	}
 	el := logatan.Log1pRatio(l*(s+l), den)
