@@ -85,8 +85,11 @@ func (e *Moments) AddDipole(y, p r3.Vec) {
 	})
 }
 
-// maxOrder is the highest order an expansion may have.
-const maxOrder = 60
+// maxOrder is the highest order an expansion may have; lowOrder is what points far away need.
+const (
+	maxOrder = 60
+	lowOrder = 14
+)
 
 // each calls f with R_n^m, m = 0..n, of the scaled position of y, for n = 0..order.
 func (e *Moments) each(y r3.Vec, order int, row []complex128, f func(n int, r []complex128)) {
@@ -193,8 +196,17 @@ func (e *Moments) sum(x r3.Vec, order int, grad bool) Value {
 	if grad {
 		top++
 	}
+	if top <= lowOrder { // a small room is quicker to clear
+		var irr [(lowOrder + 1) * (lowOrder + 2) / 2]complex128
+		return e.sumIn(irr[:], x, order, top, grad)
+	}
 	var irr [(maxOrder + 3) * (maxOrder + 4) / 2]complex128
-	irregular(irr[:], x, top)
+	return e.sumIn(irr[:], x, order, top, grad)
+}
+
+// sumIn is sum with room for the irregular harmonics up to top.
+func (e *Moments) sumIn(irr []complex128, x r3.Vec, order, top int, grad bool) Value {
+	irregular(irr, x, top)
 	var phi float64
 	var dx, dy, dz float64
 	var h [6]float64
@@ -213,10 +225,10 @@ func (e *Moments) sum(x r3.Vec, order int, grad bool) Value {
 			}
 			phi += w * realProduct(c, i0[k])
 			lower := lowered(up, k)
-			gx, gy, gz := (up[k+1]-lower)/2, (up[k+1]+lower)/2, -up[k]
-			dx += w * realProduct(c, gx)
-			dy += w * imagProduct(c, gy)
-			dz += w * realProduct(c, gz)
+			half := 0.5 * w
+			dx += half * realProduct(c, up[k+1]-lower)
+			dy += half * imagProduct(c, up[k+1]+lower)
+			dz -= w * realProduct(c, up[k])
 			if grad {
 				e.second(&h, c, irr[(n+2)*(n+3)/2:], k, w)
 			}
@@ -270,15 +282,15 @@ func irregular(dst []complex128, x r3.Vec, order int) {
 	for n := 1; n <= order; n++ {
 		cur := dst[n*(n+1)/2:]
 		last := dst[n*(n-1)/2:]
-		cur[n] = complex(-float64(2*n-1), 0) * w * last[n-1]
-		cur[n-1] = complex(float64(2*n-1)*z, 0) * last[n-1]
+		cur[n] = times(-float64(2*n-1), w*last[n-1])
+		cur[n-1] = times(float64(2*n-1)*z, last[n-1])
 		if n < 2 {
 			continue
 		}
 		before := dst[(n-1)*(n-2)/2:]
 		for k := 0; k < n-1; k++ {
-			f := float64((n-1)*(n-1) - k*k)
-			cur[k] = complex(float64(2*n-1)*z, 0)*last[k] - complex(f*rr, 0)*before[k]
+			a, b := float64(2*n-1)*z, float64((n-1)*(n-1)-k*k)*rr
+			cur[k] = complex(a*real(last[k])-b*real(before[k]), a*imag(last[k])-b*imag(before[k]))
 		}
 	}
 }
