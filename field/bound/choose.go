@@ -9,49 +9,99 @@ import (
 	"gonum.org/v1/gonum/spatial/r3"
 )
 
-// evaluator chooses how the field of the body in its own frame is computed: the one place where that is decided.
+// evaluator chooses how the field of the body in its own frame is computed, and the one place where that is decided: a closed
+// form or a single quadrature of the whole body where there is one, else integration over faces and cells.
 func (c *Charge) evaluator() (field.Source, error) {
-	if src, err := closedForm(c.local, c.p); src != nil || err != nil {
+	src, err := wholeBody(c.local, c.p)
+	if src != nil || err != nil {
 		return src, err
 	}
-	return nil, fmt.Errorf("bound: polarization of type %T on a body of type %T: %w yet", c.p, c.local, ErrUnsupported)
+	return c.integrated()
 }
 
-// closedForm returns the whole-body closed form, nil if there is none.
-func closedForm(body geom.Body, p field.Polarization) (field.Source, error) {
-	a, affine := p.(field.Affine)
-	uniform := affine && a.Gradient == [3][3]float64{}
-	along := a.Gradient // but for the axial slope
+// law is a polarization taken apart for the choice.
+type law struct {
+	affine  field.Affine
+	is      bool    // p is affine
+	uniform bool    // p is uniform
+	axial   bool    // p is uniform but for an axial component that grows along the axis
+	radial  float64 // coefficient of the unit vector away from the axis; p is that alone if not affine
+}
+
+func lawOf(p field.Polarization) law {
+	var l law
+	l.affine, l.is = p.(field.Affine)
+	along := l.affine.Gradient
+	l.uniform = l.is && along == [3][3]float64{}
 	along[2][2] = 0
-	axial := affine && along == [3][3]float64{}
-	at0 := a.At(r3.Vec{})
+	l.axial = l.is && along == [3][3]float64{}
+	if r, ok := p.(field.RadialPower); ok && r.Power == 0 {
+		l.radial = r.Coefficient
+	}
+	return l
+}
+
+// wholeBody returns the evaluator that is made for a body and a polarization, nil if there is none.
+func wholeBody(body geom.Body, p field.Polarization) (field.Source, error) {
+	l := lawOf(p)
 	switch b := body.(type) {
 	case geom.Flat:
-		if affine {
-			return element.NewPolyhedron(b.Polyhedron(), a), nil
+		if l.is {
+			return element.NewPolyhedron(b.Polyhedron(), l.affine), nil
 		}
 	case geom.Cylinder:
-		if axial {
-			return element.NewCylinder(b, at0, a.Gradient[2][2])
-		}
+		return roundForm(geom.Tube{Outer: b.Radius, Height: b.Height}, p, l)
 	case geom.Tube:
-		if axial {
-			return element.NewTube(b, at0, a.Gradient[2][2])
+		return roundForm(b, p, l)
+	case geom.Arc:
+		if l.is || l.radial != 0 {
+			return element.NewArc(b, l.affine, l.radial)
+		}
+	case geom.Cone:
+		if l.uniform {
+			return element.NewCone(b, l.affine.Value)
+		}
+	case geom.Torus:
+		if l.uniform {
+			return element.NewTorus(b, l.affine.Value)
 		}
 	case geom.Sphere:
-		if uniform {
-			return element.Sphere{Shape: b, P: a.Value}, nil
+		if l.uniform {
+			return element.Sphere{Shape: b, P: l.affine.Value}, nil
 		}
 		return sphereForm(0, b.Radius, p)
 	case geom.HollowSphere:
-		if uniform {
-			return element.HollowSphere{Shape: b, P: a.Value}, nil
+		if l.uniform {
+			return element.HollowSphere{Shape: b, P: l.affine.Value}, nil
 		}
 		return sphereForm(b.Inner, b.Outer, p)
 	case geom.Ellipsoid:
-		if uniform {
-			return element.NewEllipsoid(b, a.Value)
+		if l.uniform {
+			return element.NewEllipsoid(b, l.affine.Value)
 		}
+	}
+	return nil, nil
+}
+
+// roundForm returns the evaluator of a cylinder (inner radius 0) or tube, nil if there is none.
+func roundForm(b geom.Tube, p field.Polarization, l law) (field.Source, error) {
+	full := b.Inner == 0
+	cylinder := geom.Cylinder{Radius: b.Outer, Height: b.Height}
+	switch {
+	case l.axial && full:
+		return element.NewCylinder(cylinder, l.affine.At(r3.Vec{}), l.affine.Gradient[2][2])
+	case l.axial:
+		return element.NewTube(b, l.affine.At(r3.Vec{}), l.affine.Gradient[2][2])
+	case (l.is || l.radial != 0) && full:
+		return element.NewAffineCylinder(cylinder, l.affine, l.radial)
+	case l.is || l.radial != 0:
+		return element.NewAffineTube(b, l.affine, l.radial)
+	}
+	switch q := p.(type) {
+	case field.AxialPower:
+		return element.NewAxialPower(b, q.Coefficient, q.Power)
+	case field.RadialPower:
+		return element.NewRadialPower(b, q.Coefficient, q.Power)
 	}
 	return nil, nil
 }
@@ -65,4 +115,9 @@ func sphereForm(inner, outer float64, p field.Polarization) (field.Source, error
 		return element.NewCentralPower(inner, outer, q.Coefficient, q.Power)
 	}
 	return nil, nil
+}
+
+// unsupported is the error for a body that cannot be integrated over.
+func (c *Charge) unsupported(what string) error {
+	return fmt.Errorf("bound: %w: %s", ErrUnsupported, what)
 }

@@ -1,5 +1,7 @@
-// Package element holds the closed-form sources: points and dipoles, plane sheets and bodies with plane faces, discs, annuli
-// and round walls, cylinders and tubes, spheres and ellipsoids. One concept a file.
+// Package element holds the sources of whole shapes. Closed forms: points and dipoles, plane sheets and bodies with plane
+// faces, discs, annuli and round walls, cylinders and tubes, spheres and ellipsoids. With one direction in closed form and one
+// quadrature: arcs, tubes and cylinders with any affine polarization, discs and annuli with linear charge (sector files);
+// cones, tori, axial and radial powers (ring files). One concept a file.
 //
 // Units are natural (package field): g in the unit of the density or polarization, phi in that times the length unit. Each
 // source stands in its own frame; field.Posed moves it. Types without preparation are plain structs; the others are built by
@@ -8,8 +10,9 @@
 // asked for beside.
 //
 // Error estimates bound rounding: a small multiple of u = 2^-53 times the sum of the magnitudes of the terms, with what
-// rounded geometry adds near edges. Lengths may lie between 1e-60 and 1e60.
+// rounded geometry adds near edges; those of the quadratures add what a rule leaves out, from a second rule or from the last
+// coefficients of the first. Lengths may lie between 1e-60 and 1e60.
 //
-// The package knows no bodies with polarization of the caller's choice: bound.Of chooses the element. It has no numeric
-// integrator for arbitrary faces.
+// The package knows no bodies with polarization of the caller's choice: bound.Of chooses the element. It has no
+// integrator for arbitrary faces: see field/cubature.
 package element

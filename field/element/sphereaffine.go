@@ -61,38 +61,43 @@ func (s *AffineSphere) cavity(x r3.Vec, _ float64) field.Value {
 	return field.Value{Phi: v, ErrPhi: 4 * u * math.Abs(v)}
 }
 
-// wall adds the full sphere and takes off what the cavity would hold, seen from outside it.
-func (s *AffineSphere) wall(x, n r3.Vec, r float64) field.Value {
+// wall returns the value between the spheres. With q = inner/r, k_n = 1 - q^n taken from the height above the inner sphere,
+//
+//	phi = k_3 P.x/3 + k_5 x.S x/5 - (t/2)(outer^2 - r^2),
+//	g   = -k_3 P/3 - q^3 (P.n) n - 2 k_5 S x/5 - q^5 r (n.S n) n - t x,   t a third of the trace.
+func (s *AffineSphere) wall(x, n r3.Vec, r, up, down float64) field.Value {
+	q, k3, k5 := 0.0, 1.0, 1.0
+	if s.inner > 0 {
+		q = s.inner / r
+		k3 = up / r * (1 + q + q*q)
+		k5 = up / r * (1 + q*(1+q*(1+q*(1+q))))
+	}
+	q3 := q * q * q
+	q5 := q3 * q * q
 	sx := s.times(x)
 	xsx := r3.Dot(x, sx)
-	size := s.norm() * r
-	v := field.Value{
-		Phi: r3.Dot(s.p, x)/3 - s.trace/2*(s.outer-r)*(s.outer+r) + xsx/5,
-		G: r3.Vec{
-			X: -s.p.X/3 - s.trace*x.X - 0.4*sx.X,
-			Y: -s.p.Y/3 - s.trace*x.Y - 0.4*sx.Y,
-			Z: -s.p.Z/3 - s.trace*x.Z - 0.4*sx.Z,
-		},
+	v := field.Value{Phi: k3*r3.Dot(s.p, x)/3 + k5*xsx/5 - s.trace/2*down*(s.outer+r)}
+	g := r3.Add(r3.Scale(-k3/3, s.p), r3.Scale(-0.4*k5, sx))
+	g = r3.Add(g, r3.Scale(-s.trace, x))
+	if s.inner > 0 {
+		g = r3.Add(g, r3.Scale(-q3*r3.Dot(s.p, n)-q5*xsx/r, n))
 	}
+	v.G = g
 	for k, ij := range tensorOrder {
 		v.Grad[k] = -0.4 * s.s[ij[0]][ij[1]]
 	}
 	for k := range 3 {
 		v.Grad[k] -= s.trace
 	}
-	p := r3.Norm(s.p)
-	v.ErrPhi = 8 * u * (p*r + math.Abs(s.trace)*s.outer*s.outer + size*r)
-	v.ErrG = 8 * u * (p + math.Abs(s.trace)*r + size)
+	p, size := r3.Norm(s.p), s.norm()*r
+	v.ErrPhi = 32 * u * (k3*p*r + math.Abs(s.trace)*down*s.outer + k5*size*r)
+	v.ErrG = 32 * u * (p + math.Abs(s.trace)*r + size)
 	v.ErrGrad = 8 * u * (math.Abs(s.trace) + s.norm())
 	if s.inner > 0 {
-		less := s.exterior(x, n, r, s.inner)
-		v.Phi -= less.Phi
-		v.G = r3.Sub(v.G, less.G)
+		less := s.layers(x, n, r, s.inner*s.inner*s.inner, s.inner*s.inner*s.inner*s.inner*s.inner)
 		for k := range v.Grad {
 			v.Grad[k] -= less.Grad[k]
 		}
-		v.ErrPhi += less.ErrPhi
-		v.ErrG += less.ErrG
 		v.ErrGrad += less.ErrGrad
 	}
 	return v
@@ -100,11 +105,6 @@ func (s *AffineSphere) wall(x, n r3.Vec, r float64) field.Value {
 
 func (s *AffineSphere) outside(x, n r3.Vec, r float64) field.Value {
 	return s.layers(x, n, r, (s.outer-s.inner)*(s.outer*s.outer+s.outer*s.inner+s.inner*s.inner), powerDifference(s.outer, s.inner))
-}
-
-// exterior returns the dipole and quadrupole of a full sphere of radius a, outside it.
-func (s *AffineSphere) exterior(x, n r3.Vec, r, a float64) field.Value {
-	return s.layers(x, n, r, a*a*a, a*a*a*a*a)
 }
 
 // powerDifference returns b^5 - a^5 without cancellation.

@@ -75,7 +75,7 @@ func (s *CentralPower) cavity(r3.Vec, float64) field.Value {
 	return field.Value{Phi: -v, ErrPhi: err}
 }
 
-func (s *CentralPower) wall(_, n r3.Vec, r float64) field.Value {
+func (s *CentralPower) wall(_, n r3.Vec, r, _, _ float64) field.Value {
 	v, err := s.integral(r)
 	out := field.Value{Phi: -v, ErrPhi: err}
 	if r == 0 {

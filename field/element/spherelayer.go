@@ -10,7 +10,8 @@ import (
 // of three regions.
 type spherical interface {
 	cavity(x r3.Vec, r float64) field.Value
-	wall(x, n r3.Vec, r float64) field.Value
+	// wall is at the heights up above the inner and down below the outer sphere, both with all their digits.
+	wall(x, n r3.Vec, r, up, down float64) field.Value
 	outside(x, n r3.Vec, r float64) field.Value
 }
 
@@ -19,21 +20,20 @@ func between(s spherical, inner, outer float64, p field.Point, side field.Side) 
 	x := p.X.Value()
 	n, r := direction(x)
 	bounds := cube(outer)
-	if inner > 0 {
-		switch _, where := height(p, r, inner, bounds); where {
-		case geom.Inside:
-			return s.cavity(x, r)
-		case geom.On:
-			return onFace(s.wall(x, n, r), s.cavity(x, r), side)
-		}
+	up, in := height(p, r, inner, bounds)
+	down, out := height(p, r, outer, bounds)
+	wall := func() field.Value { return s.wall(x, n, r, up, -down) }
+	switch {
+	case inner > 0 && in == geom.Inside:
+		return s.cavity(x, r)
+	case inner > 0 && in == geom.On:
+		return onFace(wall(), s.cavity(x, r), side)
+	case out == geom.On:
+		return onFace(wall(), s.outside(x, n, r), side)
+	case out == geom.Outside:
+		return s.outside(x, n, r)
 	}
-	switch _, where := height(p, r, outer, bounds); where {
-	case geom.Inside:
-		return s.wall(x, n, r)
-	case geom.On:
-		return onFace(s.wall(x, n, r), s.outside(x, n, r), side)
-	}
-	return s.outside(x, n, r)
+	return wall()
 }
 
 // cube returns the box of a sphere about the origin.

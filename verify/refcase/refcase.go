@@ -46,6 +46,12 @@ type Body struct {
 	Centre   [3]float64
 	Axis     *[3]float64
 	Ref      [3]float64
+	Phi1     float64
+	Phi2     float64
+	Bottom   float64 `json:"radius_bottom_at_z=-half_length"`
+	Top      float64 `json:"radius_top_at_z=+half_length"`
+	Major    float64 `json:"major_radius"`
+	Minor    float64 `json:"minor_radius"`
 }
 
 // Polarization is what the body or sheet carries, in global components.
@@ -57,7 +63,22 @@ type Polarization struct {
 	A    float64
 	B    [3]float64
 	C    float64
+	N    float64
 	A0   float64
+	// Terms of a polynomial: component, coefficient, powers.
+	Terms []Term
+}
+
+// Term is one term of a polynomial polarization.
+type Term struct {
+	Component   int
+	Coefficient float64
+	Powers      [3]int
+}
+
+// UnmarshalJSON reads the triple [component, coefficient, [i, j, k]].
+func (t *Term) UnmarshalJSON(raw []byte) error {
+	return json.Unmarshal(raw, &[]any{&t.Component, &t.Coefficient, &t.Powers})
 }
 
 // Parse reads the cases of a file from its content; name is used in errors.
@@ -221,6 +242,12 @@ func (c *Case) Ball() (centre r3.Vec, radius float64, err error) {
 		return centre, b.Radius, nil
 	case "annulus", "spherical_shell":
 		return centre, b.R2, nil
+	case "tube_sector":
+		return centre, math.Hypot(b.R2, b.HalfLen), nil
+	case "truncated_cone":
+		return centre, math.Hypot(max(b.Bottom, b.Top), b.HalfLen), nil
+	case "torus":
+		return centre, b.Major + b.Minor, nil
 	case "cylinder":
 		return centre, math.Hypot(b.Radius, b.HalfLen), nil
 	case "tube":
@@ -244,10 +271,20 @@ func (c *Case) largest() (p float64, sheet bool, err error) {
 		return r3.Norm(Vec(q.P)), false, nil
 	case "axial_z":
 		return math.Abs(q.C) * c.Body.HalfLen, false, nil
-	case "ball_r":
+	case "radial_unit":
+		return math.Abs(q.C), false, nil
+	case "ball_r", "radial_s":
 		return math.Abs(q.C) * a, false, nil
-	case "ball_r2":
+	case "ball_r2", "radial_s2", "axial_z2":
 		return math.Abs(q.C) * a * a, false, nil
+	case "axial_power", "radial_power", "central_power":
+		return math.Abs(q.C) * math.Pow(a, q.N), false, nil
+	case "polynomial":
+		far := r3.Norm(centre) + a
+		for _, t := range q.Terms {
+			p += math.Abs(t.Coefficient) * math.Pow(far, float64(t.Powers[0]+t.Powers[1]+t.Powers[2]))
+		}
+		return p, false, nil
 	case "sheet_linear":
 		if len(c.Body.Vertices) == 0 {
 			return math.Abs(q.A + r3.Dot(Vec(q.B), centre)), true, nil

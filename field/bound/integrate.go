@@ -1,0 +1,190 @@
+package bound
+
+import (
+	"fmt"
+	"math"
+
+	"example.com/boundpole/field"
+	"example.com/boundpole/field/cubature"
+	"example.com/boundpole/geom"
+	"example.com/boundpole/geom/pair"
+	"gonum.org/v1/gonum/spatial/r3"
+)
+
+// integrated is the field of a body by integration over its faces and cells; far away, where the charges of a neutral body
+// cancel, by the expansion of its dipole density.
+type integrated struct {
+	near   field.Sum
+	far    *field.Moments
+	centre r3.Vec
+	limit  float64 // distance from the centre beyond which the expansion serves; infinite if it does not
+	missed float64 // bound on the error of g that the expansion has at the limit because the dipole density is not smooth
+}
+
+// expansion order and reach: (1/4)^28 = 1e-17.
+const (
+	farOrder = 28
+	farReach = 4
+)
+
+// integrated builds the integrators of all faces and cells that carry charge.
+func (c *Charge) integrated() (field.Source, error) {
+	if where := c.infinite(); where != "" {
+		return nil, c.unsupported("its volume charge is infinite " + where + " inside the body; give a power of at least 1, or a body that keeps off it")
+	}
+	var s integrated
+	for _, f := range c.local.Faces() {
+		charted, ok := f.Surface.(geom.Charted)
+		if !ok {
+			return nil, c.unsupported(fmt.Sprintf("face %q has no charts; give its surface the method Charts", f.Name))
+		}
+		if !c.carries(f) {
+			continue
+		}
+		sign := f.Sign()
+		density := func(x, n r3.Vec) float64 { return sign * r3.Dot(c.p.At(x), n) }
+		charts := charted.Charts()
+		if f.Inward { // sides are those of the body: its outward normal is that of the chart
+			density = func(x, n r3.Vec) float64 { return r3.Dot(c.p.At(x), n) }
+			for i := range charts {
+				charts[i] = cubature.Reversed{Chart: charts[i]}
+			}
+		}
+		layer, err := cubature.NewLayer(charts, density, nil)
+		if err != nil {
+			return nil, fmt.Errorf("bound: face %q: %w", f.Name, err)
+		}
+		s.near = append(s.near, layer)
+	}
+	for _, cell := range c.local.Cells() {
+		blocked, ok := cell.(geom.Blocked)
+		if !ok {
+			return nil, c.unsupported(fmt.Sprintf("a cell of type %T has no blocks; give it the method Blocks", cell))
+		}
+		if c.free(cell) {
+			continue
+		}
+		volume, err := cubature.NewVolume(blocked.Blocks(), func(x r3.Vec) float64 { return -c.p.Divergence(x) }, nil)
+		if err != nil {
+			return nil, fmt.Errorf("bound: volume charge: %w", err)
+		}
+		s.near = append(s.near, volume)
+	}
+	box := c.local.Bounds()
+	s.centre = r3.Scale(0.5, r3.Add(box.Min, box.Max))
+	a := reach(box, s.centre)
+	s.limit = farReach * a
+	s.expand(c, a)
+	return &s, nil
+}
+
+// expand integrates the moments with two rules. Where they differ by more than the far field is worth, because p has a kink or
+// a singularity inside, the expansion is not used.
+func (s *integrated) expand(c *Charge, a float64) {
+	rule := func(n int) *field.Moments {
+		m := field.NewMoments(s.centre, a, farOrder)
+		for _, cell := range c.local.Cells() {
+			cell.Nodes(n, func(x r3.Vec, w float64) { m.AddDipole(x, r3.Scale(w, c.p.At(x))) })
+		}
+		return m
+	}
+	s.far = rule(farOrder/2 + 6)
+	if _, exact := degree(c.p); exact {
+		return
+	}
+	coarse := rule(farOrder / 2)
+	size := 0.0
+	for _, d := range [6]r3.Vec{{X: 1}, {Y: 1}, {Z: 1}, {X: 0.6, Y: 0.8}, {Y: 0.6, Z: -0.8}, {X: -0.8, Z: 0.6}} {
+		x := r3.Add(s.centre, r3.Scale(1.001*s.limit, d))
+		g := s.far.Field(x)
+		s.missed = max(s.missed, 10*r3.Norm(r3.Sub(g, coarse.Field(x))))
+		size = max(size, r3.Norm(g))
+	}
+	if s.missed > 1e-12*size {
+		s.limit = math.Inf(1)
+	}
+}
+
+// infinite says where inside the body a power law has infinite volume charge, "" if nowhere.
+func (c *Charge) infinite() string {
+	box := c.local.Bounds()
+	inside := func(x r3.Vec) bool { return c.inner.Locate(pair.VecOf(x), 0).Region != geom.Outside }
+	switch q := c.p.(type) {
+	case field.RadialPower:
+		const samples = 257
+		for k := range samples {
+			z := box.Min.Z + (box.Max.Z-box.Min.Z)*float64(k)/(samples-1)
+			if q.Power < 1 && inside(r3.Vec{Z: z}) {
+				return "on the axis"
+			}
+		}
+	case field.CentralPower:
+		if q.Power < 1 && inside(r3.Vec{}) {
+			return "at the origin"
+		}
+	}
+	return ""
+}
+
+// carries reports whether a face has any charge.
+func (c *Charge) carries(f geom.Face) bool {
+	lo, hi := c.extremes(f)
+	return lo != 0 || hi != 0
+}
+
+// free reports whether a cell has no charge.
+func (c *Charge) free(cell geom.Cell) bool {
+	lo, hi := c.extremesInside(cell)
+	return lo == 0 && hi == 0
+}
+
+// Field returns g at x.
+func (s *integrated) Field(x r3.Vec) r3.Vec {
+	if s.away(pair.VecOf(x)) {
+		return s.far.Field(x)
+	}
+	return s.near.Field(x)
+}
+
+func (s *integrated) away(x pair.Vec) bool {
+	d := r3.Sub(x.Value(), s.centre)
+	return math.Sqrt(r3.Norm2(d)) > s.limit
+}
+
+// Evaluate computes the arrays of dst; see field.Evaluator.
+func (s *integrated) Evaluate(dst *field.Values, at *field.Points, side field.Side) {
+	for lo := 0; lo < at.Len(); {
+		away := s.away(at.At(lo).X)
+		hi := lo + 1
+		for hi < at.Len() && s.away(at.At(hi).X) == away {
+			hi++
+		}
+		part := dst.Slice(lo, hi)
+		if away {
+			s.far.Evaluate(part, at.Slice(lo, hi), side)
+			s.allow(part, at, lo)
+		} else {
+			s.near.Evaluate(part, at.Slice(lo, hi), side)
+		}
+		lo = hi
+	}
+}
+
+// allow adds to the estimates of far points what the moments themselves may be wrong by: a dipole's worth, which falls like one.
+func (s *integrated) allow(dst *field.Values, at *field.Points, lo int) {
+	if s.missed == 0 {
+		return
+	}
+	add := func(a []float64, i int, v float64) {
+		if a != nil {
+			a[i] += v
+		}
+	}
+	for i := range max(len(dst.ErrPhi), len(dst.ErrG), len(dst.ErrGrad)) {
+		r := r3.Norm(r3.Sub(at.Vec(lo+i), s.centre))
+		e := s.missed * math.Pow(s.limit/r, 3)
+		add(dst.ErrPhi, i, e*r)
+		add(dst.ErrG, i, e)
+		add(dst.ErrGrad, i, 4*e/r)
+	}
+}

@@ -1,0 +1,153 @@
+package cubature
+
+import (
+	"math"
+	"sync"
+
+	"example.com/boundpole/geom"
+	"gonum.org/v1/gonum/spatial/r3"
+)
+
+// cell is a rectangular part of a block on which place and density are smooth.
+type cell struct {
+	block   geom.Block
+	density func(x r3.Vec) float64
+	index   int // of the block
+	lo, hi  [3]float64
+	centre  r3.Vec
+	radius  float64
+	scale   float64 // greatest coordinate
+	charge  float64 // integral of |rho|
+	peak    float64 // greatest |rho|
+	loose   float64 // charge that is not resolved
+	least   int     // place in solidLadder of the smallest rule that integrates charge and moments
+	faces   [6]panel
+
+	once [len(solidLadder)]sync.Once
+	sets [len(solidLadder)]*nodeSet
+}
+
+// solidLadder holds the numbers of points a direction of the rules for far points.
+var solidLadder = [...]int{4, 6, 8, 10, 12, 14, 16, 20, 24, 28, 32}
+
+// solidMeasured is the place in solidLadder of the rule that measures a cell.
+const solidMeasured = 5
+
+// at returns place and charge per volume of the parameter cube.
+func (c *cell) at(p [3]float64) (x r3.Vec, q float64) {
+	x, xu, xv, xw := c.block.At(p[0], p[1], p[2])
+	det := r3.Dot(r3.Cross(xu, xv), xw)
+	if det == 0 {
+		return x, 0
+	}
+	return x, c.density(x) * det
+}
+
+// nodes returns the charges of the rule solidLadder[k].
+func (c *cell) nodes(k int) *nodeSet {
+	c.once[k].Do(func() {
+		n := solidLadder[k]
+		g := legendre(n)
+		set := newNodeSet(n * n * n)
+		volume := (c.hi[0] - c.lo[0]) * (c.hi[1] - c.lo[1]) * (c.hi[2] - c.lo[2]) / 8
+		for i := range g.X {
+			for j := range g.X {
+				for l := range g.X {
+					x, q := c.at([3]float64{between(c.lo[0], c.hi[0], g.X[i]), between(c.lo[1], c.hi[1], g.X[j]), between(c.lo[2], c.hi[2], g.X[l])})
+					set.put((i*n+j)*n+l, x, q*g.W[i]*g.W[j]*g.W[l]*volume)
+				}
+			}
+		}
+		c.sets[k] = set
+	})
+	return c.sets[k]
+}
+
+// measure finds centre, radius, magnitudes, the smallest rule and the faces.
+func (c *cell) measure() {
+	const top = solidMeasured
+	fine := c.nodes(top)
+	n := float64(len(fine.x))
+	c.centre = r3.Vec{}
+	for i := range fine.x {
+		c.centre = r3.Add(c.centre, r3.Scale(1/n, r3.Vec{X: fine.x[i], Y: fine.y[i], Z: fine.z[i]}))
+	}
+	c.radius, c.charge, c.scale = 0, 0, 0
+	for i := range fine.x {
+		c.include(r3.Vec{X: fine.x[i], Y: fine.y[i], Z: fine.z[i]})
+		c.charge += math.Abs(fine.q[i])
+	}
+	ends := [5]float64{-1, -0.5, 0, 0.5, 1}
+	for axis := range 3 {
+		for _, a := range ends {
+			for _, b := range ends {
+				for _, e := range [2]float64{-1, 1} {
+					var p [3]float64
+					p[axis], p[(axis+1)%3], p[(axis+2)%3] = e, a, b
+					for k := range p {
+						p[k] = between(c.lo[k], c.hi[k], p[k])
+					}
+					x, _, _, _ := c.block.At(p[0], p[1], p[2])
+					c.include(x)
+				}
+			}
+		}
+	}
+	c.radius *= 1.02
+	c.least = top - 1
+	want := fine.moments(c.centre, c.radius)
+	for k := range top {
+		if closeTo(c.nodes(k).moments(c.centre, c.radius), want, 16*u*c.charge) {
+			c.least = k
+			break
+		}
+	}
+}
+
+func (c *cell) include(x r3.Vec) {
+	c.radius = max(c.radius, r3.Norm(r3.Sub(x, c.centre)))
+	c.scale = max(c.scale, scaleOf(x))
+}
+
+// cellFace is a side of a cell as a chart with the normal outward.
+type cellFace struct {
+	block geom.Block
+	axis  int
+	at    float64
+	upper bool
+	lo    [2]float64 // of the two other parameters of the block
+	span  [2]float64
+}
+
+// At returns the point of the face.
+func (f cellFace) At(u, v float64) (x, xu, xv r3.Vec) {
+	var p [3]float64
+	i, j := (f.axis+1)%3, (f.axis+2)%3
+	if !f.upper {
+		i, j = j, i
+	}
+	p[f.axis], p[i], p[j] = f.at, f.lo[0]+u*f.span[0], f.lo[1]+v*f.span[1]
+	x, a, b, c := f.block.At(p[0], p[1], p[2])
+	d := [3]r3.Vec{a, b, c}
+	return x, r3.Scale(f.span[0], d[i]), r3.Scale(f.span[1], d[j])
+}
+
+// makeFaces makes the panels of the sides of the cell, number n, for the gradient of uniform charge.
+func (c *cell) makeFaces(n int) {
+	for axis := range 3 {
+		for side := range 2 {
+			i, j := (axis+1)%3, (axis+2)%3
+			at := c.hi[axis]
+			if side == 0 {
+				i, j = j, i
+				at = c.lo[axis]
+			}
+			f := &c.faces[2*axis+side]
+			f.chart = cellFace{block: c.block, axis: axis, at: at, upper: side == 1, lo: [2]float64{c.lo[i], c.lo[j]},
+				span: [2]float64{c.hi[i] - c.lo[i], c.hi[j] - c.lo[j]}}
+			f.index = 6*n + 2*axis + side
+			f.hi = [2]float64{1, 1}
+			f.measure()
+		}
+	}
+}
