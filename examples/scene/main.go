@@ -32,15 +32,15 @@ import (
 var defaults embed.FS
 
 func main() {
-	signal.Ignore(brokenPipe) // a broken pipe is an error of the write, so that temporary files are removed
+	signal.Ignore(sigPipe) // a broken pipe is an error of the write, so that temporary files are removed
 	ctx, stop := signal.NotifyContext(context.Background(), os.Interrupt, syscall.SIGTERM)
 	status := run(ctx, os.Args[1:], os.Stdout, os.Stderr)
 	stop()
 	os.Exit(status)
 }
 
-// brokenPipe is SIGPIPE, by its number because not every platform has the name.
-const brokenPipe = syscall.Signal(13)
+// sigPipe is SIGPIPE, by its number because not every platform has the name.
+const sigPipe = syscall.Signal(13)
 
 // Exit statuses.
 const (
