@@ -3,6 +3,7 @@ package bound
 import (
 	"fmt"
 	"math"
+	"sync"
 
 	"example.com/boundpole/field"
 	"example.com/boundpole/field/cubature"
@@ -12,8 +13,13 @@ import (
 )
 
 // integrated is the field of a body by integration over its faces and cells; far away, where the charges of a neutral body
-// cancel, by the expansion of its dipole density.
+// cancel, by the expansion of its dipole density. The integrators are prepared when a field is first asked for.
 type integrated struct {
+	charge *Charge
+	layers []func() (field.Evaluator, error)
+	once   sync.Once
+	err    error // why preparation failed: values are then NaN with field.NotConverged
+
 	near   field.Sum
 	far    *field.Moments
 	centre r3.Vec
@@ -27,12 +33,12 @@ const (
 	farReach = 4
 )
 
-// integrated builds the integrators of all faces and cells that carry charge.
+// integrated lists the integrators of all faces and cells that carry charge.
 func (c *Charge) integrated() (field.Source, error) {
 	if where := c.infinite(); where != "" {
 		return nil, c.unsupported("its volume charge is infinite " + where + " inside the body; give a power of at least 1, or a body that keeps off it")
 	}
-	var s integrated
+	s := &integrated{charge: c}
 	for _, f := range c.local.Faces() {
 		charted, ok := f.Surface.(geom.Charted)
 		if !ok {
@@ -50,11 +56,7 @@ func (c *Charge) integrated() (field.Source, error) {
 				charts[i] = cubature.Reversed{Chart: charts[i]}
 			}
 		}
-		layer, err := cubature.NewLayer(charts, density, nil)
-		if err != nil {
-			return nil, fmt.Errorf("bound: face %q: %w", f.Name, err)
-		}
-		s.near = append(s.near, layer)
+		s.layers = append(s.layers, func() (field.Evaluator, error) { return cubature.NewLayer(charts, density, nil) })
 	}
 	for _, cell := range c.local.Cells() {
 		blocked, ok := cell.(geom.Blocked)
@@ -64,18 +66,26 @@ func (c *Charge) integrated() (field.Source, error) {
 		if c.free(cell) {
 			continue
 		}
-		volume, err := cubature.NewVolume(blocked.Blocks(), func(x r3.Vec) float64 { return -c.p.Divergence(x) }, nil)
-		if err != nil {
-			return nil, fmt.Errorf("bound: volume charge: %w", err)
-		}
-		s.near = append(s.near, volume)
+		density := func(x r3.Vec) float64 { return -c.p.Divergence(x) }
+		s.layers = append(s.layers, func() (field.Evaluator, error) { return cubature.NewVolume(blocked.Blocks(), density, nil) })
 	}
 	box := c.local.Bounds()
 	s.centre = r3.Scale(0.5, r3.Add(box.Min, box.Max))
-	a := reach(box, s.centre)
-	s.limit = farReach * a
-	s.expand(c, a)
-	return &s, nil
+	s.limit = farReach * reach(box, s.centre)
+	return s, nil
+}
+
+// prepare builds the integrators and the expansion.
+func (s *integrated) prepare() {
+	for _, build := range s.layers {
+		src, err := build()
+		if err != nil {
+			s.err = err
+			return
+		}
+		s.near = append(s.near, src.(field.Source))
+	}
+	s.expand(s.charge, s.limit/farReach)
 }
 
 // expand integrates the moments with two rules. Where they differ by more than the far field is worth, because p has a kink or
@@ -140,6 +150,10 @@ func (c *Charge) free(cell geom.Cell) bool {
 
 // Field returns g at x.
 func (s *integrated) Field(x r3.Vec) r3.Vec {
+	s.once.Do(s.prepare)
+	if s.err != nil {
+		return field.Nowhere(field.NotConverged).G
+	}
 	if s.away(pair.VecOf(x)) {
 		return s.far.Field(x)
 	}
@@ -153,6 +167,11 @@ func (s *integrated) away(x pair.Vec) bool {
 
 // Evaluate computes the arrays of dst; see field.Evaluator.
 func (s *integrated) Evaluate(dst *field.Values, at *field.Points, side field.Side) {
+	s.once.Do(s.prepare)
+	if s.err != nil {
+		field.Fill(dst, at, func(field.Point, field.Want) field.Value { return field.Nowhere(field.NotConverged) })
+		return
+	}
 	for lo := 0; lo < at.Len(); {
 		away := s.away(at.At(lo).X)
 		hi := lo + 1

@@ -60,11 +60,11 @@ func (b *powerBody) away(p *roundPoint, want field.Want) field.Value {
 	return p.value(&c, &k, b.faces.across(), want)
 }
 
-// widen doubles the sizes that the estimates are made of: moments and densities of powers carry roundings of their own.
+// widen triples the sizes that the estimates are made of: moments and densities of powers carry roundings of their own.
 func (c *constant) widen() {
-	c.sizeU *= 2
-	c.sizeG *= 2
-	c.sizeH *= 2
+	c.sizeU *= 3
+	c.sizeG *= 3
+	c.sizeH *= 3
 }
 
 // finish makes the value of the sums at a point that is where status says, with what the rules may have left out.

@@ -305,6 +305,15 @@ func (c *Case) largest() (p float64, sheet bool, err error) {
 			}
 			p = max(p, r3.Norm(w))
 		}
+		if len(c.corners()) == 0 { // a round body: the centre and the gradient over the ball
+			w := Vec(q.P0)
+			sum := 0.0
+			for k, f := range [3]*float64{&w.X, &w.Y, &w.Z} {
+				*f += g[k][0]*centre.X + g[k][1]*centre.Y + g[k][2]*centre.Z
+				sum += g[k][0]*g[k][0] + g[k][1]*g[k][1] + g[k][2]*g[k][2]
+			}
+			p = r3.Norm(w) + a*math.Sqrt(sum/3)
+		}
 		return p, false, nil
 	}
 	return 0, false, fmt.Errorf("refcase: polarization %q is not known here", q.Kind)
