@@ -9,7 +9,7 @@ import (
 )
 
 // TestTriples holds error estimates against random triples of body, polarization and point with weight on the hard places
-// (verify/testdata/triples, 400 a family, made by verify/testdata/more/gen2.py): true in 99.9 % of cases, median overestimate
+// (verify/testdata/triples, 400 a family of which the slower ones are sampled, made by verify/testdata/more/gen2.py): true in 99.9 % of cases, median overestimate
 // at most 100, and the contract of 1e-10 wherever the status is not NotConverged.
 func TestTriples(t *testing.T) {
 	if testing.Short() {
@@ -27,9 +27,11 @@ func TestTriples(t *testing.T) {
 				seen++
 				switch family {
 				case "box-polynomial", "ellipsoid-affine": // over faces and cells: up to a second each
-					return seen%40 == 0
+					return seen%80 == 0
+				case "cone", "torus", "disc-linear", "cylinder-axial": // quick, or close to a limit
+					return true
 				}
-				return true
+				return seen%4 == 0
 			}, "triples/"+filepath.Base(file))
 		})
 	}
