@@ -19,7 +19,7 @@ func (p *parser) quotedText() error {
 			n, problem := escape(src[i:])
 			if problem != "" {
 				p.pos = i
-				return p.fail(problem, `escapes are \" \\ \/ \b \f \n \r \t and \uXXXX`)
+				return p.fail(problem, `escapes are \" \\ \/ \b \f \n \r \t and \u with four hexadecimal digits`)
 			}
 			i += n
 		case c < 0x20:
