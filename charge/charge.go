@@ -60,7 +60,7 @@ func Polarized(body geom.Body, p field.Polarization) (Part, error) {
 }
 
 // Sheet returns a sheet with the trapped charge density + gradient.x, in C/m^2 and C/m^3, x in the sheet's own frame.
-// Gradients need a polygon so far; on a disc or annulus they are refused with bound.ErrUnsupported.
+// On a sheet of a kind that is none of package geom it fails with bound.ErrUnsupported.
 func Sheet(sheet geom.Sheet, density float64, gradient r3.Vec) (Part, error) {
 	if err := sheet.Check(); err != nil {
 		return Part{}, err
@@ -83,13 +83,14 @@ func onSheet(sheet geom.Sheet, density float64, gradient r3.Vec) (field.Source, 
 		if gradient.X == 0 && gradient.Y == 0 {
 			return element.NewDisc(s, density+gradient.Z*s.Z)
 		}
+		return element.NewLinearDisc(s, density, gradient)
 	case geom.Annulus:
 		if gradient.X == 0 && gradient.Y == 0 {
 			return element.NewAnnulus(s, density+gradient.Z*s.Z)
 		}
+		return element.NewLinearAnnulus(s, density, gradient)
 	}
-	return nil, fmt.Errorf("charge: gradient of the density on a sheet of type %T: %w yet; give a constant density", sheet,
-		bound.ErrUnsupported)
+	return nil, fmt.Errorf("charge: a sheet of type %T: %w; give a polygon, disc or annulus", sheet, bound.ErrUnsupported)
 }
 
 // Point returns a point charge of q coulombs at x.

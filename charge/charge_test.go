@@ -94,10 +94,44 @@ func TestPointAndDipole(t *testing.T) {
 	}
 }
 
+// TestLinearSheets checks a density that grows along x on a disc and an annulus: far away the total charge a A and the dipole
+// b pi (R^4 - r^4)/4 about the centre, on the face half the jump sigma/eps0 of the place.
+func TestLinearSheets(t *testing.T) {
+	const a, b, inner, outer = 2e-6, 3e-6, 0.5, 1.0
+	for _, c := range []struct {
+		name  string
+		sheet geom.Sheet
+		inner float64
+	}{{"disc", geom.Disc{Radius: outer}, 0}, {"annulus", geom.Annulus{Inner: inner, Outer: outer}, inner}} {
+		tilted, err := geom.Turn(r3.Vec{Y: 1}, 90) // normal along x, the gradient along -z
+		if err != nil {
+			t.Fatal(err)
+		}
+		part, err := charge.Sheet(geom.SheetAt(c.sheet, tilted), a, r3.Vec{X: b})
+		if err != nil {
+			t.Fatalf("%s: %v", c.name, err)
+		}
+		m := charge.Model{Parts: []charge.Part{part}}
+		q := a * math.Pi * (outer*outer - c.inner*c.inner)
+		p := b * math.Pi / 4 * (math.Pow(outer, 4) - math.Pow(c.inner, 4))
+		const far = 1e4
+		up, down := m.At(r3.Vec{Z: far}, field.Mean), m.At(r3.Vec{Z: -far}, field.Mean)
+		scale := 4 * math.Pi * charge.Epsilon0 * far
+		near(t, c.name+" charge from afar", (up.V+down.V)/2*scale, q, 1e-8*q)     // the quadrupole is (R/far)^2
+		near(t, c.name+" dipole from afar", (down.V-up.V)/2*scale*far, p, 1e-7*p) // the octupole likewise, and V cancels by 1e4
+		x := r3.Vec{Y: 0.1, Z: -0.75}                                             // x = 0.75 of the sheet
+		jump := r3.Sub(m.At(x, field.Outside).E, m.At(x, field.Inside).E)
+		near(t, c.name+" jump", jump.X*charge.Epsilon0, a+0.75*b, 1e-12*a) // rounding of E, of which the jump is the larger part
+	}
+}
+
+// strange is a sheet that the package does not know.
+type strange struct{ geom.Sheet }
+
 // TestRefusals checks that what cannot be computed is refused in words.
 func TestRefusals(t *testing.T) {
-	if _, err := charge.Sheet(geom.Disc{Radius: 1}, 1, r3.Vec{X: 1}); !errors.Is(err, bound.ErrUnsupported) {
-		t.Errorf("gradient on a disc: %v, want %v", err, bound.ErrUnsupported)
+	if _, err := charge.Sheet(strange{geom.Disc{Radius: 1}}, 1, r3.Vec{}); !errors.Is(err, bound.ErrUnsupported) {
+		t.Errorf("a sheet of an unknown kind: %v, want %v", err, bound.ErrUnsupported)
 	}
 	if _, err := charge.Sheet(geom.Disc{Radius: -1}, 1, r3.Vec{}); err == nil || !strings.Contains(err.Error(), "radius") {
 		t.Errorf("negative radius: %v", err)
@@ -105,8 +139,8 @@ func TestRefusals(t *testing.T) {
 	if _, err := charge.Sheet(geom.Disc{Radius: 1}, math.NaN(), r3.Vec{}); err == nil {
 		t.Error("a density that is not a number was accepted")
 	}
-	radial := field.RadialPower{Coefficient: 1} // its volume charge -1/s is infinite on the axis
-	if _, err := charge.Polarized(geom.Ellipsoid{SemiAxes: r3.Vec{X: 1, Y: 2, Z: 3}}, radial); !errors.Is(err, bound.ErrUnsupported) {
-		t.Errorf("unit radial on an ellipsoid: %v, want %v", err, bound.ErrUnsupported)
+	spokes := field.RadialPower{Coefficient: 1}
+	if _, err := charge.Polarized(geom.Box{Size: r3.Vec{X: 1, Y: 1, Z: 1}}, spokes); !errors.Is(err, bound.ErrUnsupported) {
+		t.Errorf("charge infinite on the axis of a box: %v, want %v", err, bound.ErrUnsupported)
 	}
 }

@@ -136,6 +136,22 @@ func TestDefaultScene(t *testing.T) {
 	}
 }
 
+// TestShapes runs the scene of shapes and laws: all hand checks hold, and what has no number is null.
+func TestShapes(t *testing.T) {
+	dir := t.TempDir()
+	status, report, stderr := start(t, "-out", dir, "testdata/shapes.json")
+	if status != done || !strings.Contains(report, "All hand checks hold (24).") {
+		t.Errorf("status %d, want %d and all hand checks held: %s\n%s", status, done, stderr, report)
+	}
+	data, err := os.ReadFile(filepath.Join(dir, "results.json"))
+	if err != nil {
+		t.Fatal(err)
+	}
+	if !strings.Contains(string(data), `"volume_density": {"min": null, "max": -7.5e-4}`) {
+		t.Error("the infinite density at the axis is not null")
+	}
+}
+
 // TestFiles checks what lies in the folder, and that it is there as a whole.
 func TestFiles(t *testing.T) {
 	dir := t.TempDir()

@@ -15,6 +15,11 @@ func part(keys string) string {
 	return `{"parts": [{"name": "a", ` + keys + `, "magnetized": {"remanence": [0, 0, 1.2]}}]}`
 }
 
+// powered returns a scene of one polarized part with a law of a power.
+func powered(shape, law, power string) string {
+	return `{"parts": [{"name": "a", ` + shape + `, "polarized": {"` + law + `": {"coefficient": 1, "power": ` + power + `}}}]}`
+}
+
 // ask returns a scene of one box with the given requests.
 func ask(requests string) string {
 	return strings.TrimSuffix(part(`"shape": "box", "size": [1, 1, 1]`), "}") + `, "wanted": [` + requests + `]}`
@@ -52,12 +57,24 @@ var refusals = []struct {
 	{"polarization overflows", part(`"shape": "sphere", "radius": 1, "scale": 1e308`), "/parts/0/magnetized", []string{"overflows", "smaller"}},
 	{"centre too far", part(`"shape": "sphere", "radius": 1, "centre": [1e70, 0, 0]`), "/parts/0/centre", []string{"beyond 1e+60"}},
 	{"copies too far", part(`"shape": "sphere", "radius": 1, "copies": {"count": 100000, "step": [1e307, 0, 0]}`), "/parts/0/copies", []string{"copy 2", "beyond"}},
-	{"gradient on a disc", `{"parts": [{"name": "a", "shape": "disc", "radius": 1, "charged": {"density": 1, "gradient": [1,0,0]}}]}`,
-		"/parts/0/charged", []string{"yet", "constant density"}},
+	{"negative power at the axis", powered(`"shape": "cylinder", "radius": 1, "height": 1`, "radial_power", "-0.5"), "/parts/0/polarized/radial_power/power", []string{"negative", "axis", "-0.5", "at least 0"}},
+	{"negative power on a box", powered(`"shape": "box", "size": [1,1,1]`, "radial_power", "-1"), "/parts/0/polarized/radial_power/power", []string{"axis", "keeps off"}},
+	{"negative power in a wedge", powered(`"shape": "arc", "inner": 0, "outer": 1, "height": 1, "from": 0, "to": 90`, "radial_power", "-1"), "/parts/0/polarized/radial_power/power", []string{"axis"}},
+	{"negative power in the poles of a shell", powered(`"shape": "hollow_sphere", "inner": 1, "outer": 2`, "radial_power", "-1"), "/parts/0/polarized/radial_power/power", []string{"axis"}},
+	{"negative power at the centre", powered(`"shape": "sphere", "radius": 1`, "central_power", "-1"), "/parts/0/polarized/central_power/power", []string{"negative", "centre"}},
+	{"negative power at a corner", powered(`"shape": "polyhedron", "vertices": [`+corners+`], "faces": [[0,3,2,1],[4,5,6,7],`+sides+`]`, "central_power", "-2"), "/parts/0/polarized/central_power/power", []string{"centre"}},
+	{"infinite charge in a box", powered(`"shape": "box", "size": [1,1,1]`, "radial_power", "0.5"), "/parts/0/polarized/radial_power/power", []string{"infinite at the axis", "box", "at least 1"}},
+	{"polynomial overflows", `{"parts": [{"name": "a", "shape": "box", "size": [1e30,1,1], "polarized": {"polynomial": [{"component": "x", "coefficient": 1, "powers": [64,0,0]}]}}]}`, "/parts/0/polarized", []string{"overflows"}},
+	{"power overflows", powered(`"shape": "sphere", "radius": 1e10`, "central_power", "64"), "/parts/0/polarized", []string{"overflows"}},
+	{"arc beyond a turn", part(`"shape": "arc", "inner": 1, "outer": 2, "height": 1, "from": 0, "to": 400`), "/parts/0/to", []string{"more than one turn", "360"}},
+	{"arc far from zero", part(`"shape": "arc", "inner": 1, "outer": 2, "height": 1, "from": 1e9, "to": 1000000090`), "/parts/0", []string{"whole turns"}},
+	{"full arc without a bore", part(`"shape": "arc", "inner": 0, "outer": 2, "height": 1, "from": 0, "to": 360`), "/parts/0", []string{"give a cylinder"}},
+	{"cone end below rounding", part(`"shape": "cone", "bottom": 1, "top": 1e-20, "height": 1`), "/parts/0", []string{"give 0 for a tip"}},
+	{"density overflows", `{"parts": [{"name": "a", "shape": "disc", "radius": 1e10, "charged": {"density": 1, "gradient": [1e300,0,0]}}]}`, "/parts/0/charged", []string{"overflows"}},
 	{"sheet not plane", `{"parts": [{"name": "a", "shape": "polygon", "vertices": [[0,0,0],[1,0,0],[1,1,0.3],[0,1,0]], "charged": {"density": 1}}]}`,
 		"/parts/0", []string{"not plane"}},
 	{"inert body that is none", `{"parts": [{"name": "a", "shape": "prism", "height": 1, "base": [[0,0],[1,1],[1,0],[0,1]]}]}`, "/parts/0", []string{"cross"}},
-	{"later shape", part(`"shape": "torus", "major": 2, "minor": 1`), "/parts/0/shape", []string{"not supported yet"}},
+	{"later shape", part(`"shape": "mesh", "file": "a.stl"`), "/parts/0/shape", []string{"not supported yet"}},
 	{"later request", ask(`{"reach": {"flux_density": 5e-4}}`), "/wanted/0/reach", []string{"not supported yet"}},
 	{"missing points file", ask(`{"points_file": "nope.csv"}`), "/wanted/0/points_file", []string{"nope.csv"}},
 	{"points file with decimal commas", ask(`{"points_file": "comma.csv"}`), "/wanted/0/points_file", []string{"comma.csv:1", "decimal comma"}},

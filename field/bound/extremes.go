@@ -28,7 +28,7 @@ func (c *Charge) extremes(f geom.Face) (lo, hi float64) {
 	case affine && plane:
 		planeExtremes(&s, f.Surface, a, n)
 	case affine && a.Gradient == [3][3]float64{}:
-		roundExtremes(&s, f.Surface, a.Value)
+		roundExtremes(&s, f, a.Value)
 	default:
 		c.sample(&s, f)
 	}
@@ -60,14 +60,49 @@ func planeExtremes(s *span, face geom.Surface, p field.Affine, n r3.Vec) {
 	}
 }
 
-// roundExtremes sees the extremes of p.n for uniform p on a full round face.
-func roundExtremes(s *span, face geom.Surface, p r3.Vec) {
-	k := r3.Norm(p)
-	if _, ok := face.(geom.Wall); ok {
-		k = math.Hypot(p.X, p.Y)
+// roundExtremes sees the extremes of p.n for uniform p on a round face, or on a sector of one.
+func roundExtremes(s *span, f geom.Face, p r3.Vec) {
+	across := math.Hypot(p.X, p.Y)
+	switch w := f.Surface.(type) {
+	case geom.Wall:
+		s.see(-across)
+		s.see(across)
+	case geom.ConeWall:
+		l := w.Slant()
+		along, across := f.Sign()*p.Z*(w.R1-w.R2)/l, across*(w.Z2-w.Z1)/l
+		s.see(along - across)
+		s.see(along + across)
+	case geom.WallSector:
+		wallSectorExtremes(s, w, r3.Scale(f.Sign(), p))
+	case geom.Sector:
+		s.see(f.Sign() * p.Z)
+	default:
+		k := r3.Norm(p)
+		s.see(-k)
+		s.see(k)
 	}
-	s.see(-k)
-	s.see(k)
+}
+
+// wallSectorExtremes sees p.n at both ends, and where the normal is along or against p if the sector reaches there.
+func wallSectorExtremes(s *span, w geom.WallSector, p r3.Vec) {
+	from := w.From
+	if w.Degrees {
+		from *= math.Pi / 180
+	}
+	for _, at := range [2]float64{0, w.Angle()} {
+		sin, cos := math.Sincos(from + at)
+		s.see(p.X*cos + p.Y*sin)
+	}
+	k := math.Hypot(p.X, p.Y)
+	for _, way := range [2]float64{1, -1} {
+		turn := math.Mod(math.Atan2(way*p.Y, way*p.X)-from, 2*math.Pi)
+		if turn < 0 {
+			turn += 2 * math.Pi
+		}
+		if turn <= w.Angle() {
+			s.see(way * k)
+		}
+	}
 }
 
 // sample sees sigma at the nodes of two rules; what differs by rounding alone counts as one value.
@@ -80,7 +115,7 @@ func (c *Charge) sample(s *span, f geom.Face) {
 
 // level makes one value of a span that rounding alone has opened.
 func (s *span) level() {
-	if size := max(math.Abs(s.lo), math.Abs(s.hi)); s.hi-s.lo <= 64*0x1p-53*size {
+	if size := max(math.Abs(s.lo), math.Abs(s.hi)); !math.IsInf(size, 0) && s.hi-s.lo <= 64*0x1p-53*size {
 		mean := 0.5 * (s.lo + s.hi)
 		s.lo, s.hi = mean, mean
 	}
@@ -120,6 +155,14 @@ func (c *Charge) extremesInside(cell geom.Cell) (lo, hi float64) {
 	}
 	for _, n := range [2]int{6, 9} {
 		cell.Nodes(n, func(x r3.Vec, _ float64) { see(x) })
+	}
+	for _, f := range c.local.Faces() { // the extremes of a harmonic density, and most others, lie there
+		f.Surface.Nodes(9, func(x, _ r3.Vec, _ float64) { see(x) })
+		if p, ok := f.Surface.(geom.Polygon); ok {
+			for _, v := range p.Vertices {
+				see(v)
+			}
+		}
 	}
 	s.level()
 	return s.lo, s.hi

@@ -247,6 +247,9 @@ func (r *Results) Record(i int, rec *solve.Record) error {
 		r.key("B")
 		r.vec(rec.Magnetic.B)
 	}
+	if rec.Gradient != nil {
+		r.gradient(rec.Gradient)
+	}
 	r.estimates(rec)
 	if rec.Status != field.Regular {
 		r.key("status")
@@ -266,6 +269,38 @@ func (r *Results) Record(i int, rec *solve.Record) error {
 	}
 	r.buf = append(r.buf, '}')
 	return r.drain(1 << 15)
+}
+
+// gradient writes the gradients, row i that of component i.
+func (r *Results) gradient(g *solve.Gradient) {
+	r.key("gradient")
+	r.buf = append(r.buf, '{')
+	if r.setup.Electric {
+		r.buf = append(r.buf, "\"E\": "...)
+		r.tensor(g.E)
+	}
+	if r.setup.Magnetic {
+		if r.setup.Electric {
+			r.buf = append(r.buf, ", "...)
+		}
+		r.buf = append(r.buf, "\"B\": "...)
+		r.tensor(g.B)
+	}
+	r.buf = append(r.buf, '}')
+}
+
+// tensor writes three rows, null as a whole if it does not exist.
+func (r *Results) tensor(t *solve.Tensor) {
+	if t == nil {
+		r.buf = append(r.buf, "null"...)
+		return
+	}
+	r.buf = append(r.buf, '[')
+	for i, row := range t {
+		r.comma(i)
+		r.vec(r3.Vec{X: row[0], Y: row[1], Z: row[2]})
+	}
+	r.buf = append(r.buf, ']')
 }
 
 // estimates writes the bounds on the numerical error.

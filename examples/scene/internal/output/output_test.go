@@ -117,6 +117,42 @@ func TestTable(t *testing.T) {
 	}
 }
 
+// TestGradient checks gradients in the document: three rows a kind, null where there is none.
+func TestGradient(t *testing.T) {
+	s, recs := filled(t, strings.Replace(bothKinds, `"line": {"from": [-13,0,0], "to": [1,1,1], "count": 2}, "csv": "x.csv"`, `"points": [[-13,0,0],[1,1,1]], "gradient": true`, 1))
+	var b bytes.Buffer
+	r := NewResults(s, &b)
+	r.Open(&s.Scene.Wanted[0])
+	r.OpenRecords()
+	for i := range recs {
+		if err := r.Record(i, &recs[i]); err != nil {
+			t.Fatal(err)
+		}
+	}
+	r.CloseRecords()
+	if err := r.Close(nil); err != nil {
+		t.Fatal(err)
+	}
+	if err := r.Flush(); err != nil {
+		t.Fatal(err)
+	}
+	var answer struct {
+		Records []struct{ Gradient struct{ E, B *[3][3]float64 } }
+	}
+	if err := json.Unmarshal(b.Bytes(), &answer); err != nil {
+		t.Fatalf("%v in\n%s", err, b.String())
+	}
+	for i, want := range []bool{true, false} { // the second point lies on a corner
+		if got := answer.Records[i].Gradient.B != nil; got != want {
+			t.Errorf("record %d: gradient of B there: %t, want %t", i, got, want)
+		}
+		e, b := answer.Records[i].Gradient.E, answer.Records[i].Gradient.B
+		if e == nil || solve.Tensor(*e) != *recs[i].Gradient.E || b != nil && solve.Tensor(*b) != *recs[i].Gradient.B {
+			t.Errorf("record %d: gradients %v and %v, want %v", i, e, b, recs[i].Gradient)
+		}
+	}
+}
+
 // TestResults checks the document that is written: valid, keys in order, null with status, names as they are.
 func TestResults(t *testing.T) {
 	s, recs := filled(t, bothKinds)

@@ -106,7 +106,7 @@ func (r *Report) faces(t *table, c *solve.PartCharge) {
 	}
 	switch {
 	case c.Solid:
-		t.add(name, "(inside)", sized(c.Volume, unit, 3), span(q.inner, c.Min, c.Max), value(q.charge, c.Inside), "")
+		t.add(name, "(inside)", sized(c.Volume, unit, 3), inner(q.inner, c), value(q.charge, c.Inside), "")
 	case len(c.Faces) == 0 && p.Kind == solve.Charged:
 		t.add(name, "(point)", "", "", value(q.charge, c.Total), "")
 	case len(c.Faces) == 0:
@@ -185,6 +185,21 @@ func sized(si float64, unit scenefile.Unit, n int) string {
 		v /= unit.Metres()
 	}
 	return fixed(v, v) + " " + string(unit) + []string{2: "²", 3: "³"}[n]
+}
+
+// inner prints the range of the volume density; an infinite end is named by its place.
+func inner(quantity string, c *solve.PartCharge) string {
+	finite := c.Min
+	if solve.Missing(finite) {
+		finite = c.Max
+	}
+	switch {
+	case c.Infinite == "":
+		return span(quantity, c.Min, c.Max)
+	case solve.Missing(finite):
+		return "infinite at the " + c.Infinite
+	}
+	return span(quantity, finite, finite) + " … infinite at the " + c.Infinite
 }
 
 // span prints the range of a density.

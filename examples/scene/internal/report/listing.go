@@ -40,7 +40,7 @@ func (l *listing) see(i int, rec *solve.Record) {
 		l.records = append(l.records, *rec)
 		return
 	}
-	if rec.Status >= field.OnEdge {
+	if rec.Status >= field.OnEdge && rec.Status != field.NotConverged {
 		l.none++
 	}
 	for k, size := range [2]func(*solve.Record) float64{sizeE, sizeB} {
@@ -114,6 +114,9 @@ func (l *listing) rows(w io.Writer) {
 		}
 		t.print(w)
 	}
+	if l.q.Gradient {
+		l.gradients(w)
+	}
 	if l.q.ByPart {
 		l.parts(w)
 	}
@@ -180,12 +183,12 @@ func (l *listing) coordinate(metres float64) string {
 // of the other kind, values are those that may have missed the accuracy.
 func (l *listing) where(rec *solve.Record, status field.Status, other string, values ...string) string {
 	for _, name := range rec.Missed {
-		if status <= field.OnFace && slices.Contains(values, name) {
+		if converged := status <= field.OnFace || status == field.NotConverged; converged && slices.Contains(values, name) {
 			return name + " not reached"
 		}
 	}
 	switch {
-	case status > field.OnFace:
+	case status > field.OnFace && status != field.NotConverged: // what has not converged further may be as good as wanted
 		return status.String()
 	case rec.Inside >= 0:
 		return "in " + l.report.name(rec.Inside)

@@ -105,6 +105,28 @@ func TestSections(t *testing.T) {
 	}
 }
 
+// TestVarying checks what is printed of cylinders whose polarization varies, and of gradients.
+func TestVarying(t *testing.T) {
+	text := printed(t, `{"length": "mm", "parts": [
+		{"name": "rod", "shape": "cylinder", "radius": 2, "height": 6, "polarized": {"axial_power": {"coefficient": 1e-6, "power": 1}}},
+		{"name": "fan", "shape": "cylinder", "radius": 3, "height": 1, "centre": [0,0,20], "polarized": {"radial_power": {"coefficient": 1e-6, "power": 1}}},
+		{"name": "hedgehog", "shape": "cylinder", "radius": 4, "height": 1, "centre": [0,0,40], "polarized": {"radial_power": {"coefficient": 1e-6, "power": 0.5}}},
+		{"name": "ring", "shape": "torus", "major": 3, "minor": 1, "centre": [0,0,60], "magnetized": {"uniform": [0,0,1e6]}}],
+		"wanted": [{"points": [[0,0,10],[0,0,3]], "gradient": true}]}`, false)
+	flat := strings.Join(strings.Fields(text), " ")
+	for _, words := range []string{
+		"rod bottom 12.566 mm² 3.0000 µC/m² 37.699 pC rod top 12.566 mm² 3.0000 µC/m² 37.699 pC rod wall 75.398 mm² 0 0 rod (inside) 75.398 mm³ -1.0000 mC/m³ -75.398 pC",
+		"fan wall 18.850 mm² 3.0000 µC/m² 56.549 pC fan (inside) 28.274 mm³ -2.0000 mC/m³ -56.549 pC",
+		"hedgehog (inside) 50.265 mm³ -750.00 µC/m³ … infinite at the axis -50.265 pC",
+		"rod 0 150.80 pC", "fan 0 113.10 pC", "hedgehog 0 100.53 pC",
+		"dBx/dx dBx/dy dBx/dz", "dEx/dx dEx/dy dEx/dz", "5.5807 mT/m", "-425.20 kV/m²", "0 0 3 none none none none none none none none none",
+	} {
+		if !strings.Contains(flat, words) {
+			t.Errorf("the report does not say %q:\n%s", words, text)
+		}
+	}
+}
+
 // TestWidth checks that no line is too wide for paper or steers a terminal.
 func TestWidth(t *testing.T) {
 	for _, line := range strings.Split(printed(t, crowd, true), "\n") {

@@ -27,6 +27,18 @@ func withLaw(law string) string {
 // withTop returns a scene with further keys beside its parts.
 func withTop(keys string) string { return `{"parts":[` + ball + `],` + keys + `}` }
 
+// withArc returns a scene with one magnetized arc with further keys.
+func withArc(keys string) string {
+	return withShape(`"shape":"arc","inner":1,"outer":2,"height":1` + keys)
+}
+
+// withHandOn returns a scene with a part b of a shape and a hand check of the
+// charge of one of its faces.
+func withHandOn(shape, face string) string {
+	return `{"parts":[{"name":"b",` + shape + `,"magnetized":{"uniform":[0,0,1]}}],` +
+		`"wanted":[{"charges":true,"hand":[{"quantity":"b/` + face + `/charge","value":1,"within":1}]}]}`
+}
+
 // withRequest returns a scene with one request.
 func withRequest(r string) string { return withTop(`"wanted":[` + r + `]`) }
 
@@ -110,9 +122,19 @@ var badScenes = []struct {
 	{"no shape", withPart(`{"name":"a"}`), "/parts/0/shape: shape is missing; add one of box", `{"name`},
 	{"shape no text", withPart(`{"name":"a","shape":3}`), "/parts/0/shape: shape must be a text (got 3)", "3"},
 	{"unknown shape", withShape(`"shape":"cilinder"`), `/parts/0/shape: unknown shape "cilinder"; did you mean "cylinder"?`, `"cilinder"`},
-	{"arc", withShape(`"shape":"arc","inner":1,"outer":2,"height":1,"from":0,"to":90`), `/parts/0/shape: shape "arc" is not supported yet`, `"arc"`},
-	{"cone", withShape(`"shape":"cone","bottom":1,"top":0,"height":1`), `shape "cone" is not supported yet`, `"cone"`},
-	{"torus", withShape(`"shape":"torus","major":2,"minor":1`), `shape "torus" is not supported yet`, `"torus"`},
+	{"arc without angles", withArc(``), "/parts/0: parts[0] needs one of from, from_rad", `{"name`},
+	{"arc without an end", withArc(`,"from":0`), "/parts/0/from: from without to", `"from"`},
+	{"arc of two units", withArc(`,"from":0,"to_rad":1`), "/parts/0/from: from without to", `"from"`},
+	{"arc of both units", withArc(`,"from":0,"to":90,"from_rad":0,"to_rad":1`), "/parts/0/from_rad: from and from_rad exclude each other", `"from_rad"`},
+	{"arc reversed", withArc(`,"from":90,"to":-90`), "/parts/0/from: from must be less than to (got 90 and -90)", "90,\"to"},
+	{"arc without width", withArc(`,"from_rad":1,"to_rad":1`), "/parts/0/from_rad: from_rad must be less than to_rad", "1,\"to_rad"},
+	{"arc beyond a turn", withArc(`,"from":-90,"to":271`), "/parts/0/to: the arc is more than one turn (from -90 to 271); give an end of at most the start plus 360", "271"},
+	{"arc beyond a turn in radians", withArc(`,"from_rad":0,"to_rad":6.3`), "/parts/0/to_rad: the arc is more than one turn", "6.3"},
+	{"arc inverted", withShape(`"shape":"arc","inner":2,"outer":1,"height":1,"from":0,"to":90`), "/parts/0/inner: inner must be less than outer (got 2 and 1)", "2,"},
+	{"arc with a negative bore", withShape(`"shape":"arc","inner":-1,"outer":1,"height":1,"from":0,"to":90`), "/parts/0/inner: inner must be ≥ 0 (got -1)", "-1"},
+	{"cone of two tips", withShape(`"shape":"cone","bottom":0,"top":0,"height":1`), "/parts/0/top: bottom and top must not both be 0; give one end a radius", "0,\"height"},
+	{"cone negative", withShape(`"shape":"cone","bottom":1,"top":-1,"height":1`), "/parts/0/top: top must be ≥ 0 (got -1)", "-1"},
+	{"torus without a hole", withShape(`"shape":"torus","major":1,"minor":1`), "/parts/0/minor: minor must be less than major (got 1 and 1)", "^1,\"magnet"},
 	{"mesh", withShape(`"shape":"mesh","file":"a.stl"`), `shape "mesh" is not supported yet`, `"mesh"`},
 	{"missing dimension", withShape(`"shape":"cylinder","radius":1`), `/parts/0/height: height is missing; add for example "height": 4`, `{"name`},
 	{"foreign dimension", withShape(`"shape":"sphere","radius":1,"height":2`), `/parts/0/height: key "height" does not belong to part sphere; its own keys are radius`, `"height"`},
@@ -155,10 +177,18 @@ var badScenes = []struct {
 	{"no law", withLaw(`"polarized":{}`), "/parts/0/polarized: polarized needs one of uniform, moment", "{}"},
 	{"two laws", withLaw(`"magnetized":{"uniform":[0,0,1],"remanence":[0,0,1]}`), "/parts/0/magnetized/remanence: uniform and remanence exclude each other", `"rem`},
 	{"electric remanence", withLaw(`"polarized":{"remanence":[0,0,1]}`), `/parts/0/polarized/remanence: unknown key "remanence"`, `"rem`},
-	{"polynomial", withLaw(`"polarized":{"polynomial":[]}`), `/parts/0/polarized/polynomial: key "polynomial" is not supported yet`, `"polyn`},
-	{"axial power", withLaw(`"polarized":{"axial_power":{}}`), `key "axial_power" is not supported yet`, `"axial`},
-	{"radial power", withLaw(`"magnetized":{"radial_power":{}}`), `key "radial_power" is not supported yet`, `"radial`},
-	{"central power", withLaw(`"magnetized":{"central_power":{}}`), `key "central_power" is not supported yet`, `"central`},
+	{"polynomial without terms", withLaw(`"polarized":{"polynomial":[]}`), "/parts/0/polarized/polynomial: polynomial must be a list of at least one object (term)", "[]"},
+	{"polynomial component", withLaw(`"polarized":{"polynomial":[{"component":"r","coefficient":1,"powers":[0,0,1]}]}`), `/parts/0/polarized/polynomial/0/component: component must be "x", "y" or "z" (got "r")`, `"r"`},
+	{"polynomial without powers", withLaw(`"polarized":{"polynomial":[{"component":"x","coefficient":1}]}`), "/parts/0/polarized/polynomial/0/powers: powers is missing", `{"component`},
+	{"polynomial negative power", withLaw(`"polarized":{"polynomial":[{"component":"x","coefficient":1,"powers":[0,-1,0]}]}`), "/parts/0/polarized/polynomial/0/powers/1: powers[1] must be from 0 to 64 (got -1)", "-1"},
+	{"polynomial fraction", withLaw(`"polarized":{"polynomial":[{"component":"x","coefficient":1,"powers":[0,0.5,0]}]}`), "polynomial/0/powers/1: powers[1] must be a whole number", "0.5"},
+	{"polynomial two powers", withLaw(`"polarized":{"polynomial":[{"component":"x","coefficient":1,"powers":[0,1]}]}`), "polynomial/0/powers: powers must be three whole numbers", "[0,1]"},
+	{"axial power empty", withLaw(`"polarized":{"axial_power":{}}`), "/parts/0/polarized/axial_power/coefficient: coefficient is missing", "{}"},
+	{"axial power negative", withLaw(`"polarized":{"axial_power":{"coefficient":1,"power":-1}}`), "/parts/0/polarized/axial_power/power: power must be from 0 to 64 (got -1)", "-1"},
+	{"axial power fraction", withLaw(`"polarized":{"axial_power":{"coefficient":1,"power":1.5}}`), "/parts/0/polarized/axial_power/power: power must be a whole number", "1.5"},
+	{"radial power no number", withLaw(`"magnetized":{"radial_power":{"coefficient":1,"power":"2"}}`), "/parts/0/magnetized/radial_power/power: power must be a number from -64 to 64", `"2"`},
+	{"central power beyond reason", withLaw(`"magnetized":{"central_power":{"coefficient":1,"power":100}}`), "/parts/0/magnetized/central_power/power: power must be from -64 to 64 (got 100)", "100"},
+	{"two powers", withLaw(`"magnetized":{"central_power":{"coefficient":1,"power":1},"radial_power":{"coefficient":1,"power":1}}`), "/parts/0/magnetized/radial_power: central_power and radial_power exclude each other", `"radial`},
 	{"grade", withLaw(`"magnetized":{"grade":{}}`), `/parts/0/magnetized/grade: key "grade" is not supported yet`, `"grade`},
 	{"affine without gradient", withLaw(`"polarized":{"affine":{"value":[0,0,1]}}`), "/parts/0/polarized/affine/gradient: gradient is missing", `{"value`},
 	{"affine gradient shape", withLaw(`"polarized":{"affine":{"value":[0,0,1],"gradient":[[0,0,0],[0,0,0]]}}`), "gradient must be three vectors [x, y, z] (got a list of 2)", "[[0,0,0]"},
@@ -181,7 +211,8 @@ var badScenes = []struct {
 	{"short point", withRequest(`{"points":[[0,0,0],[1,2]]}`), "/wanted/0/points/1: points[1] must be three numbers (got a list of 2)", "[1,2]"},
 	{"side", withRequest(`{"points":[[0,0,0]],"side":"outer"}`), `/wanted/0/side: side must be "mean", "inside" or "outside" (got "outer")`, `"outer"`},
 	{"by_part", withRequest(`{"points":[[0,0,0]],"by_part":1}`), "/wanted/0/by_part: by_part must be true or false (got 1)", "1}]"},
-	{"gradient", withRequest(`{"points":[[0,0,0]],"gradient":true}`), `/wanted/0/gradient: key "gradient" is not supported yet`, `"gradient"`},
+	{"gradient", withRequest(`{"points":[[0,0,0]],"gradient":"B"}`), `/wanted/0/gradient: gradient must be true or false (got "B")`, `"B"`},
+	{"gradient on a line", withLine(`"gradient":true`), `/wanted/0/gradient: key "gradient" does not belong to request line`, `"gradient"`},
 	{"foreign option", withRequest(`{"charges":true,"csv":"a.csv"}`), `/wanted/0/csv: key "csv" does not belong to request charges`, `"csv"`},
 	{"line without points", withRequest(`{"line":{"from":[0,0,0],"to":[0,0,1],"count":0}}`), "/wanted/0/line/count: count must be from 1 to 10000000 (got 0)", "0}"},
 	{"line too long", withRequest(`{"line":{"from":[-1.7e308,0,0],"to":[1.7e308,0,0],"count":3}}`), "/wanted/0/line/to: the line is too long", "[1.7e308"},
@@ -235,6 +266,9 @@ var badScenes = []struct {
 	{"hand other kind", withHand(`"points":[[0,0,0]]`, `{"quantity":"E.z","value":1,"within":1}`), "nothing in the scene yields E.z", `"E.z"`},
 	{"hand part", withHand(`"charges":true`, `{"quantity":"b/total_charge","value":1,"within":1}`), `no part is called "b"; `, `"b/`},
 	{"hand face", withHand(`"charges":true`, `{"quantity":"a/top/charge","value":1,"within":1}`), `a sphere has no face "top"; its faces are: surface`, `"a/`},
+	{"hand face of a full turn", withHandOn(`"shape":"arc","inner":1,"outer":2,"height":1,"from":-180,"to":180`, "to"), `an arc has no face "to"; its faces are: bottom, top, inner, outer`, `"b/`},
+	{"hand face of a wedge", withHandOn(`"shape":"arc","inner":0,"outer":2,"height":1,"from":0,"to":180`, "inner"), `has no face "inner"; its faces are: bottom, top, outer, from, to`, `"b/`},
+	{"hand face of a tip", withHandOn(`"shape":"cone","bottom":1,"top":0,"height":1`, "top"), `a cone has no face "top"; its faces are: bottom, wall`, `"b/`},
 	{"hand without part", withHand(`"charges":true`, `{"quantity":"charge","value":1,"within":1}`), `quantity "charge" does not say of which face; write PART/FACE/charge`, `"charge",`},
 	{"hand range", withHand(`"charges":true`, `{"quantity":"a/surface/density","value":1,"within":1}`), `write PART/FACE/density.min, PART/FACE/density.max`, `"a/`},
 	{"hand at of charges", withHand(`"charges":true`, `{"quantity":"a/volume","at":1,"value":1,"within":1}`), "/wanted/0/hand/0/at: at is for requests at points", "1,\"value"},

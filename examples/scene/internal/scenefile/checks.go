@@ -95,13 +95,41 @@ func (d *decoder) checkPart(n uint32, p *Part) error {
 	if p.Class == Point && p.Polarized == nil && p.Magnetized == nil && p.Charged == nil {
 		return d.errorOn(n, "a point that carries nothing", `add "charged": {"charge": …}, or "polarized" or "magnetized": {"moment": […]}`)
 	}
-	if prism, ok := p.Shape.(*Prism); ok {
-		return d.checkPrism(n, prism)
-	}
-	if h, ok := p.Shape.(*Polyhedron); ok {
-		return d.checkPolyhedron(n, h)
+	switch shape := p.Shape.(type) {
+	case *Arc:
+		return d.checkArc(n, shape)
+	case *Cone:
+		return d.checkCone(n, shape)
+	case *Prism:
+		return d.checkPrism(n, shape)
+	case *Polyhedron:
+		return d.checkPolyhedron(n, shape)
 	}
 	return nil
+}
+
+// checkArc refuses more than a turn.
+func (d *decoder) checkArc(n uint32, a *Arc) error {
+	from, to, degrees := a.Angles()
+	turn, _ := a.turn()
+	if to-from <= turn || a.Full() {
+		return nil
+	}
+	name, text := "to_rad", "2π"
+	if degrees {
+		name, text = "to", "360"
+	}
+	at, _ := d.member(n, name)
+	return d.errorOn(at, fmt.Sprintf("the arc is more than one turn (from %g to %g)", from, to), "give an end of at most the start plus "+text)
+}
+
+// checkCone refuses a cone without an end.
+func (d *decoder) checkCone(n uint32, c *Cone) error {
+	if c.Bottom > 0 || c.Top > 0 {
+		return nil
+	}
+	at, _ := d.member(n, "top")
+	return d.errorOn(at, "bottom and top must not both be 0", "give one end a radius")
 }
 
 // checkCarried refuses charge on a body, polarization of a sheet, and a law that
@@ -110,13 +138,13 @@ func (d *decoder) checkCarried(n uint32, p *Part, key, pointKey string, ofPoint 
 	at, _ := d.member(n, key)
 	switch {
 	case p.Class == Sheet && key != "charged":
-		return d.errorOn(at-1, fmt.Sprintf("a %s is a sheet and cannot be %s", p.Kind, key), "a sheet is charged; give a body a thickness to have it "+key)
+		return d.errorOn(at-1, fmt.Sprintf("%s is a sheet and cannot be %s", article(p.Kind), key), "a sheet is charged; give a body a thickness to have it "+key)
 	case p.Class == Body && key == "charged":
-		return d.errorOn(at-1, fmt.Sprintf("a %s is a body and cannot be charged", p.Kind), "charge a polygon, disc, annulus or point; a body is polarized or magnetized")
+		return d.errorOn(at-1, article(p.Kind)+" is a body and cannot be charged", "charge a polygon, disc, annulus or point; a body is polarized or magnetized")
 	case p.Class == Point && !ofPoint:
 		return d.errorOn(at, fmt.Sprintf("a point is %s by %s", key, pointKey), fmt.Sprintf("write %q: {%q: …}", key, pointKey))
 	case p.Class != Point && ofPoint:
-		return d.errorOn(at, fmt.Sprintf("%s is for points, not for a %s", pointKey, p.Kind), "see the keys of "+key+" for bodies and sheets")
+		return d.errorOn(at, fmt.Sprintf("%s is for points, not for %s", pointKey, article(p.Kind)), "see the keys of "+key+" for bodies and sheets")
 	}
 	return nil
 }

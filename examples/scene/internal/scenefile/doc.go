@@ -6,7 +6,7 @@
 // ([Table.Markdown]), so that the three cannot disagree.
 //
 // Units: lengths stay in the unit of the file ([Scene.Length]); everything else
-// is SI, angles are in degrees. Frames: shapes, polarizations and densities are
+// is SI, angles are in degrees unless their key says radians. Frames: shapes, polarizations and densities are
 // in the frame of their part, everything else is in the frame of the scene.
 //
 // What is checked: syntax (RFC 8259), types, ranges, counts, names, and every

@@ -4,7 +4,7 @@ package scenefile
 func Format() *Table {
 	return &Table{Objects: []Object{
 		topLevel(), part(), rotation(), frame(), copies(), turn(),
-		polarized(), magnetized(), affine(), term(), power(), grade(), charged(),
+		polarized(), magnetized(), affine(), term(), axialPower(), power(), grade(), charged(),
 		applied(), plane(),
 		request(), line(), parallelogram(), grid(), reading(), linkage(), circle(), force(), reach(), travel(), hand(),
 	}}

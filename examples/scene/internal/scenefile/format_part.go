@@ -53,8 +53,10 @@ func shapes() []Variant {
 			Keys: []Key{radius, height}, Faces: []string{"bottom", "top", "wall"}},
 		{Name: "tube", Doc: "Origin at the centre, axis z.",
 			Keys: []Key{inner, outer, height}, Rules: rings, Faces: []string{"bottom", "top", "inner", "outer"}},
-		{Name: "arc", Status: Later, Doc: "A part of a tube about z, from one angle to another; origin at the centre of the full tube. No faces `from` and `to` for a full turn.",
-			Keys: []Key{inner, outer, height,
+		{Name: "arc", Doc: "A part of a tube about z, from one angle to another, counted from +x towards +y; origin at the centre of the full tube. Angles in degrees or in radians; whole degrees are exact. No faces `from` and `to` for a full turn, no face `inner` for a wedge without a bore.",
+			Keys: []Key{
+				key("inner", atLeast(0), `2`, "Inner radius, below `outer`; 0 for a wedge whose edge is the axis.").unit("length").required(),
+				outer, height,
 				key("from", number(), `0`, "Start, counted from +x.").unit("°"),
 				key("to", number(), `90`, "End; from < to ≤ from + one turn.").unit("°"),
 				key("from_rad", number(), `0`, "Start, counted from +x.").unit("rad"),
@@ -68,7 +70,7 @@ func shapes() []Variant {
 		{Name: "ellipsoid", Doc: "Origin at the centre, axes along x, y, z.",
 			Keys:  []Key{key("semiaxes", array(3, positive()), `[1, 2, 3]`, "Half the axes along x, y, z.").unit("length").required()},
 			Faces: []string{"surface"}},
-		{Name: "cone", Status: Later, Doc: "Origin at mid-height on the axis z. An end of radius 0 is no face.",
+		{Name: "cone", Doc: "Origin at mid-height on the axis z. An end of radius 0 is no face.",
 			Keys: []Key{
 				key("bottom", atLeast(0), `3`, "Radius of the lower end; one of both may be 0.").unit("length").required(),
 				key("top", atLeast(0), `1`, "Radius of the upper end.").unit("length").required(), height},
@@ -85,7 +87,7 @@ func shapes() []Variant {
 				key("vertices", list(4, vector()), `[[0, 0, 0], [1, 0, 0], [0, 1, 0], [0, 0, 1]]`, "Corners [x, y, z].").unit("length").required(),
 				key("faces", list(4, list(3, integer(0, MaxBytes))), `[[0, 2, 1], [0, 1, 3], [1, 2, 3], [0, 3, 2]]`, "Corners of every face, by number.").required()},
 			Faces: []string{"#"}},
-		{Name: "torus", Status: Later, Doc: "Origin at the centre, axis z.",
+		{Name: "torus", Doc: "Origin at the centre, axis z.",
 			Keys:  []Key{length("major", `5`, "Radius of the centre line."), length("minor", `1`, "Radius of the ring itself, below `major`.")},
 			Rules: []Rule{rule(Ascending, "minor", "major")}, Faces: []string{"surface"}},
 		{Name: "mesh", Status: Later, Doc: "A closed triangle surface from an STL, PLY, OBJ or OFF file; frame as in the file.",
@@ -131,10 +133,10 @@ func laws(unit string) []Key {
 	example := `{"coefficient": 2, "power": 1}`
 	return []Key{
 		key("affine", object("affine"), `{"value": [0, 0, 1], "gradient": [[0, 0, 0], [0, 0, 0], [0, 0, 0.5]]}`, "Linear in space.").unit(unit),
-		key("polynomial", list(1, object("term")), `[{"component": "z", "coefficient": 2, "powers": [0, 0, 1]}]`, "Sum of c·xⁱyʲzᵏ, lengths in the file's unit.").unit(unit).status(Later),
-		key("axial_power", object("power"), example, "c·zⁿ along z, integer n ≥ 0.").unit(unit).status(Later),
-		key("radial_power", object("power"), example, "c·sⁿ along ŝ, away from the z axis; s is the distance from it, real n ≥ 0 (negative only where the body keeps off the axis).").unit(unit).status(Later),
-		key("central_power", object("power"), example, "c·rⁿ along r̂ from the origin; r is the distance from it, real n ≥ 0 (negative only where the body keeps off the origin).").unit(unit).status(Later),
+		key("polynomial", list(1, object("term")), `[{"component": "z", "coefficient": 2, "powers": [0, 0, 1]}]`, "Sum of c·xⁱyʲzᵏ, lengths in the file's unit.").unit(unit),
+		key("axial_power", object("axial_power"), example, "c·zⁿ along z, integer n ≥ 0.").unit(unit),
+		key("radial_power", object("power"), example, "c·sⁿ along ŝ, away from the z axis; s is the distance from it, real n ≥ 0 (negative only where the body keeps off the axis).").unit(unit),
+		key("central_power", object("power"), example, "c·rⁿ along r̂ from the origin; r is the distance from it, real n ≥ 0 (negative only where the body keeps off the origin).").unit(unit),
 	}
 }
 
@@ -161,12 +163,23 @@ func term() Object {
 	}
 }
 
+func axialPower() Object {
+	return Object{
+		Name: "axial_power", Title: "A power of z",
+		Keys: []Key{
+			key("coefficient", number(), `2`, "c, for z in the file's unit.").required(),
+			key("power", integer(0, 64), `1`, "n.").required(),
+		},
+	}
+}
+
 func power() Object {
 	return Object{
-		Name: "power", Title: "A power law",
+		Name: "power", Title: "A power of a distance",
+		Doc: "Where the body reaches the axis or the origin, the volume density of a power below 1 is infinite there, and a negative power is refused.",
 		Keys: []Key{
-			key("coefficient", number(), `2`, "c, for lengths in the file's unit.").required(),
-			key("power", number(), `1`, "n.").required(),
+			key("coefficient", number(), `2`, "c, for distances in the file's unit.").required(),
+			key("power", between(-64, 64), `1`, "n.").required(),
 		},
 	}
 }

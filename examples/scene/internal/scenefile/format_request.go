@@ -15,7 +15,7 @@ func request() Object {
 func requests() []Variant {
 	side := key("side", choice("mean", "inside", "outside"), `"outside"`, "Which limit is taken at a point on a face. On a sheet, outside is where the normal points. For mean, each of E, D, H, B is the mean of its two limits.").otherwise(`"mean"`)
 	byPart := key("by_part", Type{Base: Flag}, `true`, "Adds what every part contributes.").otherwise(`false`)
-	gradient := key("gradient", Type{Base: Flag}, `true`, "Adds the gradient of E and B.").status(Later)
+	gradient := key("gradient", Type{Base: Flag}, `true`, "Adds the gradients of E and B: row i is the gradient of component i, per metre; null on edges, at point sources and on charged faces where the field bends differently on both sides.").otherwise(`false`)
 	csv := key("csv", Type{Base: Output}, `"values.csv"`, "Also written as a table.")
 	plot := key("plot", Type{Base: Output}, `"values.svg"`, "Also drawn.").status(Skipped)
 	vtk := key("vtk", Type{Base: Output}, `"values.vtk"`, "Also written for viewers.").status(Skipped)

@@ -144,12 +144,12 @@ func (d *decoder) checkAddress(q Quantity, m Measure) *fault {
 	p := &d.scene.Parts[i]
 	if m.Of == "part" {
 		if strings.HasPrefix(m.Name, "volume") && p.Class != Body {
-			return &fault{fmt.Sprintf("a %s has no volume", p.Kind), "ask for total_charge"}
+			return &fault{article(p.Kind) + " has no volume", "ask for total_charge"}
 		}
 		return nil
 	}
-	if faces := d.table.object("part").variant(p.Kind).Faces; !p.hasFace(faces, q.Face) {
-		return &fault{fmt.Sprintf("a %s has no face %q", p.Kind, shorten(q.Face)), "its faces are: " + strings.Join(faces, ", ")}
+	if faces := p.faces(d.table.object("part").variant(p.Kind).Faces); !p.hasFace(faces, q.Face) {
+		return &fault{fmt.Sprintf("%s has no face %q", article(p.Kind), shorten(q.Face)), "its faces are: " + strings.Join(faces, ", ")}
 	}
 	return nil
 }
@@ -181,6 +181,28 @@ func (d *decoder) checkKind(q Quantity, m Measure) *fault {
 		return &fault{fmt.Sprintf("nothing in the scene yields %s", q.shown()), "Vm, H and B need a magnetized part"}
 	}
 	return nil
+}
+
+// faces returns which of the faces of its shape a part has.
+func (p *Part) faces(all []string) []string {
+	var gone []string
+	switch s := p.Shape.(type) {
+	case *Arc:
+		if s.Full() {
+			gone = append(gone, "from", "to")
+		}
+		if s.Inner == 0 {
+			gone = append(gone, "inner")
+		}
+	case *Cone:
+		if s.Bottom == 0 {
+			gone = append(gone, "bottom")
+		}
+		if s.Top == 0 {
+			gone = append(gone, "top")
+		}
+	}
+	return slices.DeleteFunc(slices.Clone(all), func(f string) bool { return slices.Contains(gone, f) })
 }
 
 // hasFace reports whether a part has a face; in faces, "#" stands for a number.

@@ -14,7 +14,7 @@ const preface = `# Scene files
 A scene file says which bodies exist, how they are polarized or magnetized, and
 what is wanted of them. It is one JSON document (RFC 8259) in UTF-8 without byte
 order mark. Lengths are in the unit that ` + "`length`" + ` names, everything else is in SI
-units, angles are in degrees.
+units, angles are in degrees unless the key says radians.
 
 An error is one line that names the place, what is wrong and what would be right:
 
@@ -27,7 +27,7 @@ report, and nothing is written for it.
 
 ## Limits and files
 
-- A file has at most 64 MiB, 32 levels of nesting, 1e7 points and 1e6 bodies in all.
+- A file has at most 64 MiB, 32 levels of nesting, 1e7 points and 1e5 bodies in all.
 - Input files are named relative to the scene's folder, with ` + "`/`" + ` between folders, and
   may not leave it: no absolute name, no ` + "`..`" + `, no link that leads out.
 - Output names are plain names, unique in the scene without regard to upper and

@@ -15,11 +15,13 @@ type Request struct {
 	Plane      *Parallelogram `key:"plane"`
 	Grid       *Grid          `key:"grid"`
 
-	Side   Side   `key:"side"`
-	ByPart bool   `key:"by_part"`
-	CSV    string `key:"csv"` // name of a file to write, or ""
-	Plot   string `key:"plot"`
-	VTK    string `key:"vtk"`
+	Side   Side `key:"side"`
+	ByPart bool `key:"by_part"`
+
+	Gradient bool   `key:"gradient"` // of points and points_file
+	CSV      string `key:"csv"`      // name of a file to write, or ""
+	Plot     string `key:"plot"`
+	VTK      string `key:"vtk"`
 }
 
 // A Side is "mean", "inside" or "outside".

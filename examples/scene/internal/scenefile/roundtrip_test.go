@@ -51,7 +51,7 @@ func encodeStruct(v reflect.Value) any {
 			for k, x := range encode(value).(map[string]any) {
 				obj[k] = x
 			}
-		case key == "" || value.IsZero() && !always[key]:
+		case key == "" || value.IsZero() && (!always[key] || value.Kind() == reflect.Pointer || value.Kind() == reflect.Bool):
 		case key == "points" && v.FieldByName("PointsFile").String() != "":
 		case single && value.Len() == 1:
 			obj[key] = value.Index(0).Float()
@@ -71,7 +71,7 @@ func encodeStruct(v reflect.Value) any {
 
 // always are the keys that are written even where they are 0.
 var always = map[string]bool{
-	"scale": true, "temperature": true, "degrees": true, "value": true, "gradient": true, "from": true, "to": true, "corner": true, "min": true,
+	"scale": true, "temperature": true, "degrees": true, "value": true, "gradient": true, "from": true, "to": true, "inner": true, "bottom": true, "top": true, "power": true, "powers": true, "coefficient": true, "corner": true, "min": true,
 	"max": true, "within": true, "wanted": true,
 }
 

@@ -1,6 +1,7 @@
 package scenefile
 
 import (
+	"math"
 	"strconv"
 
 	"gonum.org/v1/gonum/spatial/r2"
@@ -114,10 +115,14 @@ type Copies struct {
 
 // A Polarization is electric or magnetic; exactly one of its fields is set.
 type Polarization struct {
-	Uniform   *r3.Vec `key:"uniform"`
-	Remanence *r3.Vec `key:"remanence"` // T; magnetic only
-	Moment    *r3.Vec `key:"moment"`    // of a point
-	Affine    *Affine `key:"affine"`
+	Uniform      *r3.Vec     `key:"uniform"`
+	Remanence    *r3.Vec     `key:"remanence"` // T; magnetic only
+	Moment       *r3.Vec     `key:"moment"`    // of a point
+	Affine       *Affine     `key:"affine"`
+	Polynomial   []Term      `key:"polynomial"`
+	AxialPower   *AxialPower `key:"axial_power"`
+	RadialPower  *Power      `key:"radial_power"`
+	CentralPower *Power      `key:"central_power"`
 }
 
 // An Affine is the law Value + Gradient·(r − About); row i of Gradient is the
@@ -126,6 +131,27 @@ type Affine struct {
 	Value    r3.Vec    `key:"value"`
 	Gradient [3]r3.Vec `key:"gradient"`
 	About    r3.Vec    `key:"about"`
+}
+
+// A Term is Coefficient·xⁱyʲzᵏ in one component, "x", "y" or "z", lengths in the
+// unit of the file.
+type Term struct {
+	Component   string  `key:"component"`
+	Coefficient float64 `key:"coefficient"`
+	Powers      [3]int  `key:"powers"`
+}
+
+// An AxialPower is the law Coefficient·zⁿ along z.
+type AxialPower struct {
+	Coefficient float64 `key:"coefficient"`
+	Power       int     `key:"power"`
+}
+
+// A Power is the law Coefficient·sⁿ away from the z axis, s the distance from it,
+// or the same away from the origin.
+type Power struct {
+	Coefficient float64 `key:"coefficient"`
+	Power       float64 `key:"power"`
 }
 
 // A Charge is real charge: Density + Gradient·r on a sheet, or Charge at a
@@ -154,6 +180,44 @@ type Tube struct {
 	Height float64 `key:"height"`
 }
 
+// An Arc is a part of a Tube between two angles about z, in degrees (From, To) or
+// in radians (FromRad, ToRad); the other two are nil. Inner may be 0.
+type Arc struct {
+	Inner   float64  `key:"inner"`
+	Outer   float64  `key:"outer"`
+	Height  float64  `key:"height"`
+	From    *float64 `key:"from"`
+	To      *float64 `key:"to"`
+	FromRad *float64 `key:"from_rad"`
+	ToRad   *float64 `key:"to_rad"`
+}
+
+// Angles returns the angles of both ends, and whether they are in degrees.
+func (a *Arc) Angles() (from, to float64, degrees bool) {
+	if a.From != nil {
+		return *a.From, *a.To, true
+	}
+	return *a.FromRad, *a.ToRad, false
+}
+
+// turn returns one turn in the unit of the angles, and what the angles and their
+// difference may be off by rounding.
+func (a *Arc) turn() (turn, rounding float64) {
+	from, to, degrees := a.Angles()
+	turn = 2 * math.Pi
+	if degrees {
+		turn = 360
+	}
+	return turn, 8 * 0x1p-53 * (math.Abs(from) + math.Abs(to))
+}
+
+// Full reports whether the arc is a whole turn, up to the rounding of its ends.
+func (a *Arc) Full() bool {
+	from, to, _ := a.Angles()
+	turn, rounding := a.turn()
+	return math.Abs(to-from-turn) <= rounding
+}
+
 // A Sphere is centred at the origin.
 type Sphere struct {
 	Radius float64 `key:"radius"`
@@ -168,6 +232,19 @@ type HollowSphere struct {
 // An Ellipsoid has its axes along x, y, z.
 type Ellipsoid struct {
 	Semiaxes [3]float64 `key:"semiaxes"`
+}
+
+// A Cone has its axis along z; one of its radii may be 0.
+type Cone struct {
+	Bottom float64 `key:"bottom"`
+	Top    float64 `key:"top"`
+	Height float64 `key:"height"`
+}
+
+// A Torus has its axis along z; Minor < Major.
+type Torus struct {
+	Major float64 `key:"major"` // radius of the centre line
+	Minor float64 `key:"minor"` // radius of the ring itself
 }
 
 // A Prism stands between z = ∓Height/2 + slope·(x, y); its ends do not meet.
@@ -212,12 +289,18 @@ func newShape(kind string) any {
 		return new(Cylinder)
 	case "tube":
 		return new(Tube)
+	case "arc":
+		return new(Arc)
 	case "sphere":
 		return new(Sphere)
 	case "hollow_sphere":
 		return new(HollowSphere)
 	case "ellipsoid":
 		return new(Ellipsoid)
+	case "cone":
+		return new(Cone)
+	case "torus":
+		return new(Torus)
 	case "prism":
 		return new(Prism)
 	case "polyhedron":

@@ -188,7 +188,7 @@ func TestSchemaRefuses(t *testing.T) {
 		"control characters", "is already", "must be less", "ends of the prism", "does not exist", "named twice", "is parallel", "cannot be",
 		"is for points", "is polarized by", "carries nothing", "too long", "max must be above", "must not", "device name", "is taken", "plain relative",
 		"not a regular", "wrong.csv", "unknown quantity", "value of", "must be a number of a point", "yields", "no part is called", "has no face", "does not say",
-		"is for requests",
+		"is for requests", "more than one turn", "must not both be",
 	}
 	schema := committedSchema(t)
 	for _, c := range badScenes {

@@ -153,3 +153,11 @@ func keyNames(keys []Key) []string {
 	}
 	return names
 }
+
+// article returns the name of a shape behind its article.
+func article(kind string) string {
+	if strings.ContainsRune("aeiou", rune(kind[0])) {
+		return "an " + kind
+	}
+	return "a " + kind
+}

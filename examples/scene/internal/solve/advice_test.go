@@ -101,7 +101,7 @@ func TestLeftOut(t *testing.T) {
 func TestAccuracy(t *testing.T) {
 	s := built(t, `{"accuracy": 1e-13, "parts": [{"name": "a", "shape": "sphere", "radius": 1, "centre": [3,0,0], "polarized": {"uniform": [0,0,2e-6]}}]}`)
 	r := reach{kinds: [2]Kind{Polarized, Charged}, x: r3.Vec{X: 3, Z: 3}}
-	phi, g := s.floors(&r)
+	phi, g, _ := s.floors(r.kinds, r.x)
 	a := 1.7320508075688772 // half diagonal of the box of the sphere
 	if want := 1e-3 * 2e-6 * (a / 3) * (a / 3) * (a / 3); g < 0.999*want || g > 1.001*want {
 		t.Errorf("floor of the field %g, want %g", g, want)
@@ -119,7 +119,8 @@ func TestAccuracy(t *testing.T) {
 		{"bad potential", 1, 1e-15, field.Regular, 1},
 		{"both bad", 1, 1, field.OnFace, 2},
 		{"edge", 1, 1, field.OnEdge, 0},
-		{"not converged", 0, 0, field.NotConverged, 2},
+		{"not converged", 1, 1, field.NotConverged, 2},
+		{"not converged, but as good as wanted", 1e-15, 1e-15, field.NotConverged, 0},
 	} {
 		rec := &Record{}
 		rec.Electric.V, rec.Electric.E = 1, r3.Vec{X: 1}

@@ -5,9 +5,11 @@ package solve
 
 import (
 	"math"
+	"sync"
 
 	"example.com/boundpole/charge"
 	"example.com/boundpole/examples/scene/internal/scenefile"
+	"example.com/boundpole/field"
 	"example.com/boundpole/field/bound"
 	"example.com/boundpole/geom"
 	"example.com/boundpole/magnet"
@@ -43,6 +45,11 @@ type Part struct {
 	Gradient r3.Vec
 	Point    float64 // charge of a point, C
 	Moment   r3.Vec  // moment of a point in the scene frame, C m or A m^2
+
+	law      field.Polarization // of a polarized body, in its own frame and the unit of the file, before factor
+	factor   float64
+	singular singular
+	proven   float64 // accuracy that needs no estimate, see proven
 }
 
 // Setup is a scene ready to be asked.
@@ -54,15 +61,18 @@ type Setup struct {
 	Warnings []string
 
 	Electric, Magnetic bool // kinds that the records have
+	slow               bool // a part is integrated
 	electric           charge.Model
 	magnetic           magnet.Model
 	places             bound.Assembly // all parts, for sides and for telling where a point is
+	surface            func() (volts float64, of *Part)
 }
 
 // Build places the parts of a scene. Its errors are those of the scene file, with the place in it.
 func Build(scene *scenefile.Scene) (*Setup, error) {
 	s := &Setup{Scene: scene, Unit: scene.Length.Metres()}
 	s.perMetre = math.Round(1 / s.Unit)
+	s.surface = sync.OnceValues(s.surfaceVolts)
 	for i := range scene.Parts {
 		if err := s.addPart(i); err != nil {
 			return nil, err
@@ -79,6 +89,7 @@ func Build(scene *scenefile.Scene) (*Setup, error) {
 	}
 	for i := range s.Parts {
 		p := &s.Parts[i]
+		s.slow = s.slow || p.integrated()
 		s.places = append(s.places, bound.Member{Charge: p.Charge, Body: p.Body, Sheet: p.Sheet})
 		switch p.Kind {
 		case Magnetized:

@@ -22,7 +22,7 @@ func (w *Watch) See(r *Record, side field.Side) {
 	if v := math.Abs(r.Electric.V); v > w.Volts {
 		w.Volts = v
 	}
-	outside := r.Inside < 0 && (r.Status == field.Regular || r.Status == field.OnFace && side == field.Outside)
+	outside := r.Inside < 0 && (r.Status == field.Regular || r.Status == field.NotConverged || r.Status == field.OnFace && side == field.Outside)
 	if e := r3.Norm(r.Electric.E); outside && e > w.Air {
 		w.Air = e
 	}
@@ -46,7 +46,7 @@ func (s *Setup) Cautions(w Watch) []string {
 			"Attracts suddenly; may pinch or shatter."+bound+" Keep from children; if swallowed, get medical help at once.",
 			"Fields of about 0.5–1 mT may affect implants: follow the clinician and the device maker.")
 	}
-	surface, _ := s.surfaceVolts()
+	surface, _ := s.surface()
 	if v := max(w.Volts, surface); v > touchVolts {
 		out = append(out, volts(v)+"; may damage inputs, spark, ignite vapours.")
 	}
@@ -136,9 +136,12 @@ func (s *Setup) voltsAcross(p *Part) float64 {
 	lo, hi := math.Inf(1), math.Inf(-1)
 	switch {
 	case p.Charge != nil:
-		layers := p.Charge.Layers
+		layers, looks := p.Charge.Layers, 1
+		if degree, ok := degreeOf(p.law); !p.integrated() && !(ok && degree <= 1) {
+			looks = 4
+		}
 		for i := 0; i < len(layers); i += 1 + len(layers)/mostFaces {
-			layers[i].Face.Surface.Nodes(1, add)
+			layers[i].Face.Surface.Nodes(looks, add)
 		}
 	case p.Sheet != nil:
 		p.Sheet.Nodes(2, add)

@@ -5,8 +5,6 @@ import (
 	"math"
 	"slices"
 
-	"example.com/boundpole/field"
-	"example.com/boundpole/field/bound"
 	"gonum.org/v1/gonum/spatial/r3"
 )
 
@@ -31,7 +29,7 @@ func (s *Setup) LeftOut() []string {
 
 // film returns the surface potential of the scene's electric part with the largest, if that is a thin polarized film.
 func (s *Setup) film() (string, bool) {
-	v, p := s.surfaceVolts()
+	v, p := s.surface()
 	if p == nil || p.Charge == nil {
 		return "", false
 	}
@@ -39,7 +37,15 @@ func (s *Setup) film() (string, bool) {
 	edges := []float64{size.X, size.Y, size.Z}
 	slices.Sort(edges)
 	const thin = 0.1 // thickness over width
-	return volts(v), edges[0] <= thin*edges[1]
+	moment := p.Pose.VectorToLocal(p.Charge.Moment)
+	through := moment.X // along the thickness
+	switch edges[0] {
+	case size.Z:
+		through = moment.Z
+	case size.Y:
+		through = moment.Y
+	}
+	return volts(v), edges[0] <= thin*edges[1] && math.Abs(through) >= strength(p.Charge)/2
 }
 
 // recoil says what the recoil of the strongest magnet would take away: with the mean demagnetizing factor N along its
@@ -53,7 +59,7 @@ func (s *Setup) recoil() string {
 		if p.Kind != Magnetized || p.Charge == nil {
 			return
 		}
-		if m := r3.Norm(p.Charge.Moment); strongest == nil || m > best {
+		if m := strength(p.Charge); strongest == nil || m > best {
 			strongest, best = p, m
 		}
 	})
@@ -63,8 +69,8 @@ func (s *Setup) recoil() string {
 		}
 		return ""
 	}
-	n := demagnetizing(strongest.Charge)
-	if !(n > 0 && n < 1) {
+	n, ok := demagnetizing(strongest)
+	if !ok {
 		return rigid
 	}
 	k := n * (permeability - 1)
@@ -85,41 +91,4 @@ func (s *Setup) magnets() int {
 		}
 	}
 	return n
-}
-
-// demagnetizing returns the mean of -H.M/M^2 over a body in its own field. The integral of -H.M is the energy of the
-// charges in their own potential, so nodes on the faces do, and the potential is smooth there.
-func demagnetizing(c *bound.Charge) float64 {
-	at := &field.Points{}
-	var charge []float64
-	add := func(x r3.Vec, q float64) {
-		if q != 0 {
-			at.X, at.Y, at.Z, charge = append(at.X, x.X), append(at.Y, x.Y), append(at.Z, x.Z), append(charge, q)
-		}
-	}
-	n := 8
-	for n > 1 && n*n*len(c.Layers) > 10*mostFaces {
-		n--
-	}
-	if len(c.Layers) > 10*mostFaces {
-		return math.NaN() // too many for words
-	}
-	for _, y := range c.Layers {
-		y.Face.Surface.Nodes(n, func(x, normal r3.Vec, w float64) { add(x, w*c.Density(x, r3.Scale(y.Face.Sign(), normal))) })
-	}
-	var down float64
-	for _, v := range c.Volumes {
-		v.Cell.Nodes(max(n/2, 2), func(x r3.Vec, w float64) {
-			p := c.Polarization(field.PointsOf(x).At(0).X)
-			down += w * r3.Dot(p, p)
-			add(x, w*v.Charge/v.Size) // the divergence of an affine polarization is constant
-		})
-	}
-	phi := field.NewValues(at.Len(), field.WantPhi)
-	c.Evaluate(phi, at, field.Mean)
-	var up float64
-	for i, q := range charge {
-		up += q * phi.Phi[i]
-	}
-	return up / down
 }

@@ -11,7 +11,6 @@ import (
 	"example.com/boundpole/field"
 	"example.com/boundpole/field/bound"
 	"example.com/boundpole/geom"
-	"example.com/boundpole/magnet"
 	"gonum.org/v1/gonum/spatial/r3"
 )
 
@@ -21,7 +20,10 @@ type made struct {
 	kind     Kind
 	body     geom.Body
 	sheet    geom.Sheet
-	charge   [2]*bound.Charge // as given, reversed
+	charge   [2]*bound.Charge   // as given, reversed
+	law      field.Polarization // of a body, before scaling
+	singular singular
+	proven   float64
 	density  float64
 	gradient r3.Vec
 	point    float64
@@ -60,28 +62,20 @@ func (s *Setup) make(i int) (*made, error) {
 		err = m.give(part)
 		at += "/charged"
 	}
+	var placed *fault
 	switch {
-	case errors.Is(err, bound.ErrUnsupported):
-		problem, remedy := unsupported(part)
-		return nil, s.Scene.ErrorAt(at, problem, remedy)
+	case errors.As(err, &placed):
+		return nil, s.Scene.ErrorAt(at+placed.under, placed.problem, placed.remedy)
 	case err != nil:
 		return nil, s.Scene.ErrorAt(at, plainWords(err), "")
 	}
 	return m, nil
 }
 
-// unsupported says which law on which shape has no integrator, and what would be right.
-func unsupported(part *scenefile.Part) (problem, remedy string) {
-	shape := strings.ReplaceAll(part.Kind, "_", " ")
-	if part.Charged != nil {
-		return "a gradient of the density on a sheet of shape " + shape + " is not supported yet", "give a constant density, or cut the sheet into polygons"
-	}
-	remedy = "give a uniform polarization"
-	if part.Kind == "cylinder" || part.Kind == "tube" {
-		remedy += ", or an affine one whose z component alone grows along z"
-	}
-	return "an affine polarization like this on a body of shape " + shape + " is not supported yet", remedy
-}
+// fault is an error that knows its place below the key of what the part carries.
+type fault struct{ under, problem, remedy string }
+
+func (f *fault) Error() string { return f.problem + "; " + f.remedy }
 
 // errOverflow is what is wrong with a polarization or charge whose numbers are finite each, but not together.
 var errOverflow = errors.New("what the part carries overflows float64, its scale included; give smaller numbers")
@@ -93,8 +87,12 @@ func (m *made) polarize(part *scenefile.Part, p *scenefile.Polarization) error {
 		m.peak = r3.Norm(m.moment)
 		return finite(m.peak)
 	}
-	law := polarizationOf(p)
-	m.peak = math.Abs(part.Scale) * peak(m.body, law)
+	m.law = polarizationOf(p)
+	if m.singular = singularOf(m.body, m.law); m.singular.met && m.singular.power < 0 {
+		return m.singular.fault()
+	}
+	m.peak = math.Abs(part.Scale) * largest(m.body, m.law)
+	m.proven = proven(m.body, m.law)
 	if err := finite(m.peak); err != nil {
 		return err
 	}
@@ -103,7 +101,10 @@ func (m *made) polarize(part *scenefile.Part, p *scenefile.Polarization) error {
 			break
 		}
 		var err error
-		m.charge[k], err = bound.Of(m.body, field.Times{Polarization: law, Factor: sign})
+		m.charge[k], err = bound.Of(m.body, field.Times{Polarization: m.law, Factor: sign})
+		if m.singular.met && errors.Is(err, bound.ErrUnsupported) {
+			return m.singular.unsupported(part.Kind)
+		}
 		if err != nil {
 			return err
 		}
@@ -118,9 +119,8 @@ func (m *made) give(part *scenefile.Part) error {
 		return finite(m.point)
 	}
 	m.density, m.gradient = part.Scale**part.Charged.Density, r3.Scale(part.Scale, part.Charged.Gradient)
-	for _, x := range corners(m.sheet.Bounds()) {
-		m.peak = max(m.peak, math.Abs(m.density+r3.Dot(m.gradient, x)))
-	}
+	lo, hi := densities(m.sheet, m.density, m.gradient)
+	m.peak = max(math.Abs(lo), math.Abs(hi))
 	if err := finite(m.peak); err != nil {
 		return err
 	}
@@ -133,37 +133,6 @@ func finite(v float64) error {
 		return errOverflow
 	}
 	return nil
-}
-
-// peak returns the largest |p| over a body; over its box, where it is round.
-func peak(body geom.Body, law field.Polarization) float64 {
-	at := corners(body.Bounds())
-	if flat, ok := body.(geom.Flat); ok {
-		at = flat.Polyhedron().Vertices
-	}
-	largest := 0.0
-	for _, x := range at {
-		largest = math.Max(largest, r3.Norm(law.At(x))) // NaN stays
-	}
-	return largest
-}
-
-func corners(b r3.Box) []r3.Vec {
-	var out []r3.Vec
-	for k := range 8 {
-		c := b.Min
-		if k&1 != 0 {
-			c.X = b.Max.X
-		}
-		if k&2 != 0 {
-			c.Y = b.Max.Y
-		}
-		if k&4 != 0 {
-			c.Z = b.Max.Z
-		}
-		out = append(out, c)
-	}
-	return out
 }
 
 // plainWords returns an error of the library without the name of the package in front.
@@ -179,7 +148,7 @@ func plainWords(err error) string {
 func (s *Setup) place(m *made, name string, pose geom.Pose, sign float64) {
 	p := Part{Name: name, Of: m.part, Kind: m.kind, Peak: m.peak, Pose: pose, Centre: pose.Origin().Value(),
 		Density: sign * m.density, Gradient: r3.Scale(sign, m.gradient), Point: sign * m.point,
-		Moment: pose.VectorToOuter(r3.Scale(sign, m.moment))}
+		Moment: pose.VectorToOuter(r3.Scale(sign, m.moment)), proven: closed}
 	switch {
 	case m.body != nil:
 		p.Local = m.body.Bounds()
@@ -192,6 +161,7 @@ func (s *Setup) place(m *made, name string, pose geom.Pose, sign float64) {
 			p.Charge = c.At(pose)
 			p.Body = p.Charge.Body()
 			p.Member = bound.Member{Charge: p.Charge}
+			p.law, p.factor, p.singular, p.proven = m.law, sign*s.Scene.Parts[m.part].Scale, m.singular, m.proven
 		}
 	case m.sheet != nil:
 		p.Local = m.sheet.Bounds()
@@ -206,55 +176,4 @@ func (s *Setup) place(m *made, name string, pose geom.Pose, sign float64) {
 		p.Member = charge.Point(p.Centre, p.Point*s.perMetre*s.perMetre)
 	}
 	s.Parts = append(s.Parts, p)
-}
-
-// shapeOf returns the body or the sheet of a shape; neither for a point.
-func shapeOf(shape any) (geom.Body, geom.Sheet) {
-	switch v := shape.(type) {
-	case *scenefile.Box:
-		return geom.Box{Size: vec(v.Size)}, nil
-	case *scenefile.Cylinder:
-		return geom.Cylinder{Radius: v.Radius, Height: v.Height}, nil
-	case *scenefile.Tube:
-		return geom.Tube{Inner: v.Inner, Outer: v.Outer, Height: v.Height}, nil
-	case *scenefile.Sphere:
-		return geom.Sphere{Radius: v.Radius}, nil
-	case *scenefile.HollowSphere:
-		return geom.HollowSphere{Inner: v.Inner, Outer: v.Outer}, nil
-	case *scenefile.Ellipsoid:
-		return geom.Ellipsoid{SemiAxes: vec(v.Semiaxes)}, nil
-	case *scenefile.Prism:
-		base := make([][2]float64, len(v.Base))
-		for i, b := range v.Base {
-			base[i] = [2]float64{b.X, b.Y}
-		}
-		return geom.Prism{Base: base, Height: v.Height, BottomSlope: [2]float64{v.BottomSlope.X, v.BottomSlope.Y},
-			TopSlope: [2]float64{v.TopSlope.X, v.TopSlope.Y}}, nil
-	case *scenefile.Polyhedron:
-		return geom.Polyhedron{Vertices: v.Vertices, Loops: v.Faces}, nil
-	case *scenefile.Polygon:
-		return nil, geom.Polygon{Vertices: v.Vertices}
-	case *scenefile.Disc:
-		return nil, geom.Disc{Radius: v.Radius}
-	case *scenefile.Annulus:
-		return nil, geom.Annulus{Inner: v.Inner, Outer: v.Outer}
-	}
-	return nil, nil
-}
-
-func vec(a [3]float64) r3.Vec { return r3.Vec{X: a[0], Y: a[1], Z: a[2]} }
-
-// polarizationOf returns the law of a polarization in C/m^2 or a magnetization in A/m.
-func polarizationOf(p *scenefile.Polarization) field.Polarization {
-	switch {
-	case p.Remanence != nil:
-		return field.Uniform{P: magnet.Remanence(*p.Remanence)}
-	case p.Affine != nil:
-		a := field.Affine{Value: p.Affine.Value, About: p.Affine.About}
-		for i, row := range p.Affine.Gradient {
-			a.Gradient[i] = [3]float64{row.X, row.Y, row.Z}
-		}
-		return a
-	}
-	return field.Uniform{P: *p.Uniform}
 }

@@ -24,6 +24,7 @@ type Record struct {
 	Status   field.Status
 	Missed   []string       // names of the values that did not reach the wanted accuracy
 	ByPart   []Contribution // if asked for
+	Gradient *Gradient      // if asked for
 }
 
 // Contribution is the field of one part alone.
@@ -35,8 +36,12 @@ type Contribution struct {
 	H, B r3.Vec
 }
 
-// chunkSize is how many points are evaluated at a time; the result does not depend on it.
-const chunkSize = 1024
+// How many points are evaluated at a time; the result does not depend on it. It is few where a part is integrated, so that all
+// processors have work.
+const (
+	chunkSize  = 1024
+	chunkOfFew = 4
+)
 
 // Records calls visit for every point of a point request, in order. Points are evaluated in parallel, chunk by chunk; when
 // ctx is done it stops between chunks and returns its error.
@@ -44,7 +49,11 @@ func (s *Setup) Records(ctx context.Context, q *scenefile.Request, visit func(i 
 	n := q.Count()
 	point := pointOf(q)
 	side := SideOf(q.Side)
-	stride := chunkSize * runtime.GOMAXPROCS(0)
+	size := chunkSize
+	if s.slow {
+		size = chunkOfFew
+	}
+	stride := size * runtime.GOMAXPROCS(0)
 	recs := make([]Record, min(stride, n))
 	for lo := 0; lo < n; lo += stride {
 		if ctx.Err() != nil {
@@ -53,9 +62,9 @@ func (s *Setup) Records(ctx context.Context, q *scenefile.Request, visit func(i 
 		hi := min(lo+stride, n)
 		clear(recs)
 		var wait sync.WaitGroup
-		for a := lo; a < hi; a += chunkSize {
-			b := min(a+chunkSize, hi)
-			wait.Go(func() { s.fill(recs[a-lo:b-lo], batch(point, a, b), side, q.ByPart) })
+		for a := lo; a < hi; a += size {
+			b := min(a+size, hi)
+			wait.Go(func() { s.fill(recs[a-lo:b-lo], batch(point, a, b), side, q) })
 		}
 		wait.Wait()
 		for i := range hi - lo {
@@ -79,7 +88,7 @@ func SideOf(s scenefile.Side) field.Side {
 }
 
 // fill evaluates one chunk.
-func (s *Setup) fill(recs []Record, at *field.Points, side field.Side, byPart bool) {
+func (s *Setup) fill(recs []Record, at *field.Points, side field.Side, q *scenefile.Request) {
 	ways := s.ways(at, side)
 	if s.Electric {
 		for i, v := range s.electric.ReadingsTowards(at, side, ways) {
@@ -101,9 +110,12 @@ func (s *Setup) fill(recs []Record, at *field.Points, side field.Side, byPart bo
 		rec.Inside = s.inside(at.At(i), side, way)
 		rec.Status = max(rec.Electric.Status, rec.Magnetic.Status)
 		s.judge(rec, at.Vec(i), side)
-		if byPart {
+		if q.ByPart {
 			rec.ByPart = s.contributions(at.Slice(i, i+1), side, ways, i)
 		}
+	}
+	if q.Gradient {
+		s.gradients(recs, at, side, ways)
 	}
 }
 
