@@ -16,7 +16,7 @@ var stages = []string{
 	"field/element",
 	"field/cubature",
 	"field/bound",
-	"field/current field/image",
+	"field/current field/image field/flux",
 	"geom/meshfile field/multipole field/force field/response field/inverse field/fieldfile field/plot",
 	"charge magnet",
 	"verify/... examples/...",
