@@ -188,7 +188,8 @@ func TestSchemaRefuses(t *testing.T) {
 		"control characters", "is already", "must be less", "ends of the prism", "does not exist", "named twice", "is parallel", "cannot be",
 		"is for points", "is polarized by", "carries nothing", "too long", "max must be above", "must not", "device name", "is taken", "plain relative",
 		"not a regular", "wrong.csv", "unknown quantity", "value of", "must be a number of a point", "yields", "no part is called", "has no face", "does not say",
-		"is for requests", "more than one turn", "must not both be",
+		"is for requests", "more than one turn", "must not both be", "dielectric plane without", "on a plane of kind", "is for cylinders", "encloses no area",
+		"no part is", "no interaction", "within a travel", "file of one position", "hand_over writes",
 	}
 	schema := committedSchema(t)
 	for _, c := range badScenes {
