@@ -209,11 +209,14 @@ func (s *segment) slope(sum *Value, e, across r3.Vec, r1, r2, l, f float64, slop
 	w := r3.Cross(eu, e)        // u
 	s1, s2 := s.a.Dot(s.t).Value()/l, s.b.Dot(s.t).Value()/l
 	p2 := r3.Norm2(w)
-	i2 := 1 / (r2 * r2 * r2)
-	along := l * (s1 + s2) / (r1 + r2) * (r1*r1 + r1*r2 + r2*r2) / (r1 * r2 * (r1 * r2) * (r1 * r2)) // i1 - i2 without cancellation
+	along := l * (s1 + s2) / (r1 + r2) * (r1*r1 + r1*r2 + r2*r2) / (r1 * r2 * (r1 * r2) * (r1 * r2)) // 1/R1^3 - 1/R2^3
 	radial := 0.0
 	if p2 > 0 {
-		radial = -(l*i2 - s1*along + 2*f) / p2
+		bend := l/(r2*r2*r2) - s1*along // s2 i2 - s1 i1, from the nearer end
+		if r2 < r1 {
+			bend = l/(r1*r1*r1) - s2*along
+		}
+		radial = -(bend + 2*f) / p2
 	}
 	h := r3.Add(r3.Scale(along, e), r3.Scale(radial, w))
 	// grad b = f (e x) + (e x u) h; the first is antisymmetric
