@@ -128,6 +128,11 @@ func (c *Charge) Polarization(x pair.Vec) r3.Vec {
 // Density returns sigma of a layer at a point of its face with outward normal n, in the outer frame.
 func (c *Charge) Density(x, n r3.Vec) float64 { return r3.Dot(c.Polarization(pair.VecOf(x)), n) }
 
+// VolumeDensity returns rho at a point of the outer frame, continued outside the body.
+func (c *Charge) VolumeDensity(x r3.Vec) float64 {
+	return -c.p.Divergence(c.pose.ToLocal(pair.VecOf(x)).Value()) + 0 // no negative zero
+}
+
 // Field returns g at x.
 func (c *Charge) Field(x r3.Vec) r3.Vec { return c.source.Field(x) }
 

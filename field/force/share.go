@@ -1,0 +1,119 @@
+package force
+
+import (
+	"context"
+
+	"example.com/boundpole/field"
+	"example.com/boundpole/field/bound"
+	"example.com/boundpole/field/element"
+	"example.com/boundpole/geom"
+	"gonum.org/v1/gonum/spatial/r3"
+)
+
+// simple reports whether all others act without integration over faces.
+func simple(all []other) bool {
+	for i := range all {
+		switch all[i].src.(type) {
+		case field.Constant, element.Point, element.Dipole:
+		default:
+			return false
+		}
+	}
+	return true
+}
+
+// share returns what one source does to a part; the only place where the way is chosen.
+func share(ctx context.Context, p *part, o *other, g goal, set Settings) (outcome, error) {
+	if out, ok := exact(p, o, g, set.About); ok {
+		return out, nil
+	}
+	if o.charge != nil {
+		if out, ok := boxes(p, o, g, set.About); ok {
+			return out, nil
+		}
+		q, ok := partOf(o.charge)
+		if out, ok := far(p, &q, o, g, set.About); ok {
+			return out, nil
+		}
+		if out, ok := small(p, o, g, set.About); ok {
+			return out, nil
+		}
+		if ok && o.plane == nil && p.charge != nil && !g.stiff {
+			back := other{src: p.charge, factor: 1, charge: p.charge}
+			if out, ok := small(&q, &back, g, set.About); ok {
+				return out.reaction(), nil
+			}
+			if dearer(o.charge, p.charge) {
+				out, err := faces(ctx, &q, &back, g, set)
+				return out.reaction(), err
+			}
+		}
+	} else if out, ok := small(p, o, g, set.About); ok {
+		return out, nil
+	}
+	return faces(ctx, p, o, g, set)
+}
+
+// faces integrates over the faces of the part.
+func faces(ctx context.Context, p *part, o *other, g goal, set Settings) (outcome, error) {
+	w := newWork(o.src, set.About, p, g.stiff)
+	if box, ok := o.bounds(); ok {
+		pb := r3.Box{Min: r3.Sub(p.centre, r3.Vec{X: p.reach, Y: p.reach, Z: p.reach}), Max: r3.Add(p.centre, r3.Vec{X: p.reach, Y: p.reach, Z: p.reach})}
+		if p.charge != nil {
+			pb = p.charge.Bounds()
+		}
+		size := max(p.reach, r3.Norm(p.centre), r3.Norm(box.Min), r3.Norm(box.Max))
+		if gap(pb, box) <= closeTo*size {
+			w.slackOf = closeTo * size
+			if o.charge == nil && p.charge != nil {
+				w.slackOf, w.push = 0, 2*closeTo*size
+			}
+		}
+	}
+	g.reach = p.reach
+	p.cutAlong(o)
+	return integrate(ctx, p, w, g, set.MaxNodes)
+}
+
+// closeTo is the distance, in the size of parts and coordinates, below which a point counts as on a face that touches: poses that
+// were rounded still touch.
+const closeTo = 1e-14
+
+// reaction returns what the first does to the second, given what the second does to the first, about the same point.
+func (o outcome) reaction() outcome {
+	for i := range atEnergy {
+		o.total.v[i] = -o.total.v[i]
+	}
+	return o
+}
+
+// dearer reports whether the field of a costs so much more than that of b, or has edges where that of b has none, that it is
+// better to integrate over a.
+func dearer(a, b *bound.Charge) bool { return cost(a) > cost(b) }
+
+// cost ranks the fields of bodies: measured, in the order of a microsecond.
+func cost(c *bound.Charge) int {
+	body := c.Body()
+	if at, ok := body.(geom.Placed); ok {
+		body = at.Body
+	}
+	affine := false
+	for _, v := range c.Volumes {
+		affine = affine || v.Min != 0 || v.Max != 0
+	}
+	n := 20
+	switch b := body.(type) {
+	case geom.Sphere, geom.HollowSphere, geom.Ellipsoid:
+		n = 1
+	case geom.Box:
+		n = 2
+	case geom.Flat:
+		n = 2 + len(b.Polyhedron().Faces())/4
+	case geom.Cylinder, geom.Tube:
+		n = 4
+	}
+	if affine {
+		n *= 3
+	}
+	return n
+}
