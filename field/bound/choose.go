@@ -76,8 +76,8 @@ func wholeBody(body geom.Body, p field.Polarization) (field.Source, error) {
 		}
 		return sphereForm(b.Inner, b.Outer, p)
 	case geom.Ellipsoid:
-		if l.uniform {
-			return element.NewEllipsoid(b, l.affine.Value)
+		if l.is {
+			return element.NewAffineEllipsoid(b, l.affine)
 		}
 	}
 	return nil, nil
