@@ -62,6 +62,7 @@ func Families() []Family {
 		{"worked examples", "Jobs of the trade in SI units.", workedExamples},
 		{"reference values", "Worst point of each reference body, in units of the contract 1e-12.", referenceValues},
 		{"independent methods", "The same field computed in another way.", independentMethods},
+		{"integrators", "Integration over faces and cells against textbook forms and elements; orders of convergence against theory.", integrators},
 		{"identities", "What every bound charge obeys, of every kind of body.", identities},
 		{"laws", "Laws of the field, checked on one source of each kind; the value is the number of violations.", laws},
 		{"same bits", "Results that must agree in every bit; the value is the number of values that do not.", sameBits},
