@@ -68,6 +68,7 @@ func families(o *Options) []Family {
 			"true: how many bound the error; over: median of estimate/max(|error|, u |value|); worst: error over what the contract allows.",
 			func() []trial { return estimates(o) }},
 		{"independent methods", "The same field computed in another way.", independentMethods},
+		{"integrators", "Integration over faces and cells against textbook forms and elements; orders of convergence against theory.", integrators},
 		{"identities", "What every bound charge obeys, of every kind of body.", identities},
 		{"laws", "Laws of the field, checked on one source of each kind; the value is the number of violations.", laws},
 		{"same bits", "Results that must agree in every bit; the value is the number of values that do not.", sameBits},
