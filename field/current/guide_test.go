@@ -259,20 +259,20 @@ func TestLoopIntegral(t *testing.T) {
 		if math.IsNaN(c.want) { // a tilted great circle: the flux is that of the projected disc
 			c.want = 2 * math.Pi * turn.VectorToOuter(r3.Vec{Z: 1}).Z
 		}
-		got, estimate, err := current.LoopIntegral(c.src, c.curve, 0)
+		got, estimate, err := current.LoopIntegral(t.Context(), c.src, c.curve, 0)
 		if miss := math.Abs(got - c.want); err != nil || miss > 1e-11*max(math.Abs(c.want), 1) || miss > estimate+4*u*math.Abs(c.want) {
 			t.Errorf("%s: %.15g, want %.15g, off by %.3g, estimate %.3g, %v", c.name, got, c.want, miss, estimate, err)
 		} else {
 			t.Logf("%s: %.15g off by %.2g, estimate %.2g", c.name, got, miss, estimate)
 		}
 	}
-	if _, _, err := current.LoopIntegral(l, current.Circle{Radius: 1}, 0); err == nil {
+	if _, _, err := current.LoopIntegral(t.Context(), l, current.Circle{Radius: 1}, 0); err == nil {
 		t.Error("the flux of a loop through itself is infinite and was accepted")
 	}
-	if _, _, err := current.LoopIntegral(l, current.Path{}, 0); err == nil {
+	if _, _, err := current.LoopIntegral(t.Context(), l, current.Path{}, 0); err == nil {
 		t.Error("an empty curve was accepted")
 	}
-	if _, _, err := current.LoopIntegral(l, current.Circle{Radius: 2}, 1); err == nil {
+	if _, _, err := current.LoopIntegral(t.Context(), l, current.Circle{Radius: 2}, 1); err == nil {
 		t.Error("accuracy 1 was accepted")
 	}
 }
