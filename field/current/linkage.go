@@ -1,6 +1,7 @@
 package current
 
 import (
+	"context"
 	"errors"
 	"fmt"
 	"math"
@@ -67,8 +68,8 @@ func (p Path) At(k int, t float64) (x, dx r3.Vec) {
 // bounds the error: that of the integration and, through their own estimates, of the values. Where a jumps across the curve,
 // the interval is halved down to the jump; a curve that is cut there takes less time.
 //
-// It refuses an empty curve, and returns ErrNotConverged with the best value after 2000 intervals.
-func LoopIntegral(src Source, curve Curve, accuracy float64) (value, estimate float64, err error) {
+// It refuses an empty curve, stops with the error of ctx, and returns ErrNotConverged with the best value after 2000 intervals.
+func LoopIntegral(ctx context.Context, src Source, curve Curve, accuracy float64) (value, estimate float64, err error) {
 	if accuracy == 0 {
 		accuracy = 1e-12
 	}
@@ -86,6 +87,9 @@ func LoopIntegral(src Source, curve Curve, accuracy float64) (value, estimate fl
 	}
 	const most = 2000
 	for len(spans) < most {
+		if ctx.Err() != nil {
+			return math.NaN(), math.Inf(1), fmt.Errorf("current: loop integral stopped after %d intervals: %w", len(spans), ctx.Err())
+		}
 		miss, size, worst := 0.0, 0.0, 0
 		for i, s := range spans {
 			miss, size = miss+s.miss, size+s.size
