@@ -14,6 +14,7 @@ type goal struct {
 	accuracy float64
 	stiff    bool
 	reach    float64
+	only     [4]bool // which of force, torque, energy and stiffness count, if any is set
 }
 
 // floorOf is the part of the magnitudes below which a value is not asked for to its own accuracy.
@@ -28,6 +29,13 @@ func (g goal) allowed(total *sums) quad {
 	}
 	if !g.stiff {
 		tol[3] = math.Inf(1)
+	}
+	if g.only != [4]bool{} {
+		for k, on := range g.only {
+			if !on {
+				tol[k] = math.Inf(1)
+			}
+		}
 	}
 	return tol
 }

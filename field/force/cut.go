@@ -4,7 +4,6 @@ import (
 	"math"
 	"slices"
 
-	"example.com/boundpole/field/bound"
 	"example.com/boundpole/geom"
 	"example.com/boundpole/geom/pair"
 	"gonum.org/v1/gonum/spatial/r3"
@@ -16,16 +15,7 @@ const nearby = 0.03
 
 // cutAlong cuts the plane faces of the part along the edges of the other that are close to them, so that the field is singular, or
 // nearly so, only at sides of panels.
-func (p *part) cutAlong(o *other) {
-	if o.charge == nil {
-		return
-	}
-	edges := liveEdges(o.charge)
-	if o.plane != nil {
-		for i := range edges {
-			edges[i] = edges[i].mirrored(o)
-		}
-	}
+func (p *part) cutAlong(edges []curve) {
 	for i := range p.faces {
 		f := &p.faces[i]
 		flat, ok := sheetOf(f.surface)
@@ -40,15 +30,29 @@ func (p *part) cutAlong(o *other) {
 	}
 }
 
-// liveEdges returns the edges of faces that carry charge.
-func liveEdges(c *bound.Charge) []curve {
-	var all []curve
-	for i := range c.Layers {
-		if l := &c.Layers[i]; l.Min != 0 || l.Max != 0 {
-			all = append(all, edgesOfFace(l.Face)...)
+// liveEdges returns the edges of faces of the source that carry charge; ok is false if there may be others.
+func (o *other) liveEdges() (all []curve, ok bool) {
+	if o.charge == nil {
+		return nil, false
+	}
+	for i := range o.charge.Layers {
+		l := &o.charge.Layers[i]
+		if l.Min == 0 && l.Max == 0 {
+			continue
+		}
+		if !known(l.Face.Surface) {
+			return nil, false
+		}
+		for _, c := range edgesOfFace(l.Face) {
+			if o.plane != nil {
+				c = c.mirrored(o)
+			}
+			if !slices.Contains(all, c) {
+				all = append(all, c)
+			}
 		}
 	}
-	return all
+	return all, true
 }
 
 func (c curve) mirrored(o *other) curve {
@@ -182,6 +186,9 @@ func (f *sheet) close(edges []curve) []line {
 		if c.round {
 			s, t, h := f.coordinates(c.centre)
 			r := r3.Norm(c.e1)
+			if r == 0 {
+				continue
+			}
 			tilt := math.Hypot(r3.Dot(c.e1, f.n), r3.Dot(c.e2, f.n))
 			if math.Abs(h)+tilt < reach && tilt < 1e-3*reach && f.meets(s-r, s+r, t-r, t+r) {
 				lines = append(lines, line{round: true, s: s, t: t, radius: r})

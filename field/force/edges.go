@@ -27,7 +27,25 @@ func (c *curve) at(t float64) r3.Vec {
 	return r3.Add(c.centre, r3.Add(r3.Scale(k, c.e1), r3.Scale(s, c.e2)))
 }
 
-// edgesOf returns the edges and rims of the plane and conical faces of a body. Pieces of free form have none that are known.
+// apart returns the distance of x from the curve; of a circle, the whole of it counts.
+func (c *curve) apart(x r3.Vec) float64 {
+	if !c.round {
+		e, d := r3.Sub(c.b, c.a), r3.Sub(x, c.a)
+		t := min(max(r3.Dot(e, d)/r3.Norm2(e), 0), 1)
+		return r3.Norm(r3.Sub(d, r3.Scale(t, e)))
+	}
+	d := r3.Sub(x, c.centre)
+	r := r3.Norm(c.e1)
+	if r == 0 {
+		return r3.Norm(d)
+	}
+	s, t := r3.Dot(d, c.e1)/r, r3.Dot(d, c.e2)/r
+	h2 := max(0, r3.Norm2(d)-s*s-t*t)
+	off := math.Hypot(s, t) - r
+	return math.Sqrt(h2 + off*off)
+}
+
+// edgesOf returns the edges and rims of the faces of a body that have edges of their own.
 func edgesOf(b geom.Body) []curve {
 	var all []curve
 	for _, f := range b.Faces() {
@@ -52,6 +70,18 @@ func edgesOfFace(f geom.Face) []curve {
 	return all
 }
 
+// known reports whether all edges of a surface are known.
+func known(s geom.Surface) bool {
+	if p, ok := s.(geom.PlacedSurface); ok {
+		s = p.Surface
+	}
+	switch s.(type) {
+	case geom.SphereSurface, geom.EllipsoidSurface, geom.TorusSurface:
+		return true
+	}
+	return len(edgesOfSurface(s)) > 0
+}
+
 func edgesOfSurface(s geom.Surface) []curve {
 	switch f := s.(type) {
 	case geom.Polygon:
@@ -64,6 +94,21 @@ func edgesOfSurface(s geom.Surface) []curve {
 		return []curve{rim(f.Radius, f.Z)}
 	case geom.Annulus:
 		return []curve{rim(f.Inner, f.Z), rim(f.Outer, f.Z)}
+	case geom.Wall:
+		return []curve{rim(f.Radius, f.Z1), rim(f.Radius, f.Z2)}
+	case geom.ConeWall:
+		return []curve{rim(f.R1, f.Z1), rim(f.R2, f.Z2)}
+	case geom.WallSector:
+		from, to := f.Ends()
+		all := []curve{rim(f.Radius, f.Z1), rim(f.Radius, f.Z2)}
+		for i := range all {
+			all[i].from, all[i].angle = math.Atan2(from.Y.Value(), from.X.Value()), f.Angle()
+		}
+		for _, e := range [2]pair.Vec{from, to} {
+			at := func(z float64) r3.Vec { return r3.Vec{X: f.Radius * e.X.Value(), Y: f.Radius * e.Y.Value(), Z: z} }
+			all = append(all, curve{a: at(f.Z1), b: at(f.Z2)})
+		}
+		return all
 	case geom.Sector:
 		from, to := f.Ends()
 		all := []curve{rim(f.Inner, f.Z), rim(f.Outer, f.Z)}

@@ -4,6 +4,7 @@ import (
 	"context"
 	"errors"
 	"fmt"
+	"math"
 
 	"example.com/boundpole/field"
 	"example.com/boundpole/field/bound"
@@ -16,7 +17,7 @@ import (
 // a plane (package image) is not.
 //
 // Domain: any body with charts and blocks; others may be a bound.Charge, bound.Assembly, field.Sum, field.Scaled, field.Constant,
-// point or dipole, image.Image or any other source. A source that is no field.Evaluator has no estimate, and neither has the result.
+// point or dipole, image.Image or any other source. A source that is no field.Evaluator has no estimate, and neither has the result: +Inf.
 // Singular: the force between bodies is finite also in contact; the stiffness is not where edges touch.
 // Accuracy: Result.Error bounds the error; it is at most Settings.Accuracy of the value, see there, or ErrNotConverged is returned
 // with the best result. Bodies that stand in each other: an error that wraps ErrOverlap.
@@ -88,12 +89,16 @@ func onPoint(x r3.Vec, others field.Source, s *Settings, add func(v *field.Value
 	if others == nil {
 		return Result{}, errors.New("force: others is nil; give a source")
 	}
-	v := field.At(others, x, field.Mean, field.WantPhi|field.WantG|field.WantGrad|field.WantErr)
+	want := field.WantPhi | field.WantG | field.WantErr | field.WantGrad
+	v := field.At(others, x, field.Mean, want)
 	switch v.Status {
 	case field.OnEdge, field.AtPoint, field.BadInput:
 		return Result{}, fmt.Errorf("force: the point %v is %v of the others; move it", x, v.Status)
 	}
+	var lacks sums
+	lacks.note(&v)
 	t := add(&v, r3.Sub(x, set.About), set.Stiffness)
+	t.mute, t.dark = lacks.mute, lacks.dark
 	o := outcome{total: t, error: least(&t), nodes: 1, met: true}
 	return o.result(set.Stiffness), nil
 }
@@ -104,6 +109,13 @@ func (o *outcome) result(stiff bool) Result {
 		Size: o.total.size, Error: Bounds{o.error[0], o.error[1], o.error[2], o.error[3]}}
 	if stiff {
 		r.Stiffness = o.total.stiffness()
+	}
+	if o.total.mute {
+		inf := math.Inf(1)
+		r.Error = Bounds{inf, inf, inf, inf}
+	}
+	if o.total.dark {
+		r.Energy, r.Error.Energy = math.NaN(), math.Inf(1)
 	}
 	return r
 }
@@ -122,7 +134,7 @@ func act(ctx context.Context, p *part, all []other, set Settings) (Result, error
 			}
 			sum.total.add(&o.total, all[i].factor)
 			for k, e := range o.error {
-				sum.error[k] += abs(all[i].factor) * e
+				sum.error[k] += math.Abs(all[i].factor) * e
 			}
 			sum.nodes += o.nodes
 		}
@@ -144,11 +156,4 @@ func act(ctx context.Context, p *part, all []other, set Settings) (Result, error
 		return r, fmt.Errorf("force: %w", ErrNotConverged)
 	}
 	return r, nil
-}
-
-func abs(x float64) float64 {
-	if x < 0 {
-		return -x
-	}
-	return x
 }

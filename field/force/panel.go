@@ -19,9 +19,11 @@ type panel struct {
 	dense  func(x r3.Vec) float64 // of a block
 
 	level int
+	near  bool // the field may be singular closer to it than its own size
 	value sums
-	miss  quad
-	axis  int // along which the integrand is least resolved
+	step  quad // difference of the last two rules
+	miss  quad // bound on the error
+	axis  int  // along which the integrand is least resolved
 }
 
 // ladder holds the numbers of points a direction; each rule is held against the one before. Free: more points cost more and need
@@ -56,6 +58,13 @@ type work struct {
 	stiff          bool
 	reach          float64
 	nodes          int
+	edges          []curve // of the other part
+	known          bool    // there are no others
+	shift          float64 // by which coordinates are rounded
+	steep          float64 // rate at which the field changes over its own size, 1/length
+
+	own       field.Source // the part's own field, where the stress is integrated instead of what acts on charge
+	ownValues *field.Values
 }
 
 func newWork(src field.Source, about r3.Vec, p *part, stiff bool) *work {
@@ -69,20 +78,55 @@ func newWork(src field.Source, about r3.Vec, p *part, stiff bool) *work {
 // measure integrates over a new panel by the rule of its level, at least the second, and the one before.
 func (w *work) measure(p *panel, rho float64) {
 	p.level = max(p.level, 1) - 1
+	p.step = quad{}
 	p.value = sums{}
 	w.rule(p, p.points(p.level), rho, &p.value)
+	p.near = w.close(w.points.Len())
 	w.climb(p, rho)
 }
 
-// climb integrates by the next rule.
+// climb integrates by the next rule and bounds its error. Away from edges of the other part rules converge like a power of their
+// number of points, so that the next difference is smaller than the last by their ratio, of which the root is taken. Near edges
+// two rules may agree by chance, so that the difference before counts too.
 func (w *work) climb(p *panel, rho float64) {
-	coarse := p.value
+	coarse, last := p.value, p.step
 	p.level++
 	n := p.points(p.level)
 	p.value = sums{}
 	w.rule(p, n, rho, &p.value)
 	p.axis = w.roughest(p, n)
-	p.miss = p.value.distance(&coarse, w.reach, w.stiff)
+	p.step = p.value.distance(&coarse, w.reach, w.stiff)
+	p.miss = p.step
+	for k, d := range p.step {
+		switch fall := d / last[k]; {
+		case p.near:
+			p.miss[k] = max(2*d, 0.2*last[k])
+		case fall < 0.1: // false for the first two rules
+			p.miss[k] = d * max(math.Sqrt(fall), 0.03)
+		}
+	}
+}
+
+// close reports whether edges of the other part are, or may be, within half a radius of the first m points.
+func (w *work) close(m int) bool {
+	if !w.known {
+		return true
+	}
+	if len(w.edges) == 0 {
+		return false
+	}
+	lo, hi := r3.Vec{X: w.x[0], Y: w.y[0], Z: w.z[0]}, r3.Vec{X: w.x[0], Y: w.y[0], Z: w.z[0]}
+	for i := range m {
+		lo = r3.Vec{X: min(lo.X, w.x[i]), Y: min(lo.Y, w.y[i]), Z: min(lo.Z, w.z[i])}
+		hi = r3.Vec{X: max(hi.X, w.x[i]), Y: max(hi.Y, w.y[i]), Z: max(hi.Z, w.z[i])}
+	}
+	centre, radius := ballOf(r3.Box{Min: lo, Max: hi})
+	for i := range w.edges {
+		if w.edges[i].apart(centre) < 1.6*radius { // the outermost points are a little inside
+			return true
+		}
+	}
+	return false
 }
 
 // rule sets s to the integral with n points a direction.
@@ -104,9 +148,14 @@ func (w *work) rule(p *panel, n int, rho float64, s *sums) {
 	v := w.values.Slice(0, m)
 	field.Evaluate(w.src, v, &w.points, field.Outside)
 	w.nodes += m
+	if w.own != nil {
+		w.stress(s, v)
+		return
+	}
 	for i := range m {
 		val := v.At(i)
-		if val.Status == field.OnEdge || val.Status == field.AtPoint {
+		s.note(&val)
+		if !finite(val.G) {
 			w.edge(s, i, &val)
 			continue
 		}
@@ -118,6 +167,27 @@ func (w *work) rule(p *panel, n int, rho float64, s *sums) {
 		if w.rho[i] != 0 {
 			s.uniform(1, w.rho[i], w.n[i], r, r3.Sub(x, w.centre), &val, w.stiff)
 		}
+	}
+	w.rounded(s)
+}
+
+// rounded adds what the rounding of the places of charge does.
+func (w *work) rounded(s *sums) {
+	s.err.Energy += w.shift * s.size.Force
+	s.err.Force += w.shift * w.steep * s.size.Force
+	s.err.Torque += w.shift * (s.size.Force + w.steep*s.size.Torque)
+	s.err.Stiffness += w.shift * w.steep * s.size.Stiffness
+}
+
+// note takes down what a value lacks, and gives it zero instead.
+func (s *sums) note(v *field.Value) {
+	if math.IsInf(v.ErrG, 1) && finite(v.G) {
+		s.mute = true
+		v.ErrPhi, v.ErrG, v.ErrGrad = 0, 0, 0
+	}
+	if v.Phi != v.Phi {
+		s.dark = true
+		v.Phi, v.ErrPhi = 0, 0
 	}
 }
 

@@ -2,6 +2,7 @@ package force
 
 import (
 	"context"
+	"math"
 
 	"example.com/boundpole/field"
 	"example.com/boundpole/field/bound"
@@ -29,6 +30,9 @@ func share(ctx context.Context, p *part, o *other, g goal, set Settings) (outcom
 	}
 	if o.charge != nil {
 		if out, ok := boxes(p, o, g, set.About); ok {
+			return out, nil
+		}
+		if out, ok := coaxial(p, o, g, set.About); ok {
 			return out, nil
 		}
 		q, ok := partOf(o.charge)
@@ -63,21 +67,49 @@ func faces(ctx context.Context, p *part, o *other, g goal, set Settings) (outcom
 			pb = p.charge.Bounds()
 		}
 		size := max(p.reach, r3.Norm(p.centre), r3.Norm(box.Min), r3.Norm(box.Max))
-		if gap(pb, box) <= closeTo*size {
+		space := gap(pb, box)
+		w.shift, w.steep = 2*0x1p-53*(p.reach+r3.Norm(p.centre)), 4/max(space, 0.1*p.reach)
+		if space <= touching*size {
 			w.slackOf = closeTo * size
+			if o.charge != nil && o.plane == nil {
+				w.slackOf += 2 * p.sunk(o.charge, touching*size)
+			}
 			if o.charge == nil && p.charge != nil {
 				w.slackOf, w.push = 0, 2*closeTo*size
 			}
 		}
 	}
 	g.reach = p.reach
-	p.cutAlong(o)
+	w.edges, w.known = o.liveEdges()
+	p.cutAlong(w.edges)
 	return integrate(ctx, p, w, g, set.MaxNodes)
 }
 
 // closeTo is the distance, in the size of parts and coordinates, below which a point counts as on a face that touches: poses that
 // were rounded still touch.
 const closeTo = 1e-14
+
+// sunk returns how far plane faces of the part and of the other that lie on each other are apart, up to a limit: poses of bodies that
+// touch may be rounded more coarsely than closeTo.
+func (p *part) sunk(c *bound.Charge, limit float64) float64 {
+	most := 0.0
+	for i := range p.faces {
+		a, ok := sheetOf(p.faces[i].surface)
+		if !ok {
+			continue
+		}
+		for k := range c.Layers {
+			b, ok := sheetOf(c.Layers[k].Face.Surface)
+			if !ok || r3.Norm(r3.Cross(a.n, b.n)) > 1e-9 {
+				continue
+			}
+			if h := math.Abs(r3.Dot(a.n, r3.Sub(a.o, b.o))); h <= limit {
+				most = max(most, h)
+			}
+		}
+	}
+	return most
+}
 
 // reaction returns what the first does to the second, given what the second does to the first, about the same point.
 func (o outcome) reaction() outcome {

@@ -25,6 +25,8 @@ type sums struct {
 	v    [allLen]float64
 	size Bounds // of the magnitudes
 	err  Bounds // from the estimates of the field
+	mute bool   // a source made no claim on its error
+	dark bool   // a source has no potential
 }
 
 // quad is four numbers: force, torque, energy, stiffness.
@@ -46,6 +48,7 @@ func (s *sums) add(t *sums, f float64) {
 	}
 	s.size.add(t.size, math.Abs(f))
 	s.err.add(t.err, math.Abs(f))
+	s.mute, s.dark = s.mute || t.mute, s.dark || t.dark
 }
 
 // charge adds the charge q at r in a field.
