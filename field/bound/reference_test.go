@@ -1,6 +1,7 @@
 package bound_test
 
 import (
+	"maps"
 	"math"
 	"os"
 	"slices"
@@ -98,18 +99,52 @@ func referenceBody(t *testing.T, c *refcase.Case) (body geom.Body, pol field.Pol
 		if !pose.Turned() && pose.Origin().Value() == (r3.Vec{}) {
 			return power(poly)
 		}
-		outer := func(x r3.Vec) r3.Vec { return pose.ToOuter(pair.VecOf(x)).Value() } // the powers are global
-		return power(field.Func{
-			P: func(x r3.Vec) [3]float64 {
-				v := pose.VectorToLocal(poly.At(outer(x)))
-				return [3]float64{v.X, v.Y, v.Z}
-			},
-			Div: func(x r3.Vec) float64 { return poly.Divergence(outer(x)) },
-		})
+		return power(composed(poly, pose)) // the powers are global
 	default:
 		return nil, p, false
 	}
 	return geom.At(body, pose), p, true
+}
+
+// composed returns a polynomial of the outer frame as seen in that of a pose.
+func composed(p field.Polynomial, pose geom.Pose) field.Polynomial {
+	m, o := pose.Matrix(), pose.Origin().Value()
+	linear := [3]map[[3]int]float64{}
+	for i, c := range [3]float64{o.X, o.Y, o.Z} {
+		linear[i] = map[[3]int]float64{{}: c, {1, 0, 0}: m[i][0], {0, 1, 0}: m[i][1], {0, 0, 1}: m[i][2]}
+	}
+	var all [3]map[[3]int]float64
+	for i := range all {
+		all[i] = map[[3]int]float64{}
+	}
+	for _, t := range p {
+		f := map[[3]int]float64{{}: t.Coefficient}
+		for i, n := range t.Powers {
+			for range n {
+				next := map[[3]int]float64{}
+				for a, u := range f {
+					for b, v := range linear[i] {
+						next[[3]int{a[0] + b[0], a[1] + b[1], a[2] + b[2]}] += u * v
+					}
+				}
+				f = next
+			}
+		}
+		for powers, v := range f {
+			for i := range 3 { // components turn back
+				all[i][powers] += m[t.Component][i] * v
+			}
+		}
+	}
+	var q field.Polynomial
+	for i := range all {
+		for _, powers := range slices.SortedFunc(maps.Keys(all[i]), func(a, b [3]int) int { return slices.Compare(a[:], b[:]) }) {
+			if c := all[i][powers]; c != 0 {
+				q = append(q, field.Term{Component: i, Coefficient: c, Powers: powers})
+			}
+		}
+	}
+	return q
 }
 
 // affineAt returns p0 + g x, with the sum taken in pairs: far from the origin its terms cancel.
