@@ -23,14 +23,16 @@ type integrated struct {
 	near   field.Sum
 	far    *field.Moments
 	centre r3.Vec
+	radius float64 // bounding radius
+	order  int
 	limit  float64 // distance from the centre beyond which the expansion serves; infinite if it does not
 	missed float64 // bound on the error of g that the expansion has at the limit because the dipole density is not smooth
 }
 
-// expansion order and reach: (1/4)^28 = 1e-17.
+// expansion orders and reaches in bounding radii: 4^-28 = 1e-17, 2.45^-38 = 2e-15.
 const (
-	farOrder = 28
-	farReach = 4
+	farOrder, farReach   = 28, 4
+	flatOrder, flatReach = 38, 2.45
 )
 
 // integrated lists the integrators of all faces and cells that carry charge.
@@ -39,6 +41,15 @@ func (c *Charge) integrated() (field.Source, error) {
 		return nil, c.unsupported("its volume charge is infinite " + where + " inside the body; give a power of at least 1, or a body that keeps off it")
 	}
 	s := &integrated{charge: c}
+	box := c.local.Bounds()
+	s.centre = r3.Scale(0.5, r3.Add(box.Min, box.Max))
+	s.radius = reach(box, s.centre)
+	s.limit, s.order = farReach*s.radius, farOrder
+	if build := c.facets(); build != nil {
+		s.limit, s.order = flatReach*s.radius, flatOrder
+		s.layers = append(s.layers, build)
+		return s, nil
+	}
 	for _, f := range c.local.Faces() {
 		charted, ok := f.Surface.(geom.Charted)
 		if !ok {
@@ -69,10 +80,20 @@ func (c *Charge) integrated() (field.Source, error) {
 		density := func(x r3.Vec) float64 { return -c.p.Divergence(x) }
 		s.layers = append(s.layers, func() (field.Evaluator, error) { return cubature.NewVolume(blocked.Blocks(), density, nil) })
 	}
-	box := c.local.Bounds()
-	s.centre = r3.Scale(0.5, r3.Add(box.Min, box.Max))
-	s.limit = farReach * reach(box, s.centre)
 	return s, nil
+}
+
+// facets returns what builds the charge of a body with plane faces and polynomial p, nil for others.
+func (c *Charge) facets() func() (field.Evaluator, error) {
+	flat, ok := c.local.(geom.Flat)
+	if !ok {
+		return nil
+	}
+	p, ok := polynomialOf(c.p)
+	if !ok || p.Degree() > cubature.MostDegree {
+		return nil
+	}
+	return func() (field.Evaluator, error) { return cubature.NewFacets(flat.Polyhedron(), p) }
 }
 
 // prepare builds the integrators and the expansion.
@@ -85,24 +106,32 @@ func (s *integrated) prepare() {
 		}
 		s.near = append(s.near, src.(field.Source))
 	}
-	s.expand(s.charge, s.limit/farReach)
+	s.expand(s.charge)
 }
 
-// expand integrates the moments with two rules. Where they differ by more than the far field is worth, because p has a kink or
-// a singularity inside, the expansion is not used.
-func (s *integrated) expand(c *Charge, a float64) {
+// expand integrates the moments with two rules, or with one that is exact for a polynomial. Where the two differ by more than the
+// far field is worth, because p has a kink or a singularity inside, the expansion is not used.
+func (s *integrated) expand(c *Charge) {
+	weight := 0.0 // int |p|
 	rule := func(n int) *field.Moments {
-		m := field.NewMoments(s.centre, a, farOrder)
+		m := field.NewMoments(s.centre, s.radius, s.order)
+		weight = 0
 		for _, cell := range c.local.Cells() {
-			cell.Nodes(n, func(x r3.Vec, w float64) { m.AddDipole(x, r3.Scale(w, c.p.At(x))) })
+			cell.Nodes(n, func(x r3.Vec, w float64) {
+				p := r3.Scale(w, c.p.At(x))
+				weight += r3.Norm(p)
+				m.AddDipole(x, p)
+			})
 		}
 		return m
 	}
-	s.far = rule(farOrder/2 + 6)
-	if _, exact := degree(c.p); exact {
+	if p, exact := polynomialOf(c.p); exact {
+		s.far = rule(s.points() + p.Degree()/2)
+		s.missed = 0x1p-51 * weight / (2 * math.Pi * s.limit * s.limit * s.limit) // the rounding of its dipole
 		return
 	}
-	coarse := rule(farOrder / 2)
+	s.far = rule(s.points() + 8)
+	coarse := rule(s.points() + 3)
 	size := 0.0
 	for _, d := range [6]r3.Vec{{X: 1}, {Y: 1}, {Z: 1}, {X: 0.6, Y: 0.8}, {Y: 0.6, Z: -0.8}, {X: -0.8, Z: 0.6}} {
 		x := r3.Add(s.centre, r3.Scale(1.001*s.limit, d))
@@ -113,6 +142,13 @@ func (s *integrated) expand(c *Charge, a float64) {
 	if s.missed > 1e-12*size {
 		s.limit = math.Inf(1)
 	}
+}
+
+// points returns how many Gauss points a direction serve for points beyond the limit: their error falls as b^-2n, b = t + sqrt(t^2 - 1)
+// at a distance of t radii ([Trefethen2013]). What they miss of higher moments is as small there as what the order leaves out.
+func (s *integrated) points() int {
+	t := s.limit / s.radius
+	return int(math.Ceil(8/math.Log10(t+math.Sqrt(t*t-1)))) + 1
 }
 
 // infinite says where inside the body a power law has infinite volume charge, "" if nowhere.

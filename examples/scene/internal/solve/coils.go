@@ -41,7 +41,7 @@ func (s *Setup) linkage(ctx context.Context, l *scenefile.Linkage) (*Answer, err
 		if src == nil {
 			continue
 		}
-		value, e, err := current.LoopIntegral(src, curve, min(s.Scene.Accuracy, 1e-3)/4)
+		value, e, err := current.LoopIntegral(ctx, src, curve, min(s.Scene.Accuracy, 1e-3)/4)
 		add(factor, value, e)
 		if err != nil {
 			failed = err
