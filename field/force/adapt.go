@@ -102,7 +102,7 @@ func integrate(ctx context.Context, p *part, w *work, g goal, most int) (outcome
 func claimed(total *sums, low quad) bool {
 	size := total.size.quad()
 	for k := range low {
-		if !(low[k] <= 1e-12*size[k]) {
+		if !(low[k] <= 1e-12*size[k]) && size[k] > 0 {
 			return false
 		}
 	}

@@ -112,6 +112,9 @@ func boxes(p *part, o *other, g goal, about r3.Vec) (out outcome, ok bool) {
 	s := &out.total
 	s.push(f, r3.Add(own, r3.Cross(arm, f)), -k*c.energy)
 	moment := r3.Norm(a.p) * r3.Norm(b.p) * k
+	reach := math.Hypot(half[0], math.Hypot(half[1], half[2]))
+	away := math.Pow(min(1, reach/math.Sqrt(c.d[0]*c.d[0]+c.d[1]*c.d[1]+c.d[2]*c.d[2])), 3)
+	c.faces, c.volumes = away*c.faces, away*c.volumes
 	s.size = Bounds{Force: moment * c.faces, Torque: moment * (c.faces*r3.Norm(arm) + c.volumes), Energy: moment * c.volumes}
 	s.err = Bounds{Force: lost * moment * c.sizes2, Torque: lost * moment * (c.sizes3 + c.sizes2*r3.Norm(arm)), Energy: lost * moment * c.sizes3}
 	return out, out.settle(s, s, g)

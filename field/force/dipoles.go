@@ -204,9 +204,10 @@ func (o *outcome) settle(fine, coarse *sums, g goal) bool {
 	o.total = *fine
 	miss, low, tol := fine.distance(coarse, g.reach, g.stiff), least(fine), g.allowed(fine)
 	o.met = true
+	rounded := claimed(fine, low)
 	for k := range miss {
 		o.error[k] = miss[k] + low[k]
-		if !(o.error[k] <= tol[k]) && !(miss[k] <= low[k]) {
+		if !(o.error[k] <= tol[k]) && !(rounded && miss[k] <= low[k]) {
 			o.met = false
 		}
 	}
