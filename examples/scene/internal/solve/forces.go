@@ -116,9 +116,15 @@ func (s *Setup) force(ctx context.Context, q *scenefile.Force) (*Answer, error) 
 		vector("force", "F", r3.Scale(k, r.Force), k*r.Error.Force),
 		vector("torque", "T", r3.Scale(kT, r.Torque), kT*r.Error.Torque),
 	}}
-	a.Missed = !(r.Error.Force <= s.Scene.Accuracy*max(r3.Norm(r.Force), cancels*r.Size.Force)) ||
-		!(r.Error.Torque <= s.Scene.Accuracy*max(r3.Norm(r.Torque), cancels*r.Size.Torque))
+	a.Missed = !s.kept(r.Error.Force, r3.Norm(r.Force), r.Size.Force) || !s.kept(r.Error.Torque, r3.Norm(r.Torque), r.Size.Torque)
 	return a, err
+}
+
+// kept reports whether an error keeps the wanted accuracy of a value, or is no more than the rounding of the magnitudes that
+// cancel in it.
+func (s *Setup) kept(err, value, magnitudes float64) bool {
+	const rounding = 256 * 0x1p-53 // a field of some dozen roundings, times its arm
+	return err <= max(s.Scene.Accuracy*max(value, cancels*magnitudes), rounding*magnitudes)
 }
 
 // cancels is the part of the sum of the magnitudes below which a force is not held to its own size.
@@ -134,7 +140,7 @@ func (s *Setup) energy(ctx context.Context, one, two string) (*Answer, error) {
 	}
 	k := s.natural(a.Kind) / s.perMetre
 	answer := &Answer{Quantities: []Quantity{number("energy", "W", k*r.Energy, k*r.Error.Energy)}}
-	answer.Missed = !(r.Error.Energy <= s.Scene.Accuracy*max(abs(r.Energy), cancels*r.Size.Energy))
+	answer.Missed = !s.kept(r.Error.Energy, abs(r.Energy), r.Size.Energy)
 	return answer, err
 }
 
