@@ -119,6 +119,7 @@ func (b *AxialPower) value(x field.Point, side field.Side, want field.Want) fiel
 	c.lap -= in
 	c.zz -= in // the step of the solid angle through the disc at the point
 	c.sizeH += math.Abs(in)
+	c.sizeU *= 0.5 // measured: of 400 triples the least estimate of phi is 1.3 times the error, the median one 70 times
 	v := b.finish(&p, &c, left, status, want)
 	if f.half < 0.05*f.outer { // measured: in plates the rounding of the rule's weights adds up instead of averaging out
 		v.ErrPhi, v.ErrG = 4*v.ErrPhi, 4*v.ErrG

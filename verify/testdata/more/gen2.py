@@ -3,7 +3,8 @@
 
 gen2.py verify REF.json [PREFIX...]   recompute the cases that this program knows
 gen2.py make OUT.json [PREFIX...]     write the cases of cases2.py (all, or those whose name starts so); kept values are reused
-gen2.py triples SEED COUNT FAMILY [OUT.json]   random bodies and points of a family of sampler.py, values of >= 20 digits
+gen2.py triples SEED COUNT FAMILY OUT.json.gz   random bodies and points of a family of closed.py (closed forms) or sampler.py
+                                                (integrals), values of >= 20 digits
 """
 import json
 import os
@@ -69,7 +70,7 @@ if __name__ == "__main__":
     elif sys.argv[1] == "verify":
         verify(sys.argv[2], sys.argv[3:] or [""])
     elif sys.argv[1] == "triples":
+        import closed
         import sampler
-        seed, count, family = sys.argv[2], int(sys.argv[3]), sys.argv[4]
-        path = sys.argv[5] if len(sys.argv) > 5 else os.path.join(os.path.dirname(os.path.abspath(__file__)), "triples-%s-%s.json" % (family, seed))
-        sampler.triples(seed, count, family, path)
+        seed, count, family, path = sys.argv[2], int(sys.argv[3]), sys.argv[4], sys.argv[5]
+        (closed if family in closed.FAMILIES else sampler).triples(seed, count, family, path)
