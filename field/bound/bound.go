@@ -29,14 +29,15 @@ type Charge struct {
 	Moment     r3.Vec     // integral of p over the volume: the dipole moment
 	Identities []Identity // what must vanish, and how far it does
 
-	body   geom.Body    // as given, perhaps placed
-	inner  geom.Locator // tells points of the body's own frame
-	place  geom.Locator // tells points of the outer frame
-	local  geom.Body    // in its own frame
-	pose   geom.Pose
-	p      field.Polarization // in the body's own frame
-	own    field.Source       // in the body's own frame
-	source field.Source       // in the outer frame
+	body     geom.Body    // as given, perhaps placed
+	inner    geom.Locator // tells points of the body's own frame
+	place    geom.Locator // tells points of the outer frame
+	local    geom.Body    // in its own frame
+	pose     geom.Pose
+	p        field.Polarization // in the body's own frame
+	resolved *resolved          // of a power law
+	own      field.Source       // in the body's own frame
+	source   field.Source       // in the outer frame
 }
 
 // Layer is what one face carries.
