@@ -94,10 +94,7 @@ type coneSum struct {
 }
 
 // sweep integrates over the azimuth.
-func (b *AffineCone) sweep(c *conePoint, rule *sectorRule, want field.Want) (s coneSum) {
-	if !b.charged[wallFace] && b.rho == 0 {
-		return s
-	}
+func (c *conePoint) sweep(rule *sectorRule, want field.Want) (s coneSum) {
 	var panel sectorPanel
 	for _, span := range [2]sectorSpan{{-1, 0}, {0, 1}} {
 		d := rule.over(span, c.scale)
