@@ -23,7 +23,7 @@ var sheared = field.Affine{
 	Gradient: [3][3]float64{{0.5, -0.25, 0.125}, {0.75, -1, 0.5}, {-0.125, 0.25, 0.875}},
 }
 
-// magnet is a body with its magnetization and the accuracy that is due: closed forms on both sides, or integrals.
+// magnetized is a body with its magnetization and the accuracy that is due: closed forms on both sides, or integrals.
 type magnetized struct {
 	name string
 	body geom.Body
@@ -61,7 +61,7 @@ func magnets(t testing.TB) []magnetized {
 		{"cone", geom.Cone{Bottom: 1, Top: 0.5, Height: 1}, u, integrated, false},
 		{"torus", geom.Torus{Major: 1, Minor: 0.4}, u, integrated, false},
 		{"cylinder radial", geom.Cylinder{Radius: 1, Height: 1.5}, field.RadialPower{Coefficient: 1}, integrated, true},
-		{"tube radial square", geom.Tube{Inner: 0.5, Outer: 1, Height: 1.5}, field.RadialPower{Coefficient: 1, Power: 2}, integrated, true},
+		{"turned tube radial square", geom.At(geom.Tube{Inner: 0.5, Outer: 1, Height: 1.5}, pose), field.RadialPower{Coefficient: 1, Power: 2}, integrated, true},
 		{"cylinder axial square", geom.Cylinder{Radius: 1, Height: 1.5}, field.AxialPower{Coefficient: 1, Power: 2}, integrated, true},
 		{"ball central square", geom.Sphere{Radius: 1}, field.CentralPower{Coefficient: 1, Power: 2}, closed, false},
 	}
@@ -92,6 +92,19 @@ func pointsOf(body geom.Body, n int, rng *rand.Rand) []r3.Vec {
 	return out
 }
 
+// largest returns the greatest magnetization at the nodes of a rule.
+func largest(c magnetized) float64 {
+	body := c.body
+	if at, ok := body.(geom.Placed); ok {
+		body = at.Body
+	}
+	peak := 0.0
+	for _, cell := range body.Cells() {
+		cell.Nodes(4, func(x r3.Vec, _ float64) { peak = max(peak, r3.Norm(c.m.At(x))) })
+	}
+	return peak
+}
+
 // TestAgainstPoles holds b of the currents against h + m of the poles, which share no charge.
 func TestAgainstPoles(t *testing.T) {
 	for _, c := range magnets(t) {
@@ -105,7 +118,7 @@ func TestAgainstPoles(t *testing.T) {
 			t.Fatalf("%s: %v", c.name, err)
 		}
 		built := time.Since(start)
-		n := 400
+		n := 200
 		if c.slow {
 			n = 24
 		}
@@ -119,10 +132,8 @@ func TestAgainstPoles(t *testing.T) {
 		amp.Induction(v, at, field.Mean)
 		timeB := time.Since(start) / time.Duration(n)
 		worst, where := 0.0, ""
-		peak := 0.0
-		for i := range n {
-			peak = max(peak, r3.Norm(c.m.At(at.Vec(i))))
-		}
+		var over []float64
+		peak := largest(c)
 		for i := range n {
 			x := at.Vec(i)
 			got, want := v.At(i), h.At(i).G
@@ -142,8 +153,15 @@ func TestAgainstPoles(t *testing.T) {
 			if claim := got.ErrB + h.ErrG[i] + 2*u*r3.Norm(want); !(err <= claim) {
 				t.Errorf("%s at %v: error %.3g above the claims %.3g", c.name, x, err, claim)
 			}
+			if size := max(err, u*r3.Norm(want)); size > 0 {
+				over = append(over, got.ErrB/size)
+			}
 		}
-		t.Logf("%-24s worst %.2g (%s) built %v, h %v, a and b %v", c.name, worst, where, built, timeH, timeB)
+		t.Logf("%-24s worst %.2g (%s), estimate %.3g times too large, built in %v, h %v, a and b %v a point", c.name, worst, where,
+			median(over), built, timeH, timeB)
+		if m := median(over); m > 100 {
+			t.Errorf("%s: median overestimate %.3g, want at most 100", c.name, m)
+		}
 		for _, id := range amp.Identities {
 			if !id.Holds() {
 				t.Errorf("%s: %+v", c.name, id)
@@ -151,6 +169,210 @@ func TestAgainstPoles(t *testing.T) {
 		}
 		if d := r3.Norm(r3.Sub(amp.Moment, poles.Moment)); d > 1e-12*r3.Norm(poles.Moment)+1e-14*peak {
 			t.Errorf("%s: moment %v, of poles %v", c.name, amp.Moment, poles.Moment)
+		}
+	}
+}
+
+// TestPotential holds a against the integral of the currents over faces and cells, three sizes away, and its curl against b.
+func TestPotential(t *testing.T) {
+	for _, c := range magnets(t) {
+		amp, err := current.Of(c.body, c.m)
+		if err != nil {
+			t.Fatal(err)
+		}
+		box := c.body.Bounds()
+		centre, size := r3.Scale(0.5, r3.Add(box.Min, box.Max)), r3.Norm(r3.Sub(box.Max, box.Min))
+		for _, d := range []r3.Vec{{X: 1, Y: 1, Z: -1}, {X: -2, Y: 0.5, Z: 1}} {
+			x := r3.Add(centre, r3.Scale(size, d))
+			var want r3.Vec
+			add := func(y, j r3.Vec, w float64) {
+				want = r3.Add(want, r3.Scale(w/(4*math.Pi*r3.Norm(r3.Sub(x, y))), j))
+			}
+			for _, f := range c.body.Faces() {
+				f.Surface.Nodes(24, func(y, n r3.Vec, w float64) { add(y, amp.Surface(y, r3.Scale(f.Sign(), n)), w) })
+			}
+			for _, cell := range c.body.Cells() {
+				cell.Nodes(16, func(y r3.Vec, w float64) { add(y, amp.Volume(y), w) })
+			}
+			v := current.At(amp, x, field.Mean)
+			miss := r3.Norm(r3.Sub(v.A, want))
+			if miss > 1e-9*r3.Norm(want)+1e-13*largest(c) { // the rule converges; a kink in the density on the axis is left
+				t.Errorf("%s at %v: a %v, by integration %v, off by %.3g", c.name, x, v.A, want, miss)
+			}
+			if c.slow {
+				continue
+			}
+			const h = 0x1p-9
+			step := func(e r3.Vec) r3.Vec {
+				return r3.Scale(0.5/h, r3.Sub(current.At(amp, r3.Add(x, r3.Scale(h, e)), field.Mean).A, current.At(amp, r3.Sub(x, r3.Scale(h, e)), field.Mean).A))
+			}
+			dx, dy, dz := step(r3.Vec{X: 1}), step(r3.Vec{Y: 1}), step(r3.Vec{Z: 1})
+			curl := r3.Vec{X: dy.Z - dz.Y, Y: dz.X - dx.Z, Z: dx.Y - dy.X}
+			if d := r3.Norm(r3.Sub(curl, v.B)); d > 1e-5*r3.Norm(v.B)+1e-12 { // h^2 by distance squared
+				t.Errorf("%s at %v: curl a %v, b %v", c.name, x, curl, v.B)
+			}
+			if div := dx.X + dy.Y + dz.Z; math.Abs(div) > 1e-5*r3.Norm(v.B)+1e-12 {
+				t.Errorf("%s at %v: div a %v", c.name, x, div)
+			}
+		}
+	}
+}
+
+// TestJumps: across a face b jumps by K x n, K = m x n, and a not at all; the mean is in the middle.
+func TestJumps(t *testing.T) {
+	for _, c := range magnets(t) {
+		amp, err := current.Of(c.body, c.m)
+		if err != nil {
+			t.Fatal(err)
+		}
+		peak, seen := largest(c), 0
+		for _, f := range c.body.Faces() {
+			f.Surface.Nodes(2, func(x, n r3.Vec, _ float64) {
+				if seen++; seen > 8 || c.slow && seen > 3 {
+					return
+				}
+				n = r3.Scale(f.Sign(), n)
+				k := amp.Surface(x, n)
+				in, out, mean := current.At(amp, x, field.Inside), current.At(amp, x, field.Outside), current.At(amp, x, field.Mean)
+				if in.Status == field.Regular && r3.Norm(k) > 1e-12*peak { // a node is off the face by rounding
+					return
+				}
+				if d := r3.Norm(r3.Sub(r3.Sub(out.B, in.B), r3.Cross(k, n))); !(d <= 1e-10*peak) {
+					t.Errorf("%s, face %s at %v: b jumps by %v, want %v", c.name, f.Name, x, r3.Sub(out.B, in.B), r3.Cross(k, n))
+				}
+				if d := r3.Norm(r3.Sub(r3.Scale(0.5, r3.Add(out.B, in.B)), mean.B)); !(d <= 1e-10*peak) {
+					t.Errorf("%s, face %s at %v: mean %v of %v and %v", c.name, f.Name, x, mean.B, in.B, out.B)
+				}
+				if d := r3.Norm(r3.Sub(out.A, in.A)); !(d <= 1e-12*peak) {
+					t.Errorf("%s, face %s at %v: a jumps by %.3g", c.name, f.Name, x, d)
+				}
+			})
+		}
+	}
+}
+
+// TestTurnsHardPlaces holds the currents in circles against the poles at rims, on and next to the axis, on faces and far away.
+func TestTurnsHardPlaces(t *testing.T) {
+	cylinder, tube := geom.Cylinder{Radius: 1, Height: 1.5}, geom.Tube{Inner: 0.5, Outer: 1, Height: 1.5}
+	var points []r3.Vec
+	for _, d := range []float64{1e-3, 1e-6, 1e-9, 1e-12} {
+		points = append(points, r3.Vec{X: 1 + d, Z: 0.75 - d}, r3.Vec{X: 0.6 * (1 - d), Y: 0.8 * (1 - d), Z: 0.75 + d}, r3.Vec{Y: 0.5 - d, Z: -0.75 + d},
+			r3.Vec{X: d, Z: 0.7}, r3.Vec{X: d, Y: -d, Z: 0.75 + 1e-6}, r3.Vec{X: 0.7, Z: 0.75 + d})
+	}
+	for _, s := range []float64{3, 30, 1e3, 1e6} {
+		points = append(points, r3.Vec{X: 0.6 * s, Y: -0.5 * s, Z: 0.7 * s}, r3.Vec{Z: s}, r3.Vec{X: s})
+	}
+	points = append(points, r3.Vec{Z: 0.25}, r3.Vec{X: 0.7, Z: 0.75}, r3.Vec{X: 0.6, Y: 0.8, Z: 0.3}, r3.Vec{X: -0.5, Z: 0.2})
+	for _, c := range []magnetized{
+		{name: "radial 0", body: cylinder, m: field.RadialPower{Coefficient: 1}},
+		{name: "radial 0.5", body: cylinder, m: field.RadialPower{Coefficient: 1, Power: 0.5}},
+		{name: "radial 3", body: cylinder, m: field.Times{Polarization: field.RadialPower{Coefficient: 1, Power: 3}, Factor: -2}},
+		{name: "radial -1", body: tube, m: field.RadialPower{Coefficient: 1, Power: -1}},
+		{name: "axial 1", body: tube, m: field.AxialPower{Coefficient: 1, Power: 1}},
+		{name: "axial 5", body: cylinder, m: field.AxialPower{Coefficient: 1, Power: 5}},
+	} {
+		poles, err := bound.Of(c.body, c.m)
+		if err != nil {
+			t.Fatal(err)
+		}
+		amp, err := current.Of(c.body, c.m)
+		if err != nil {
+			t.Fatal(err)
+		}
+		peak, worst := largest(c), 0.0
+		reach := math.Hypot(1, 0.75)
+		for _, x := range points {
+			for _, side := range []field.Side{field.Mean, field.Inside, field.Outside} {
+				p := field.At(poles, x, side, field.WantG|field.WantErr)
+				v := current.At(amp, x, side)
+				if math.IsNaN(p.G.X) || v.Status == field.OnEdge {
+					continue
+				}
+				want := p.G
+				switch place := poles.Locate(pointOf(x), 0); {
+				case place.Region == geom.Inside && !math.IsNaN(c.m.At(x).X), place.Region == geom.On && side == field.Inside:
+					want = r3.Add(want, c.m.At(x))
+				case place.Region == geom.On && side == field.Mean:
+					want = r3.Add(want, r3.Scale(0.5, c.m.At(x)))
+				}
+				miss := r3.Norm(r3.Sub(v.B, want))
+				far := min(1, math.Pow(reach/r3.Norm(x), 3))
+				worst = max(worst, miss/max(r3.Norm(want), 1e-3*peak*far))
+				if v.Status == field.NotConverged || !(miss <= 1e-10*max(r3.Norm(want), 1e-3*peak*far)) || !(miss <= v.ErrB+p.ErrG+4*u*r3.Norm(want)) {
+					t.Errorf("%s at %v side %d: b %v, h + m %v, off by %.3g, estimates %.3g, %.3g; %v", c.name, x, side, v.B, want, miss, v.ErrB, p.ErrG, v.Status)
+				}
+			}
+		}
+		t.Logf("%s: worst %.2g", c.name, worst)
+	}
+}
+
+// TestReport reads what faces and cells carry.
+func TestReport(t *testing.T) {
+	amp, err := current.Of(geom.At(geom.Cylinder{Radius: 1, Height: 2}, geom.Translate(r3.Vec{X: 5})), field.Uniform{P: r3.Vec{Z: 3}})
+	if err != nil {
+		t.Fatal(err)
+	}
+	bottom, wall := amp.Layers[0], amp.Layers[2]
+	if !bottom.Uniform || bottom.Density != (r3.Vec{}) || bottom.Largest != 0 || wall.Uniform || math.Abs(wall.Largest-3) > 1e-15 || r3.Norm(wall.Current) > 1e-14 {
+		t.Errorf("bottom %+v, wall %+v", bottom, wall)
+	}
+	if k := amp.Surface(r3.Vec{X: 6}, r3.Vec{X: 1}); k != (r3.Vec{Y: 3}) {
+		t.Errorf("surface current %v, want 3 along y", k)
+	}
+	box, err := current.Of(geom.Box{Size: r3.Vec{X: 2, Y: 1.5, Z: 1}}, sheared)
+	if err != nil {
+		t.Fatal(err)
+	}
+	want := r3.Vec{X: 0.25 - 0.5, Y: 0.125 + 0.125, Z: 0.75 + 0.25}
+	if j := box.Volume(r3.Vec{X: 0.3}); j != want || r3.Norm(r3.Sub(box.Volumes[0].Current, r3.Scale(3, want))) > 1e-14 || math.Abs(box.Volumes[0].Largest-r3.Norm(want)) > 1e-15 {
+		t.Errorf("volume current %v, want %v; %+v", j, want, box.Volumes[0])
+	}
+	flat, err := current.Of(geom.Box{Size: r3.Vec{X: 2, Y: 1.5, Z: 1}}, field.Uniform{P: r3.Vec{Z: 2}})
+	if err != nil {
+		t.Fatal(err)
+	}
+	if l := flat.Layers[1]; l.Face.Name != "+x" || !l.Uniform || l.Density != (r3.Vec{Y: 2}) || l.Current != (r3.Vec{Y: 3}) {
+		t.Errorf("face %+v", l)
+	}
+}
+
+// TestBatch: a batch gives the same bits as its points one by one, and nothing is allocated.
+func TestBatch(t *testing.T) {
+	loop, err := current.NewLoop(geom.Disc{Radius: 1}, 1)
+	if err != nil {
+		t.Fatal(err)
+	}
+	wire, err := current.NewWire([]r3.Vec{{X: 1}, {Y: 1}, {Z: 1}}, true, 1)
+	if err != nil {
+		t.Fatal(err)
+	}
+	sources := map[string]current.Source{"loop": loop, "wire": wire, "posed": current.Posed{Source: loop, Pose: geom.Translate(r3.Vec{X: 1})}}
+	for _, c := range magnets(t) {
+		if sources[c.name], err = current.Of(c.body, c.m); err != nil {
+			t.Fatal(err)
+		}
+	}
+	rng := rand.New(rand.NewPCG(9, 9))
+	for name, src := range sources {
+		const n = 150
+		var x []r3.Vec
+		for range n {
+			x = append(x, r3.Vec{X: 8*rng.Float64() - 4, Y: 8*rng.Float64() - 4, Z: 8*rng.Float64() - 4})
+		}
+		at, v := field.PointsOf(x...), current.NewValues(n)
+		src.Induction(v, at, field.Mean)
+		for i := range x {
+			if a, b := current.At(src, x[i], field.Mean), v.At(i); a != b {
+				t.Errorf("%s point %d: alone %+v, in the batch %+v", name, i, a, b)
+				break
+			}
+		}
+		if got := testing.AllocsPerRun(3, func() { src.Induction(v, at, field.Mean) }); got > 2 { // a pool may be emptied in between
+			t.Errorf("%s: %v allocations", name, got)
+		}
+		if b := current.At(src, r3.Vec{X: math.NaN()}, field.Mean); b.Status != field.BadInput || !math.IsNaN(b.B.Y) || !math.IsNaN(b.A.X) {
+			t.Errorf("%s at NaN: %+v", name, b)
 		}
 	}
 }

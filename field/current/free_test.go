@@ -10,6 +10,7 @@ import (
 	"example.com/boundpole/field"
 	"example.com/boundpole/field/current"
 	"example.com/boundpole/geom"
+	"example.com/boundpole/verify/law"
 	"example.com/boundpole/verify/refcase"
 	"gonum.org/v1/gonum/spatial/r3"
 )
@@ -264,6 +265,31 @@ func TestSolenoid(t *testing.T) {
 	rim := current.At(s, r3.Vec{X: 0.75, Z: 1}, field.Mean)
 	if rim.Status != field.OnEdge || !math.IsNaN(rim.B.X) || !(rim.A.Y > 0) {
 		t.Errorf("rim: %+v", rim)
+	}
+}
+
+// TestLaws holds free currents against the laws of a field without charge.
+func TestLaws(t *testing.T) {
+	room := r3.Box{Min: r3.Vec{X: -3, Y: -3, Z: -3}, Max: r3.Vec{X: 3, Y: 3, Z: 3}}
+	loop, err := current.NewLoop(geom.Disc{Radius: 1}, 2)
+	if err != nil {
+		t.Fatal(err)
+	}
+	wire, err := current.NewWire([]r3.Vec{{X: 1}, {Y: 1}, {X: -1}, {Y: -1}}, true, 2)
+	if err != nil {
+		t.Fatal(err)
+	}
+	coil, err := current.NewSolenoid(geom.Cylinder{Radius: 1, Height: 1}, 2)
+	if err != nil {
+		t.Fatal(err)
+	}
+	// a loop round the wire would find its current, so that balls keep to one side: off the rim and the sheet
+	for name, src := range map[string]current.Free{"loop": loop, "wire": wire, "solenoid": coil} {
+		err := law.Source(src, law.Claims{Region: room, Order: 3, Accuracy: 1e-11, Samples: 12, Seed: 3, Total: &law.Total{},
+			Clear: func(x r3.Vec) float64 { return r3.Norm(x) - 1.2 }})
+		if err != nil {
+			t.Errorf("%s: %v", name, err)
+		}
 	}
 }
 

@@ -1,6 +1,7 @@
 package current
 
 import (
+	"fmt"
 	"math"
 
 	"example.com/boundpole/field"
@@ -49,7 +50,7 @@ func (l *ledger) add(x, j r3.Vec, w float64) {
 func absolute(v r3.Vec) r3.Vec { return r3.Vec{X: math.Abs(v.X), Y: math.Abs(v.Y), Z: math.Abs(v.Z)} }
 
 // fill reports layers, volumes and what must vanish. The sums are taken in the body's own frame, where they cancel best.
-func (b *Bound) fill() {
+func (b *Bound) fill() error {
 	local := b.body
 	if at, ok := b.body.(geom.Placed); ok {
 		local = at.Body
@@ -105,6 +106,13 @@ func (b *Bound) fill() {
 	}
 	b.Moment = b.pose.VectorToOuter(sums.wanted)
 	b.Identities = sums.identities(&coarse)
+	for _, id := range b.Identities {
+		if !id.Holds() {
+			return fmt.Errorf("current: %s does not hold: %.17g against %.17g; the faces of the body do not belong to its cells, or m is "+
+				"not smooth inside", id.Law, id.Left, id.Right)
+		}
+	}
+	return nil
 }
 
 // identities states the two laws, with what a coarser rule differs by added to the tolerance.

@@ -108,10 +108,8 @@ type azimuthal struct {
 	rho2    pair.Float
 	rho     float64
 	z       pair.Float
-	e       r3.Vec // unit vector along phi
 	tol     float64
 	side    field.Side
-	want    want
 	status  field.Status
 	a, r, b float64 // sums: a_phi, b_rho, b_z
 	sizeA   float64
@@ -123,15 +121,15 @@ type azimuthal struct {
 // Induction computes the arrays of dst; see Source.
 func (t *turns) Induction(dst *Values, at *field.Points, side field.Side) { induce(t, dst, at, side) }
 
-func (t *turns) value(p field.Point, side field.Side, want want) Value {
+func (t *turns) value(p field.Point, side field.Side, _ want) Value {
 	k := 1 / t.unit
 	x, y := p.X.X.Scale(k), p.X.Y.Scale(k)
-	q := azimuthal{rho2: x.Mul(x).Add(y.Mul(y)), z: p.X.Z.Scale(k), side: side, want: want}
+	q := azimuthal{rho2: x.Mul(x).Add(y.Mul(y)), z: p.X.Z.Scale(k), side: side}
 	q.rho = q.rho2.Sqrt().Value()
 	reach := math.Hypot(q.rho, q.z.Value())
 	q.tol = k*p.Slack + 4*u*(reach+t.size)
 	if reach > 1e60 {
-		return Value{} // below 1e-120 of the density
+		return Value{ErrA: 1e-60 * t.unit * t.peak, ErrB: 1e-120 * t.peak} // it falls like 1/R^2 and 1/R^3 at least
 	}
 	var out r3.Vec
 	if q.rho > 0 {
@@ -245,7 +243,7 @@ func (q *azimuthal) integrate(h *sheet, lo, hi, off float64, rule panels) (s str
 		if from < cut && cut < to {
 			to = cut
 		}
-		to = h.before(from, to, q.rho)
+		to = h.before(from, to, q.rho, math.Abs(origin))
 		q.panel(&s, h, origin, off, from, to, to <= up, to <= down, g)
 		from = to
 	}
@@ -253,13 +251,13 @@ func (q *azimuthal) integrate(h *sheet, lo, hi, off float64, rule panels) (s str
 }
 
 // before returns to, or the nearest place after from at which a panel has to end because the density has a branch point on
-// the axis, where a power is not an integer.
-func (h *sheet) before(from, to, rho float64) float64 {
+// the axis, where a power is not an integer. The panels begin at the distance origin from the foot.
+func (h *sheet) before(from, to, rho, origin float64) float64 {
 	if h.wall || h.lo != 0 || h.power == math.Trunc(h.power) {
 		return to
 	}
 	for s := h.hi / 4; s > 1e-3*h.hi; s /= 4 { // s^2.5 on the rest: 1e-10 of 1e-10
-		if d := math.Abs(s - rho); d > from && d < to {
+		if d := math.Abs(s-rho) - origin; d > from && d < to {
 			to = d
 		}
 	}

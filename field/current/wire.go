@@ -26,7 +26,7 @@ import (
 // Accuracy: |error| <= 1e-14 of the sum of the magnitudes over the segments, of a, of b and of its gradient; closed wires beyond
 // 6 bounding radii 1e-13 of |b| and |a| (TestWireReference).
 // Source: int dl/R = log1p(l (S + l)/D) and int dl x (x-r)/R^3 = (a x b) S/(R1 R2 D) with a, b from the point to the ends of a
-// segment, S = R1 + R2, D = R1 R2 + a.b [VanOosterom1983, own form]; closed wires far off: multipoles of a magnetized sheet
+// segment, S = R1 + R2, D = R1 R2 + a.b [own derivation]; closed wires far off: multipoles of a magnetized sheet
 // that they border.
 type Wire struct {
 	points  []r3.Vec
