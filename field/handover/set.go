@@ -115,7 +115,7 @@ func (s *Set) divisor() float64 {
 const blockSize = 128
 
 // Source returns the points and dipoles as a source in natural units: g in C/m^2 (E is g/epsilon0) or A/m (H is g), lengths in
-// metres. It evaluates by direct summation; keep it where it is evaluated often.
+// metres. It evaluates by direct summation. Making it takes memory for each point: keep it where it is evaluated often.
 func (s *Set) Source() field.Sum {
 	var all, block field.Sum
 	add := func(src field.Source) {
@@ -133,6 +133,17 @@ func (s *Set) Source() field.Sum {
 	}
 	return append(all, block)
 }
+
+// Field returns g of the points at x: a Set is a field.Source. Frame, units and cost are those of Source.
+func (s *Set) Field(x r3.Vec) r3.Vec { return s.Source().Field(x) }
+
+// Evaluate computes the arrays of dst; see field.Evaluator.
+func (s *Set) Evaluate(dst *field.Values, at *field.Points, side field.Side) {
+	s.Source().Evaluate(dst, at, side)
+}
+
+// Bounds returns the box of the points.
+func (s *Set) Bounds() r3.Box { return s.Source().Bounds() }
 
 // At returns potential and field of the points at x in metres: V and E, or Vm and H. NaN at a point.
 func (s *Set) At(x r3.Vec) (potential float64, f r3.Vec) {
