@@ -115,6 +115,7 @@ func TestBreakdownVoltage(t *testing.T) {
 	near(t, "7.5 um", charge.BreakdownVoltage(7.5e-6, 0), 327, 0)
 	near(t, "4 um", charge.BreakdownVoltage(4e-6, 0), 327, 0)
 	near(t, "0.5 um", charge.BreakdownVoltage(0.5e-6, 0), 175, 1e-9)        // 350 V/um
+	near(t, "17 um", charge.BreakdownVoltage(17e-6, 0), 328.64925, 1e-4)    // the curve, just above the least voltage
 	near(t, "20 um", charge.BreakdownVoltage(20e-6, 0), 347.3095, 1e-4)     // the curve at 20 digits
 	near(t, "1 mm", charge.BreakdownVoltage(1e-3, 0), 5034.9894, 1e-4)      // likewise
 	near(t, "1 cm", charge.BreakdownVoltage(1e-2, 101325), 35509.333, 1e-3) // likewise
