@@ -88,6 +88,10 @@ func (r *runner) request(q *scenefile.Request, charges []solve.PartCharge) error
 		if err := r.travel(q); err != nil {
 			return err
 		}
+	case "hand_over":
+		if err := r.handOver(q); err != nil {
+			return err
+		}
 	case "reading", "linkage", "force", "energy", "reach":
 		a, err := r.answer(q)
 		if err != nil {

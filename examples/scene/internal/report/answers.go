@@ -8,6 +8,7 @@ import (
 
 	"example.com/boundpole/examples/scene/internal/scenefile"
 	"example.com/boundpole/examples/scene/internal/solve"
+	"example.com/boundpole/field/handover"
 	"gonum.org/v1/gonum/spatial/r3"
 )
 
@@ -240,14 +241,31 @@ func (g *group) print(r *Report, heads []string, rows [][]string) []string {
 	return heads
 }
 
-// HandOver says where the equivalent charges are.
-func (r *Report) HandOver(q *scenefile.Request, lines ...string) {
+// HandOver says what is handed over, and how well its points stand for the parts.
+func (r *Report) HandOver(q *scenefile.Request, set *handover.Set, written bool) {
 	w := &r.readings
 	if w.Len() > 0 {
 		fmt.Fprintln(w)
 	}
 	fmt.Fprintf(w, "  %s\n", titleOf(q))
-	for _, l := range lines {
-		wrapped(w, "", l)
+	kind, charge := "electric", "q"
+	if set.Kind == handover.Magnetic {
+		kind, charge = "magnetic", "g"
+	}
+	points, largest := 0, 0.0
+	for i := range set.Groups {
+		points += len(set.Groups[i].Points) + len(set.Groups[i].Dipoles)
+	}
+	for _, p := range set.Probes {
+		largest = max(largest, r3.Norm(p.Field))
+	}
+	where := "-out DIR writes them to " + q.HandOver
+	if written {
+		where = q.HandOver
+	}
+	wrapped(w, "", fmt.Sprintf("%d points with %s charge, sum %s, magnitudes %s: %s.", points, kind, value(charge, set.Total),
+		value(charge, set.Magnitudes), where))
+	if largest > 0 {
+		wrapped(w, "", fmt.Sprintf("At the three probes in the file they miss the field by at most %s of the largest.", solve.Digits(set.Within.Field/largest, 1)))
 	}
 }

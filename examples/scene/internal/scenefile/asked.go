@@ -21,7 +21,7 @@ func (d *decoder) checkAsked(at uint32, r *Request) error {
 		if !strings.HasSuffix(r.HandOver, ".json") && !strings.HasSuffix(r.HandOver, ".csv") {
 			return d.errorOn(at, fmt.Sprintf("hand_over writes .json or .csv (got %s)", d.quoted(at)), `for example "charges.json"`)
 		}
-		return d.checkYields(at, "electric, magnetized or circulating", func(p *Part) bool { return p.carries() })
+		return d.checkHandOver(at, r)
 	case "force":
 		on, _ := d.member(at, "on")
 		return d.checkPartName(on, r.Force.On, true)
@@ -46,6 +46,30 @@ func (d *decoder) checkYields(at uint32, kinds string, right func(*Part) bool) e
 		}
 	}
 	return d.errorOn(at, "no part is "+kinds, "give a part what it carries, or leave the request out")
+}
+
+// checkHandOver holds the kind of charge against the scene, and fills it in where there is one only.
+func (d *decoder) checkHandOver(at uint32, r *Request) error {
+	electric := func(p *Part) bool { return p.Polarized != nil || p.Charged != nil }
+	magnetic := func(p *Part) bool { return p.Magnetized != nil }
+	e, m := d.checkYields(at, "polarized or charged", electric), d.checkYields(at, "magnetized", magnetic)
+	switch r.Charge {
+	case "electric":
+		return e
+	case "magnetic":
+		return m
+	}
+	switch {
+	case e != nil && m != nil:
+		return d.checkYields(at, "polarized, charged or magnetized", func(*Part) bool { return false })
+	case e == nil && m == nil:
+		return d.errorOn(at, "the scene has electric and magnetic charges", `add "kind": "electric" or "kind": "magnetic"; a file holds one of them`)
+	case m == nil:
+		r.Charge = "magnetic"
+	default:
+		r.Charge = "electric"
+	}
+	return nil
 }
 
 // checkPartName refuses a name that no part has, or that of one that carries

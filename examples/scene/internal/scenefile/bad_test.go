@@ -249,6 +249,8 @@ var badScenes = []struct {
 	{"travel nowhere", withRequest(`{"travel":{"part":"a","count":2,"ask":[{"charges":true}]}}`), `travel needs one of shift, rotation`, `{"part":"a"`},
 	{"travel with a file", withRequest(`{"travel":{"part":"a","shift":[0,0,1],"count":2,"ask":[{"hand_over":"a.json"}]}}`), `a file of one position`, `{"hand_over"`},
 	{"hand_over", withRequest(`{"hand_over":"a.txt"}`), `hand_over writes .json or .csv (got "a.txt")`, `"a.txt"`},
+	{"hand_over of strangers", withRequest(`{"hand_over":"a.json","kind":"electric"}`), `no part is polarized or charged`, `"a.json"`},
+	{"hand_over of both", `{"parts":[{"name":"a","shape":"sphere","radius":1,"polarized":{"uniform":[0,0,1]}},{"name":"b","shape":"sphere","radius":1,"magnetized":{"uniform":[0,0,1]}}],"wanted":[{"hand_over":"a.json"}]}`, `the scene has electric and magnetic charges`, `"a.json"`},
 
 	// Names of files.
 	{"output in a folder", withLine(`"csv":"a/b.csv"`), `/wanted/0/csv: csv must not contain / or \ (got "a/b.csv")`, `"a/b.csv"`},

@@ -58,7 +58,8 @@ func requests() []Variant {
 		{Name: "travel", Doc: "Requests at several positions of a part; none of them a travel.",
 			Keys: []Key{ask(object("travel"), "travel", `{"part": "lid magnet", "shift": [0, 0, 10], "count": 11, "ask": [{"points": [[0, 0, 0]]}]}`, "The movement."), plot, csv}},
 		{Name: "hand_over", Doc: "The equivalent charges for another simulator.",
-			Keys: []Key{ask(Type{Base: Output}, "hand_over", `"charges.json"`, "Name of the file, .json or .csv.")}},
+			Keys: []Key{ask(Type{Base: Output}, "hand_over", `"charges.json"`, "Name of the file, .json or .csv; its format is described in package field/handover."),
+				key("kind", choice("electric", "magnetic"), `"magnetic"`, "Which charges; needed where the scene has both.")}},
 	}
 }
 

@@ -22,6 +22,7 @@ type Request struct {
 	Reach    *Reach   `key:"reach"`
 	Travel   *Travel  `key:"travel"`
 	HandOver string   `key:"hand_over"` // name of a file to write
+	Charge   string   `key:"kind"`      // of hand_over: "electric" or "magnetic"; "" where the scene has one only
 
 	Side   Side `key:"side"`
 	ByPart bool `key:"by_part"`

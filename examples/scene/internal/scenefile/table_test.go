@@ -61,7 +61,7 @@ var contract = map[string]string{
 	"request.charges": "charges", "request.points": "points side by_part gradient", "request.points_file": "points_file side by_part gradient",
 	"request.line": "line plot csv", "request.plane": "plane plot csv vtk", "request.grid": "grid csv vtk", "request.reading": "reading",
 	"request.linkage": "linkage", "request.force": "force", "request.energy": "energy", "request.reach": "reach", "request.travel": "travel plot csv",
-	"request.hand_over": "hand_over",
+	"request.hand_over": "hand_over kind",
 }
 
 // owners calls visit for every object and variant of the table.

@@ -160,7 +160,7 @@ func finite(v float64) error {
 // plainWords returns an error of the library without the name of the package in front.
 func plainWords(err error) string {
 	text := err.Error()
-	for _, name := range []string{"geom: ", "bound: ", "charge: ", "element: ", "field: ", "grade: ", "magnet: ", "image: ", "force: ", "flux: ", "current: "} {
+	for _, name := range []string{"geom: ", "bound: ", "charge: ", "element: ", "field: ", "grade: ", "magnet: ", "image: ", "force: ", "flux: ", "current: ", "handover: "} {
 		text = strings.TrimPrefix(text, name)
 	}
 	return text
