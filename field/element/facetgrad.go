@@ -41,7 +41,7 @@ func (f *facets) gradient(w *facetRoom, sum *facetSums, side field.Side) (tensor
 		}
 		sx := q.sigma - r3.Dot(q.gamma, w.a[q.ref])
 		loose := math.Abs(sx) + 0.5*(math.Abs(q.sigma)+r3.Norm(q.gamma)*w.r[q.ref]) // sx may be a small difference
-		var turn r3.Vec // gO, summed over the rim
+		var turn r3.Vec                                                             // gO, summed over the rim
 		var s r3.Vec
 		for k := range q.corners {
 			c := &q.corners[k]
