@@ -31,6 +31,7 @@ type facetSums struct {
 	g      r3.Vec
 	size   float64 // sum of magnitudes behind g
 	shaky  float64 // what rounding of the geometry may do to g, in units of u
+	claims bool    // estimates are wanted
 	behind float64 // sum of magnitudes behind phi; wherever a distance enters, of the vector that it is taken from
 	status field.Status
 }
@@ -40,7 +41,7 @@ func (f *facets) near(p field.Point, side field.Side, want field.Want, w facetRo
 	s := f.per
 	sum := facetSums{
 		x:   pair.Vec{X: p.X.X.Scale(s), Y: p.X.Y.Scale(s), Z: p.X.Z.Scale(s)},
-		tol: f.tolerance(p),
+		tol: f.tolerance(p), claims: want&field.WantErr != 0,
 	}
 	f.offsets(&w, &sum.x)
 	together, ok := f.bundled.value(&w, &sum.x)
@@ -236,6 +237,9 @@ func (f *facets) addLinearEdge(e *facetEdge, el float64, w *facetRoom, sum *face
 	sum.phi += e.c * k
 	dr := e.length * (s1 + s2) / (ra + rb) // rb - ra
 	sum.g = r3.Sub(sum.g, r3.Scale(e.c, r3.Sub(r3.Scale(el, u), r3.Scale(dr, e.t))))
+	if !sum.claims {
+		return
+	}
 	sum.size += math.Abs(e.c) * (math.Sqrt(p2)*el + e.length)
 	sum.behind += math.Abs(e.c) * (math.Abs(s1)*ra + math.Abs(s2)*rb + p2*el)
 }
@@ -251,37 +255,53 @@ func (f *facets) addFacet(q *facet, w *facetRoom, sum *facetSums, side field.Sid
 	} else {
 		omega, h = f.edgeAngle(q, w, sum, side)
 	}
-	angle := min(2*math.Pi, math.Abs(omega)+4)
-	sum.size += math.Abs(q.sigma) * angle
-	term := math.Abs(h)*angle + slack*math.Abs(omega)
 	if !f.linear {
-		sum.behind += (math.Abs(q.sigma) + vague*f.dense) * term
 		sum.phi = math.FMA(-q.sigma*h, omega, sum.phi)
 		so := q.sigma * omega
 		sum.g.X = math.FMA(q.n.X, so, sum.g.X)
 		sum.g.Y = math.FMA(q.n.Y, so, sum.g.Y)
 		sum.g.Z = math.FMA(q.n.Z, so, sum.g.Z)
+		if sum.claims {
+			sum.size += math.Abs(q.sigma) * angleSize(omega)
+			sum.behind += (math.Abs(q.sigma) + vague*f.dense) * (math.Abs(h)*angleSize(omega) + slack*math.Abs(omega))
+		}
 		return
 	}
 	sx := q.sigma - r3.Dot(q.gamma, w.a[q.ref])
 	i0 := -h * omega
-	slope, logs := r3.Scale(omega, q.n), 0.0
+	slope := r3.Scale(omega, q.n)
 	for k := range q.corners {
 		c := &q.corners[k]
-		el, d := w.l[c.edge], f.edgeDistance(c, w, sum)
-		i0 = math.FMA(d, el, i0)
-		term += w.reach(&f.edges[c.edge], c.edge, el, d*d)
-		logs += el
+		el := w.l[c.edge]
+		i0 = math.FMA(f.edgeDistance(c, w, sum), el, i0)
 		slope = r3.Add(slope, r3.Scale(el, c.m))
 	}
 	sum.phi += (sx - 0.5*f.rho*h) * i0
 	sum.g = r3.Add(sum.g, r3.Scale(sx, slope))
 	sum.g = r3.Sub(sum.g, r3.Scale(i0, r3.Sub(q.gamma, r3.Scale(f.rho, q.n))))
+	if sum.claims {
+		f.sizeLinear(q, w, sum, sx, h, omega, slack, r3.Norm(slope))
+	}
+}
+
+// angleSize returns the magnitude behind a solid angle.
+func angleSize(omega float64) float64 { return min(2*math.Pi, math.Abs(omega)+4) }
+
+// sizeLinear adds the magnitudes behind the terms of a face with linear charge.
+func (f *facets) sizeLinear(q *facet, w *facetRoom, sum *facetSums, sx, h, omega, slack, slope float64) {
+	angle := angleSize(omega)
+	sum.size += math.Abs(q.sigma) * angle
+	term, logs := math.Abs(h)*angle+slack*math.Abs(omega), 0.0 // behind I0
+	for k := range q.corners {
+		c := &q.corners[k]
+		d := f.edgeDistance(c, w, sum)
+		term += w.reach(&f.edges[c.edge], c.edge, w.l[c.edge], d*d)
+		logs += w.l[c.edge]
+	}
 	steep := r3.Norm(q.gamma)
 	loose := math.Abs(sx) + 0.5*(math.Abs(q.sigma)+steep*w.r[q.ref]) // sx may be a small difference
-	sum.size += term*(steep+math.Abs(f.rho)) + loose*(r3.Norm(slope)+0.2*(logs+angle))
-	sum.behind += (loose + vague*f.dense + math.Abs(f.rho*h)) * term
-	sum.behind += math.Abs(f.rho) * slack * math.Abs(i0)
+	sum.size += term*(steep+math.Abs(f.rho)) + loose*(slope+0.2*(logs+angle))
+	sum.behind += (loose + vague*f.dense + math.Abs(f.rho)*(math.Abs(h)+slack)) * term
 }
 
 // away reports whether x is so far from the face that the fan of triangles keeps its digits: outside 1.2 bounding

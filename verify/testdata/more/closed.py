@@ -20,7 +20,7 @@ from cases2 import Points
 from gen import M, add, cross, dot, fr, mul, sub, vec
 
 PER_BODY = 3
-COSTLY = ("prism", "polyhedron", "tube", "annulus")  # the second formulation and the gradient in turns, body by body
+COSTLY = {"prism": 2, "tube": 2, "annulus": 4, "polyhedron": 4}  # of so many bodies the first gets gradients, the second and fourth both formulations
 
 
 # ---------------------------------------------------------------- numbers
@@ -207,6 +207,14 @@ def value_prism(body, pol, x):
     density = lambda n: (dot(pl, n), [sum(Gl[i][j] * n[i] for i in range(3)) for j in range(3)])
     phi, g, region = gen.charged_faces(loops, xl, density, -M(G[0][0] + G[1][1] + G[2][2]))
     return phi, f.turn(g), region
+
+
+def value_polyhedron(body, pol, x):
+    """As that of gen.py, in numbers of so many digits (60 and more) that sums and products of float64 are exact, which is quicker."""
+    vs, p0, G = [vec(fr(v)) for v in body["vertices"]], *gen.affine(pol)
+    p0, G = vec(p0), [vec(row) for row in G]
+    density = lambda n: (dot(p0, n), [sum(G[i][j] * n[i] for i in range(3)) for j in range(3)])
+    return gen.charged_faces([[vs[i] for i in f] for f in body["faces"]], vec(x), density, -(G[0][0] + G[1][1] + G[2][2]))
 
 
 def loops_of(b):
@@ -476,7 +484,7 @@ def by_edges(value):
 FAMILIES = {
     "box": (make_box, Flat, gen.value_box, by_edges(gen.value_box)),
     "prism": (make_prism, Flat, value_prism, by_edges(value_prism)),
-    "polyhedron": (make_polyhedron, Flat, gen.value_polyhedron, by_edges(gen.value_polyhedron)),
+    "polyhedron": (make_polyhedron, Flat, value_polyhedron, by_edges(gen.value_polyhedron)),
     "polygon": (make_polygon, Flat, gen.value_polygon, by_edges(gen.value_polygon)),
     "disc": (make_sheet("disc"), Round, gen.value_disc, values.value_swept),
     "annulus": (make_sheet("annulus"), Round, gen.value_disc, values.value_swept),
@@ -548,14 +556,14 @@ def triples(seed, count, family, path):
             tune()
             if x in case["points"] or not P.clear(x):
                 continue
-            turn = len(out) % 2 if family in COSTLY else None
-            exact = p["kind"] != "axial_z" and turn != 1           # axial_z has a quadrature in the closed form
+            turn = len(out) % COSTLY[family] if family in COSTLY else None
+            exact = p["kind"] != "axial_z" and not turn            # axial_z has a quadrature in the closed form
             mp.dps = 110 if exact else 80
             v = value(b, p, fr(x))
             if v[2] == "on-sheet":
                 continue
             grad = slopes(value, b, p, fr(x), P.size, v) if exact else None
-            if second and turn != 0:
+            if second and (turn is None or turn % 2):
                 mp.dps = 46
                 tune()
                 d = digits(second(b, p, fr(x)), v, P.size)
@@ -595,3 +603,35 @@ def triples(seed, count, family, path):
     sampler.pack(path, out)
     print("%s seed %s: %d triples, %d dropped, %.1fs; the two formulations agree to %.1f digits at least"
           % (family, seed, total, dropped, time.time() - t0, worst), flush=True)
+
+
+def brute(family, count=6):
+    """Print the digits to which values agree with Gauss quadrature of the dipole density (or sheet) in three (two) dimensions, 80-bit floats."""
+    import second
+    r = random.Random("brute-" + family)
+    make, places, value, _ = FAMILIES[family]
+    worst = 99.0
+    while count:
+        mp.dps = 60
+        b, p = make(r)
+        if b["type"] == "prism":
+            b.update(centre=[0.0] * 3, axis=[0.0, 0.0, 1.0], ref=[1.0, 0.0, 0.0])
+            if p["kind"] != "uniform":
+                continue
+        P = places(b, p, r)
+        x = fr([float(t) for t in P.draw("far")])
+        c = vec(fr(b["centre"])) if "centre" in b else P.c
+        d = sub(vec(x), c)
+        x = fr([float(t) for t in add(c, mul(mpf(r.uniform(2.5, 4) * P.size) / mp.sqrt(dot(d, d)), d))])
+        q = b
+        if b["type"] == "prism":
+            loops = prism_loops(b)
+            vs = [v for f in loops[:2] for v in f]
+            q = {"type": "polyhedron", "vertices": vs, "faces": [[vs.index(v) for v in f] for f in loops]}
+        got = second.direct({"id": "%s %d" % (family, count), "body": q, "polarization": p}, x)
+        want = [mpf(1) / (4 * mp.pi) * t for t in [value(b, p, x)[0]] + value(b, p, x)[1]]
+        got = [mpf(float(t)) + mpf(float(t - type(t)(float(t)))) for t in [got[0]] + list(got[1])]
+        e = mp.sqrt(sum((s - t) ** 2 for s, t in zip(got[1:], want[1:])) / sum(t * t for t in want[1:]))
+        worst = min(worst, float(-mp.log10(e + mpf(10) ** -40)))
+        count -= 1
+    print("%s: g by quadrature agrees to %.1f digits at least" % (family, worst), flush=True)

@@ -5,6 +5,7 @@ gen2.py verify REF.json [PREFIX...]   recompute the cases that this program know
 gen2.py make OUT.json [PREFIX...]     write the cases of cases2.py (all, or those whose name starts so); kept values are reused
 gen2.py triples SEED COUNT FAMILY OUT.json.gz   random bodies and points of a family of closed.py (closed forms) or sampler.py
                                                 (integrals), values of >= 20 digits
+gen2.py brute FAMILY...               values of a family of closed.py against quadrature of the dipole density: digits of agreement
 """
 import json
 import os
@@ -69,6 +70,10 @@ if __name__ == "__main__":
         make(sys.argv[2], sys.argv[3:])
     elif sys.argv[1] == "verify":
         verify(sys.argv[2], sys.argv[3:] or [""])
+    elif sys.argv[1] == "brute":
+        import closed
+        for family in sys.argv[2:]:
+            closed.brute(family)
     elif sys.argv[1] == "triples":
         import closed
         import sampler
