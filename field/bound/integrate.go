@@ -71,7 +71,7 @@ func (c *Charge) integrated() (field.Source, error) {
 		if !c.carries(f) {
 			continue
 		}
-		s.builds = append(s.builds, func() (field.Evaluator, error) { return cubature.NewLayer(outward(f, charted), c.sigma, nil) })
+		s.builds = append(s.builds, func() (field.Evaluator, error) { return cubature.NewLayer(outward(f, charted.Charts()), c.sigma, nil) })
 	}
 	for _, cell := range c.local.Cells() {
 		blocked, ok := cell.(geom.Blocked)

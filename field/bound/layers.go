@@ -4,7 +4,6 @@ import (
 	"math"
 
 	"example.com/boundpole/field"
-	"example.com/boundpole/field/cubature"
 	"example.com/boundpole/geom"
 	"gonum.org/v1/gonum/spatial/r3"
 )
@@ -102,8 +101,8 @@ func (c *Charge) volume(i int, cell, outer geom.Cell, sums *identitySums) Volume
 		q, size = q+w*rho, size+math.Abs(w*rho)
 		sums.addCell(x, w, rho, c.p.At(x))
 	})
-	if c.resolved != nil && c.resolved.whole && len(c.local.Cells()) > 1 {
-		q, size = c.cellCharge(cell)
+	if c.resolved != nil && c.resolved.whole && len(c.local.Cells()) > 1 { // then q is that of all cells
+		q, size = c.cellCharge(cell, q, size)
 	}
 	v.Charge = clean(q, size)
 	v.Min, v.Max = c.extremesInside(cell)
@@ -111,21 +110,6 @@ func (c *Charge) volume(i int, cell, outer geom.Cell, sums *identitySums) Volume
 		v.Charge = v.Min * v.Size
 	}
 	return v
-}
-
-// cellCharge returns the charge of a cell that is one of several which a resolved rule serves together, and its magnitude.
-func (c *Charge) cellCharge(cell geom.Cell) (q, size float64) {
-	if blocked, ok := cell.(geom.Blocked); ok {
-		if v, err := cubature.NewVolume(blocked.Blocks(), c.rho, nil); err == nil {
-			q, _ = v.Charge()
-			return q, math.Abs(q)
-		}
-	}
-	cell.Nodes(c.nodes(), func(x r3.Vec, w float64) {
-		rho := c.rho(x)
-		q, size = q+w*rho, size+math.Abs(w*rho)
-	})
-	return q, size
 }
 
 // planeNormal returns the outward normal of a plane face.

@@ -36,10 +36,20 @@ func (c *Charge) resolve() (*resolved, error) {
 		}
 		r.layers = append(r.layers, l)
 	}
-	if blocks, ok := c.sweep(k); ok {
+	if blocks, hollow, ok := c.sweep(k); ok {
+		r.whole = true
 		v, err := cubature.NewVolume(blocks, c.rho, nil)
-		r.volumes, r.whole = []*cubature.Volume{v}, true
-		return r, err
+		if err != nil {
+			return nil, err
+		}
+		r.volumes = append(r.volumes, v)
+		if len(hollow) > 0 {
+			if v, err = cubature.NewVolume(hollow, func(x r3.Vec) float64 { return -c.rho(x) }, nil); err != nil {
+				return nil, err
+			}
+			r.volumes = append(r.volumes, v)
+		}
+		return r, nil
 	}
 	for _, cell := range c.local.Cells() {
 		blocked, ok := cell.(geom.Blocked)
@@ -81,5 +91,18 @@ func (c *Charge) cellNodes(i int, cell geom.Cell, n int, visit func(x r3.Vec, w 
 		c.resolved.volumes[i].Rule(visit)
 	case i == 0:
 		c.resolved.volumes[0].Rule(visit)
+		for _, hollow := range c.resolved.volumes[1:] {
+			hollow.Rule(func(x r3.Vec, w float64) { visit(x, -w) })
+		}
 	}
+}
+
+// outward turns the charts of a face so that their normal is the outward one of the body.
+func outward(f geom.Face, charts []geom.Chart) []geom.Chart {
+	if f.Inward {
+		for i := range charts {
+			charts[i] = cubature.Reversed{Chart: charts[i]}
+		}
+	}
+	return charts
 }
