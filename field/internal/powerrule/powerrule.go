@@ -10,8 +10,8 @@ import (
 // Of returns n places x in 0..1 and weights w such that sum w f(x) is the integral of s^power f(s) from 0 to 1, exactly for
 // polynomials f of degree 2n-1; ok is false unless power > -1.
 //
-// Source: eigenvalues of the Jacobi matrix and first components of its eigenvectors (Golub and Welsch (1969) Math. Comput. 23,
-// 221, from memory), recurrence of the Jacobi polynomials of (1+x)^power on -1..1 (DLMF 18.9.2), moved to 0..1.
+// Source: eigenvalues of the Jacobi matrix and first components of its eigenvectors [Golub1969]; recurrence of the Jacobi
+// polynomials of (1+x)^power on -1..1 ([DLMF] 18.9.2, https://dlmf.nist.gov/18.9#E2), moved to 0..1.
 func Of(n int, power float64) (x, w []float64, ok bool) {
 	if !(power > -1) || n < 1 {
 		return nil, nil, false
