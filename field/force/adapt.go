@@ -40,6 +40,28 @@ func (g goal) allowed(total *sums) quad {
 	return tol
 }
 
+// What is not within the accuracy asked for is accepted if the field claims no better and that is little, or if the value is zero
+// within a small error, as it is by symmetry.
+const (
+	claimFloor = 1e-12 // of the magnitudes
+	zeroFloor  = 1e-10
+)
+
+// met reports whether errors, of which low is what the field claims and rounding, are good enough for total.
+func (g goal) met(total *sums, errors, low quad) bool {
+	tol, v, size := g.allowed(total), total.values(g.reach, g.stiff), total.size.quad()
+	for k, e := range errors {
+		switch {
+		case e <= tol[k]:
+		case low[k] <= claimFloor*size[k] && e <= 3*low[k]:
+		case v[k] <= 2*e && e <= zeroFloor*size[k]:
+		default:
+			return false
+		}
+	}
+	return true
+}
+
 // least returns the errors below which only rounding is left: what the field claims, and the roundings of the sum.
 func least(total *sums) quad {
 	e, size := total.err.quad(), total.size.quad()
@@ -74,17 +96,14 @@ func integrate(ctx context.Context, p *part, w *work, g goal, most int) (outcome
 		}
 		tol, low := g.allowed(&o.total), least(&o.total)
 		o.nodes = w.nodes
-		done, bottom := true, true
+		bottom := true
 		for k := range tol {
 			o.error[k] = miss[k] + low[k]
-			if !(o.error[k] <= tol[k]) {
-				done = false
-				bottom = bottom && miss[k] <= 2*low[k]
-			}
+			bottom = bottom && (o.error[k] <= tol[k] || miss[k] <= 2*low[k])
 			tol[k] = max(tol[k]-low[k], 0.5*low[k], 1e-3*tol[k])
 		}
-		o.met = done || bottom && claimed(&o.total, low)
-		if done || bottom || w.nodes >= most {
+		o.met = g.met(&o.total, o.error, low)
+		if o.met || bottom || w.nodes >= most {
 			return o, nil
 		}
 		if err := ctx.Err(); err != nil {
@@ -96,17 +115,6 @@ func integrate(ctx context.Context, p *part, w *work, g goal, most int) (outcome
 			return o, nil
 		}
 	}
-}
-
-// claimed reports whether what is left is only what the field itself claims, and that is little.
-func claimed(total *sums, low quad) bool {
-	size := total.size.quad()
-	for k := range low {
-		if !(low[k] <= 1e-12*size[k]) && size[k] > 0 {
-			return false
-		}
-	}
-	return true
 }
 
 // refine improves the panels that miss most, until what the others miss is half of what is allowed.

@@ -139,7 +139,7 @@ type discPair struct{ force, energy, force0, energy0 float64 }
 //	4 pi F = 2 pi^2 min(a,b)^2 - 2 pi b^2 S,   4 pi W = (2 pi a^2 I_b(a, z) + 2 pi b^2 I_a(b, z) - 4 pi z F)/3.
 //
 // Source: [Eason1955] I(1,1;-1) for the force; the energy is a homogeneous function of the third degree in a, b and z, and Euler's
-// theorem gives it by its derivatives. Against other forms in TestCoaxialReference.
+// theorem gives it by its derivatives. Against another form in TestReference.
 func discs(a, b, z float64) discPair {
 	const k = 1 / (4 * math.Pi)
 	gap := a - b

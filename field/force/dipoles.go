@@ -202,15 +202,11 @@ func firstRule(ratio, accuracy float64) int {
 // settle makes the outcome of two rules and reports whether it is good enough.
 func (o *outcome) settle(fine, coarse *sums, g goal) bool {
 	o.total = *fine
-	miss, low, tol := fine.distance(coarse, g.reach, g.stiff), least(fine), g.allowed(fine)
-	o.met = true
-	rounded := claimed(fine, low)
+	miss, low := fine.distance(coarse, g.reach, g.stiff), least(fine)
 	for k := range miss {
 		o.error[k] = miss[k] + low[k]
-		if !(o.error[k] <= tol[k]) && !(rounded && miss[k] <= low[k]) {
-			o.met = false
-		}
 	}
+	o.met = g.met(fine, o.error, low)
 	return o.met
 }
 

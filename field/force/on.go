@@ -133,6 +133,7 @@ func act(ctx context.Context, p *part, all []other, set Settings) (Result, error
 				return Result{}, err
 			}
 			sum.total.add(&o.total, all[i].factor)
+			sum.met = sum.met && (o.met || len(all) > 1)
 			for k, e := range o.error {
 				sum.error[k] += math.Abs(all[i].factor) * e
 			}
@@ -141,11 +142,9 @@ func act(ctx context.Context, p *part, all []other, set Settings) (Result, error
 		tol := g.allowed(&sum.total)
 		worst := 1.0
 		for k, e := range sum.error {
-			if e > tol[k] && !(e <= 1e-12*sum.total.size.quad()[k]) {
-				sum.met = false
-				worst = min(worst, tol[k]/e)
-			}
+			worst = min(worst, tol[k]/e)
 		}
+		sum.met = sum.met && g.met(&sum.total, sum.error, least(&sum.total))
 		if sum.met || len(all) < 2 || worst < 1e-6 {
 			break
 		}

@@ -7,6 +7,7 @@ import (
 	"strings"
 
 	"example.com/boundpole/field/bound"
+	"example.com/boundpole/field/image"
 	"example.com/boundpole/geom"
 	"example.com/boundpole/geom/pair"
 	"gonum.org/v1/gonum/spatial/r3"
@@ -18,16 +19,43 @@ var ErrOverlap = errors.New("bodies overlap")
 // touching is the depth, in the size of the smaller body, to which bodies may stand in each other and count as touching.
 const touching = 1e-9
 
-// overlaps refuses bodies that stand in each other, and images that do.
+// overlaps refuses bodies that stand in each other, and a body that stands in the plane of an image.
 func overlaps(c *bound.Charge, all []other) error {
 	for i := range all {
 		o := &all[i]
-		if o.charge == nil || o.plane != nil {
+		if o.plane != nil {
+			if err := before(c, o.plane); err != nil {
+				return err
+			}
+			continue
+		}
+		if o.charge == nil {
 			continue
 		}
 		if at, deep := Overlap(c.Body(), o.charge.Body()); deep {
 			return fmt.Errorf("force: %w: %s and %s at %v; move them apart", ErrOverlap, name(c.Body()), name(o.charge.Body()), at)
 		}
+	}
+	return nil
+}
+
+// before refuses a body that is not on the side of the normal of a plane: no corner of its box is looked at, but points of its faces
+// and edges.
+func before(c *bound.Charge, plane *image.Plane) error {
+	body := c.Body()
+	depth := touching * r3.Norm(sizeOf(body.Bounds()))
+	f := frameOf(body)
+	n := r3.Unit(plane.Normal)
+	reach := 0.0
+	for k := range 3 {
+		reach += f.half[k] * math.Abs(r3.Dot(n, f.axis[k]))
+	}
+	if plane.Height(f.centre) >= reach-depth {
+		return nil
+	}
+	if at, deep := samples(body, depth, func(x r3.Vec) bool { return plane.Height(x) < -depth/2 }); deep {
+		return fmt.Errorf("force: %w: %s and the plane at %v with normal %v, at %v; move it to the side of the normal", ErrOverlap, name(body),
+			plane.Point, plane.Normal, at)
 	}
 	return nil
 }

@@ -28,10 +28,10 @@ type panel struct {
 
 // ladder holds the numbers of points a direction; each rule is held against the one before. Free: more points cost more and need
 // fewer cuts.
-var ladder = [...]int{4, 6, 8, 11, 14}
+var ladder = [...]int{2, 4, 6, 8, 11, 14}
 
 // solidLadder is that of blocks.
-var solidLadder = [...]int{3, 4, 6, 8, 10}
+var solidLadder = [...]int{2, 3, 4, 6, 8, 10}
 
 // points returns how many points a direction the panel has at a level.
 func (p *panel) points(level int) int {
@@ -75,12 +75,13 @@ func newWork(src field.Source, about r3.Vec, p *part, stiff bool) *work {
 	return &work{src: src, about: about, centre: p.centre, reach: p.reach, stiff: stiff, values: field.NewValues(mostNodes, want)}
 }
 
-// measure integrates over a new panel by the rule of its level, at least the second, and the one before.
+// measure integrates over a new panel by the rule of its level, at least the third, and the two before.
 func (w *work) measure(p *panel, rho float64) {
-	p.level = max(p.level, 1) - 1
+	p.level = max(p.level, 2) - 2
 	p.step = quad{}
 	p.value = sums{}
 	w.rule(p, p.points(p.level), rho, &p.value)
+	w.climb(p, rho)
 	p.near = w.close(w.points.Len())
 	w.climb(p, rho)
 }
@@ -107,7 +108,7 @@ func (w *work) climb(p *panel, rho float64) {
 	}
 }
 
-// close reports whether edges of the other part are, or may be, within half a radius of the first m points.
+// close reports whether edges of the other part are, or may be, closer than a sixth of its radius to the first m points.
 func (w *work) close(m int) bool {
 	if !w.known {
 		return true
@@ -122,7 +123,7 @@ func (w *work) close(m int) bool {
 	}
 	centre, radius := ballOf(r3.Box{Min: lo, Max: hi})
 	for i := range w.edges {
-		if w.edges[i].apart(centre) < 1.6*radius { // the outermost points are a little inside
+		if w.edges[i].apart(centre) < 1.3*radius { // the outermost points are a seventh inside
 			return true
 		}
 	}

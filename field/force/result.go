@@ -35,7 +35,9 @@ type Settings struct {
 	// About is the point about which the torque is taken. Units: length. Default: the origin.
 	About r3.Vec
 	// Accuracy is the wanted error relative to the value, or to 1e-6 of Result.Size where that is larger. Range 1e-13 to 0.1;
-	// default 1e-6. What the field itself claims, if within 1e-12 of Result.Size, is accepted.
+	// default 1e-6. Accepted beside
+	// are what the field itself claims, within 1e-12 of Result.Size, and an error within 1e-10 of it where the value is zero within
+	// that error.
 	Accuracy float64
 	// Stiffness asks for the stiffness too.
 	Stiffness bool

@@ -3,6 +3,7 @@ package force
 import (
 	"context"
 	"math"
+	"slices"
 
 	"example.com/boundpole/field"
 	"example.com/boundpole/field/bound"
@@ -47,7 +48,7 @@ func share(ctx context.Context, p *part, o *other, g goal, set Settings) (outcom
 			if out, ok := small(&q, &back, g, set.About); ok {
 				return out.reaction(), nil
 			}
-			if dearer(o.charge, p.charge) {
+			if swap(o.charge, p.charge) {
 				out, err := faces(ctx, &q, &back, g, set)
 				return out.reaction(), err
 			}
@@ -81,8 +82,10 @@ func faces(ctx context.Context, p *part, o *other, g goal, set Settings) (outcom
 	}
 	g.reach = p.reach
 	w.edges, w.known = o.liveEdges()
-	p.cutAlong(w.edges)
-	return integrate(ctx, p, w, g, set.MaxNodes)
+	cut := *p
+	cut.faces = slices.Clone(p.faces)
+	cut.cutAlong(w.edges)
+	return integrate(ctx, &cut, w, g, set.MaxNodes)
 }
 
 // closeTo is the distance, in the size of parts and coordinates, below which a point counts as on a face that touches: poses that
@@ -119,9 +122,23 @@ func (o outcome) reaction() outcome {
 	return o
 }
 
-// dearer reports whether the field of a costs so much more than that of b, or has edges where that of b has none, that it is
-// better to integrate over a.
-func dearer(a, b *bound.Charge) bool { return cost(a) > cost(b) }
+// swap reports whether it is better to integrate over a in the field of b than the other way round: where they are close, if the field
+// of b has no edges and that of a has; else if the field of a costs more.
+func swap(a, b *bound.Charge) bool {
+	_, reach := ballOf(b.Bounds())
+	if gap(a.Bounds(), b.Bounds()) < nearby*reach {
+		if p, q := rounded(a), rounded(b); p != q {
+			return q
+		}
+	}
+	return cost(a) > cost(b)
+}
+
+// rounded reports whether the field of a body has no edges.
+func rounded(c *bound.Charge) bool {
+	edges, ok := (&other{charge: c}).liveEdges()
+	return ok && len(edges) == 0
+}
 
 // cost ranks the fields of bodies: measured, in the order of a microsecond.
 func cost(c *bound.Charge) int {
