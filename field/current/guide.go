@@ -184,11 +184,11 @@ type GuideValue struct {
 
 // At returns the value at x.
 func (g *Guide) At(x r3.Vec, side field.Side) GuideValue {
-	return g.Evaluate(field.PointsOf(x), side)[0]
+	return g.Values(field.PointsOf(x), side)[0]
 }
 
-// Evaluate returns the values at a batch of points.
-func (g *Guide) Evaluate(at *field.Points, side field.Side) []GuideValue {
+// Values returns the values at a batch of points.
+func (g *Guide) Values(at *field.Points, side field.Side) []GuideValue {
 	n := at.Len()
 	charge := field.NewValues(n, field.WantPhi|field.WantG|field.WantErr)
 	field.Evaluate(g.ends, charge, at, side)
@@ -245,7 +245,7 @@ func shareOf(region geom.Region, side field.Side) float64 {
 // Induction computes A as the vector potential and the flux density as its curl: zero but in the wall, NaN on a wall without
 // thickness. See Source.
 func (g *Guide) Induction(dst *Values, at *field.Points, side field.Side) {
-	for i, v := range g.Evaluate(at, side) {
+	for i, v := range g.Values(at, side) {
 		r := Value{A: v.A, ErrA: v.ErrA, Status: v.Status}
 		if t, ok := g.m.(taper); ok && v.Inside {
 			r.B = g.pose.VectorToOuter(t.curl(g.pose.ToLocal(at.At(i).X).Value()))
