@@ -307,6 +307,54 @@ func TestTurnsHardPlaces(t *testing.T) {
 	}
 }
 
+// TestFlatBody: in a plate a millionth as thick as wide b is that of the current round its edge; h + m, a difference of ones, cannot
+// have more than ten digits of it.
+func TestFlatBody(t *testing.T) {
+	const thin = 0x1p-20
+	plate := geom.Box{Size: r3.Vec{X: 2, Y: 1.5, Z: thin}}
+	m := field.Uniform{P: r3.Vec{Z: 1}}
+	amp, err := current.Of(plate, m)
+	if err != nil {
+		t.Fatal(err)
+	}
+	edge, err := current.NewWire([]r3.Vec{{X: 1, Y: -0.75}, {X: 1, Y: 0.75}, {X: -1, Y: 0.75}, {X: -1, Y: -0.75}}, true, thin)
+	if err != nil {
+		t.Fatal(err)
+	}
+	poles, err := bound.Of(plate, m)
+	if err != nil {
+		t.Fatal(err)
+	}
+	x := r3.Vec{X: 0.25, Y: -0.125}
+	v, want := current.At(amp, x, field.Mean), edge.Field(x)
+	if d := r3.Norm(r3.Sub(v.B, want)); d > 1e-12*want.Z || v.ErrB > 1e-14 { // (thin/0.6)^2/24 = 1e-13 is left out
+		t.Errorf("b %v, of the edge %v, off by %.3g, estimate %.3g", v.B, want, d, v.ErrB)
+	}
+	h := field.At(poles, x, field.Mean, field.WantG|field.WantErr)
+	t.Logf("b %.3g: by currents off by %.2g, estimate %.2g; by poles off by %.2g, estimate %.2g", want.Z, v.B.Z-want.Z, v.ErrB, h.G.Z+1-want.Z, h.ErrG)
+}
+
+// TestThinTube: far from a thin tube the length of its sheets keeps its digits.
+func TestThinTube(t *testing.T) {
+	const thin = 0x1p-20
+	amp, err := current.Of(geom.Tube{Inner: 1 - thin, Outer: 1, Height: 1}, field.RadialPower{Coefficient: 1})
+	if err != nil {
+		t.Fatal(err)
+	}
+	x := r3.Vec{X: 3, Y: 1, Z: 0.25}
+	var want r3.Vec
+	for _, s := range []float64{-1, 1} {
+		l, err := current.NewLoop(geom.Disc{Radius: 1 - thin/2, Z: s / 2}, -s*thin)
+		if err != nil {
+			t.Fatal(err)
+		}
+		want = r3.Add(want, l.Field(x))
+	}
+	if d := r3.Norm(r3.Sub(current.At(amp, x, field.Mean).B, want)); d > 1e-12*r3.Norm(want) { // thin^2/24
+		t.Errorf("off by %.3g of %.3g", d, r3.Norm(want))
+	}
+}
+
 // TestReport reads what faces and cells carry.
 func TestReport(t *testing.T) {
 	amp, err := current.Of(geom.At(geom.Cylinder{Radius: 1, Height: 2}, geom.Translate(r3.Vec{X: 5})), field.Uniform{P: r3.Vec{Z: 3}})

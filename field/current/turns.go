@@ -234,9 +234,9 @@ func (q *azimuthal) integrate(h *sheet, lo, hi, off float64, rule panels) (s str
 	origin, up, down := 0.0, hi, -lo // of the panels, and how far they go up and down
 	switch {
 	case lo > 0:
-		origin, up, down = lo, hi-lo, 0
+		origin, up, down = lo, h.hi-h.lo, 0
 	case hi < 0:
-		origin, up, down = hi, 0, hi-lo
+		origin, up, down = hi, 0, h.hi-h.lo
 	}
 	long := max(up, down)
 	step := max(math.Hypot(origin, off), 0x1p-60*long)
