@@ -62,7 +62,8 @@ func (p Path) At(k int, t float64) (x, dx r3.Vec) {
 }
 
 // LoopIntegral returns the integral of a along a closed curve: the flux of b through it, by Stokes, and so the flux linkage of a
-// loop of one turn. In SI it is multiplied by mu0; that of a Guide is the flux that circulates round the curve.
+// loop of one turn. In SI it is multiplied by mu0; that of a Guide is the flux that circulates round the curve. Of a source without
+// a vector potential package flux takes the flux through a surface.
 //
 // accuracy is the wanted error relative to the integral of |a| |dl|; 0 means 1e-12, the range is 1e-14 to 1e-2. The estimate
 // bounds the error: that of the integration and, through their own estimates, of the values. Where a jumps across the curve,
