@@ -46,7 +46,8 @@ func Solenoid(shape geom.Cylinder, pose geom.Pose, density float64) (Part, error
 // (current.Of, with the magnetization in A/m), and B needs no M inside them. It gives the vector potential as well; for H and Vm
 // use a Model. The two agree on B, and are computed from different charges.
 //
-// Inside flat magnets, where H is nearly -M, this B keeps its digits: its error is relative to the field of the edges.
+// Inside flat magnets, where H is nearly -M, this B keeps its digits: its error is relative to the field of the edges, though the
+// estimate may not show it.
 type Amperian struct {
 	Parts   []current.Source // current.Bound, current.Wire, current.Posed …
 	Applied r3.Vec           // flux density in T; its vector potential is B x r/2, zero at the origin

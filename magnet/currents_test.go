@@ -115,3 +115,36 @@ func TestLinkage(t *testing.T) {
 		t.Errorf("charge of the upper end %+v", c)
 	}
 }
+
+// TestHelmholtzPair checks the hand values of a moment coil: 50 turns each of radius 0.15 m give 0.29973 mT/A at the centre, mu0 n/R
+// (4/5)^1.5, and by reciprocity a magnet of 3.25 A m^2 there links 0.97411 mWb, whatever its size.
+func TestHelmholtzPair(t *testing.T) {
+	const n, radius, moment = 50, 0.15, 3.25
+	var pair magnet.Model
+	for _, z := range []float64{-radius / 2, radius / 2} {
+		coil, err := magnet.Loop(geom.Disc{Radius: radius, Z: z}, geom.Pose{}, n)
+		if err != nil {
+			t.Fatal(err)
+		}
+		pair.Parts = append(pair.Parts, coil)
+	}
+	k := pair.At(r3.Vec{}, field.Mean).B.Z
+	near(t, "B by ampere", k, magnet.Mu0*n/radius*math.Pow(0.8, 1.5), 1e-18)
+	near(t, "B by ampere, printed digits", k, 0.29973e-3, 0.5e-8)
+	ball := geom.Sphere{Radius: 0.03}
+	bound, err := current.Of(ball, field.Uniform{P: r3.Vec{Z: moment / ball.Volume()}})
+	if err != nil {
+		t.Fatal(err)
+	}
+	amp := magnet.Amperian{Parts: []current.Source{bound}}
+	linkage := 0.0
+	for _, z := range []float64{-radius / 2, radius / 2} {
+		flux, _, err := amp.Linkage(t.Context(), current.Circle{Radius: radius, Pose: geom.Translate(r3.Vec{Z: z})})
+		if err != nil {
+			t.Error(err)
+		}
+		linkage += n * flux
+	}
+	near(t, "linkage, k m", linkage, k*moment, 1e-17)
+	near(t, "linkage, printed digits", linkage, 0.97411e-3, 0.5e-8)
+}

@@ -56,7 +56,7 @@ func (f FluxTube) At(x r3.Vec, side field.Side) FluxReading {
 
 // Readings returns the readings at a batch of points.
 func (f FluxTube) Readings(at *field.Points, side field.Side) []FluxReading {
-	values := f.Guide.Evaluate(at, side)
+	values := f.Guide.Values(at, side)
 	out := make([]FluxReading, len(values))
 	unit := metres(f.Unit)
 	for i, v := range values {

@@ -135,6 +135,23 @@ func guides() []trial {
 			func(l *lab) result { return l.linked(guide(l, c.make), c.curve, c.flux) },
 		})
 	}
+	for _, z := range []float64{0, 0.5, 4} {
+		const height, flux = 0x1p-10, 1.5
+		all = append(all, trial{
+			fmt.Sprintf("ring of flux on its axis, z = %g", z), Identity, plain("Phi R^2/(2 (z^2 + R^2)^(3/2)), the loop's formula one storey up"),
+			"a tube of radius 1 and height 2^-10 with the flux 1.5 in all", relative(1e-6, "theory: (height/radius)^2"), func(l *lab) result {
+				g := guide(l, func() (*current.Guide, error) {
+					return current.NewGuide(geom.Cylinder{Radius: 1, Height: height}, flux/height)
+				})
+				if l.err != nil {
+					return result{}
+				}
+				v := g.At(r3.Vec{Z: z}, field.Outside)
+				r := vector(r3.Vec{Z: cf.LoopAxisField(flux, 1, z)}, v.A)
+				return r
+			},
+		})
+	}
 	return all
 }
 

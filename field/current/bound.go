@@ -148,6 +148,10 @@ func (v *Value) join(e r3.Vec, p field.Value) {
 func (v *Value) finish() {
 	v.ErrB *= math.Sqrt2
 	v.errGrad += 16 * u * norm(v.grad[:]...)
+	if v.Status == field.OnEdge {
+		n := nowhere(field.OnEdge)
+		v.B, v.ErrB, v.grad, v.errGrad = n.B, n.ErrB, n.grad, n.errGrad
+	}
 }
 
 // addCross adds the symmetric part of e x t, column by column, to g.

@@ -26,7 +26,7 @@ import (
 //
 // Units: natural; A, M_A and the flux by length of the wall in one unit, chi in that times length. In SI T m and T m^2.
 // Frame: that of the body.
-// Domain: as the bound charge of the bore. NaN in, NaN out. Built by NewGuide and NewArcGuide; immutable.
+// Domain: as the bound charge of the bore. NaN in, NaN out. Built by NewGuide, NewArcGuide and NewThickGuide; immutable.
 // Singular: |A| grows as log(1/d) at distance d from the rims of the ends; on them A is NaN, Chi finite, field.OnEdge. On the wall
 // A jumps along the tube: the mean of both sides, or the side asked for.
 // Accuracy: straight: 1e-12 max(|A|, 1e-3 A0 min(1, (a/R)^3)), a the bounding radius, and chi likewise (TestGuideReference).
@@ -113,7 +113,8 @@ func NewArcGuide(bore geom.Arc, pose geom.Pose, flux float64) (*Guide, error) {
 }
 
 // NewThickGuide returns the straight tube with a wall of some thickness, the body of wall, in which the flux density is the same all
-// over, right-handed about z: M_A is density times the thickness in the bore and falls to zero across the wall.
+// over, right-handed about z: M_A is density times the thickness in the bore and falls to zero across the wall. No value of A is
+// given on the two circles where bore and wall meet in an end, although it exists.
 func NewThickGuide(wall geom.Tube, pose geom.Pose, density float64) (*Guide, error) {
 	if err := wall.Check(); err != nil {
 		return nil, err
@@ -184,11 +185,11 @@ type GuideValue struct {
 
 // At returns the value at x.
 func (g *Guide) At(x r3.Vec, side field.Side) GuideValue {
-	return g.Evaluate(field.PointsOf(x), side)[0]
+	return g.Values(field.PointsOf(x), side)[0]
 }
 
-// Evaluate returns the values at a batch of points.
-func (g *Guide) Evaluate(at *field.Points, side field.Side) []GuideValue {
+// Values returns the values at a batch of points.
+func (g *Guide) Values(at *field.Points, side field.Side) []GuideValue {
 	n := at.Len()
 	charge := field.NewValues(n, field.WantPhi|field.WantG|field.WantErr)
 	field.Evaluate(g.ends, charge, at, side)
@@ -245,7 +246,7 @@ func shareOf(region geom.Region, side field.Side) float64 {
 // Induction computes A as the vector potential and the flux density as its curl: zero but in the wall, NaN on a wall without
 // thickness. See Source.
 func (g *Guide) Induction(dst *Values, at *field.Points, side field.Side) {
-	for i, v := range g.Evaluate(at, side) {
+	for i, v := range g.Values(at, side) {
 		r := Value{A: v.A, ErrA: v.ErrA, Status: v.Status}
 		if t, ok := g.m.(taper); ok && v.Inside {
 			r.B = g.pose.VectorToOuter(t.curl(g.pose.ToLocal(at.At(i).X).Value()))

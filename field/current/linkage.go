@@ -62,9 +62,10 @@ func (p Path) At(k int, t float64) (x, dx r3.Vec) {
 }
 
 // LoopIntegral returns the integral of a along a closed curve: the flux of b through it, by Stokes, and so the flux linkage of a
-// loop of one turn. In SI it is multiplied by mu0; that of a Guide is the flux that circulates round the curve.
+// loop of one turn. In SI it is multiplied by mu0; that of a Guide is the flux that circulates round the curve. Of a source without
+// a vector potential package flux takes the flux through a surface.
 //
-// accuracy is the wanted error relative to the integral of |a.dl|; 0 means 1e-12, the range is 1e-14 to 1e-2. The estimate
+// accuracy is the wanted error relative to the integral of |a| |dl|; 0 means 1e-12, the range is 1e-14 to 1e-2. The estimate
 // bounds the error: that of the integration and, through their own estimates, of the values. Where a jumps across the curve,
 // the interval is halved down to the jump; a curve that is cut there takes less time.
 //
@@ -130,7 +131,7 @@ type lineIntegral struct {
 	points field.Points
 }
 
-// span is an interval of a piece with its integral, the difference of two rules, the integral of |a.dl| and of the estimates.
+// span is an interval of a piece with its integral, the difference of two rules, the integral of |a| |dl| and of the estimates.
 type span struct {
 	piece             int
 	from, to          float64
@@ -167,7 +168,7 @@ func (l *lineIntegral) rule(g cubature.Rule, s span) (value, size, claim float64
 		w := v.At(i)
 		f := r3.Dot(w.A, along[i])
 		value += f
-		size += math.Abs(f)
+		size += r3.Norm(w.A) * r3.Norm(along[i])
 		claim += w.ErrA * r3.Norm(along[i])
 	}
 	return value, size, claim

@@ -55,7 +55,7 @@ func turn(pose geom.Pose, x, y, z, err []float64) {
 	for i := range x {
 		v := pose.VectorToOuter(r3.Vec{X: x[i], Y: y[i], Z: z[i]})
 		x[i], y[i], z[i] = v.X, v.Y, v.Z
-		if err != nil {
+		if err != nil && isFinite(v) {
 			err[i] += 4 * u * r3.Norm(v)
 		}
 	}

@@ -77,7 +77,7 @@ func (b *Bound) fill() error {
 			}
 			l.Uniform = l.Uniform && k == l.Density
 		})
-		f.Surface.Nodes(n-2, func(x, normal r3.Vec, w float64) {
+		f.Surface.Nodes(n*3/5, func(x, normal r3.Vec, w float64) {
 			coarse.add(x, r3.Cross(b.m.At(x), r3.Scale(f.Sign(), normal)), w)
 		})
 		if !l.Uniform {
@@ -97,7 +97,7 @@ func (b *Bound) fill() error {
 			v.Current = r3.Add(v.Current, r3.Scale(w, j))
 			v.Largest = max(v.Largest, r3.Norm(j))
 		})
-		c.Nodes(n-2, func(x r3.Vec, w float64) {
+		c.Nodes(n*3/5, func(x r3.Vec, w float64) {
 			coarse.add(x, curl(b.axes, x), w)
 			coarse.wanted = r3.Add(coarse.wanted, r3.Scale(w, b.m.At(x)))
 		})

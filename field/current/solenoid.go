@@ -14,7 +14,8 @@ import (
 // Domain: all finite x; lengths within 1e-60 and 1e60. NaN in, NaN out. Built by NewSolenoid; immutable.
 // Singular: |b| grows as log(1/d) at distance d from the rims; on them B is NaN, A finite, field.OnEdge. On the sheet the mean of
 // both sides of b, or the side asked for, and no gradient. Seen as a field.Source it has no potential.
-// Accuracy: |error| <= 1e-13 max(|b|, 1e-3 Density min(1, (a/R)^3)), a the bounding radius; of a likewise (TestSolenoid).
+// Accuracy: |error| <= 1e-13 max(|b|, 1e-3 Density min(1, (a/R)^3)), a the bounding radius; of a likewise (as the
+// cylinder of TestAgainstPoles).
 // Source: as Bound; [Jackson1999] sec. 5.8.
 type Solenoid struct {
 	sheet *Bound

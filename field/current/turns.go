@@ -124,12 +124,16 @@ func (t *turns) Induction(dst *Values, at *field.Points, side field.Side) { indu
 func (t *turns) value(p field.Point, side field.Side, _ want) Value {
 	k := 1 / t.unit
 	x, y := p.X.X.Scale(k), p.X.Y.Scale(k)
-	q := azimuthal{rho2: x.Mul(x).Add(y.Mul(y)), z: p.X.Z.Scale(k), side: side}
-	q.rho = q.rho2.Sqrt().Value()
-	reach := math.Hypot(q.rho, q.z.Value())
-	q.tol = k*p.Slack + 4*u*(reach+t.size)
+	z := p.X.Z.Scale(k)
+	reach := math.Hypot(math.Hypot(x.Value(), y.Value()), z.Value())
 	if reach > 1e60 {
 		return Value{ErrA: 1e-60 * t.unit * t.peak, ErrB: 1e-120 * t.peak} // it falls like 1/R^2 and 1/R^3 at least
+	}
+	q := azimuthal{rho2: x.Mul(x).Add(y.Mul(y)), z: z, tol: k*p.Slack + 4*u*(reach+t.size), side: side}
+	q.rho = q.rho2.Sqrt().Value()
+	if q.rho < 1e-60 { // squares of less underflow; a and b_rho are of the order of rho
+		q.missA, q.missB = t.peak*q.rho, t.peak*q.rho
+		q.rho, q.rho2 = 0, pair.Float{}
 	}
 	var out r3.Vec
 	if q.rho > 0 {
@@ -230,9 +234,9 @@ func (q *azimuthal) integrate(h *sheet, lo, hi, off float64, rule panels) (s str
 	origin, up, down := 0.0, hi, -lo // of the panels, and how far they go up and down
 	switch {
 	case lo > 0:
-		origin, up, down = lo, hi-lo, 0
+		origin, up, down = lo, h.hi-h.lo, 0
 	case hi < 0:
-		origin, up, down = hi, 0, hi-lo
+		origin, up, down = hi, 0, h.hi-h.lo
 	}
 	long := max(up, down)
 	step := max(math.Hypot(origin, off), 0x1p-60*long)

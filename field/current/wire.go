@@ -33,6 +33,7 @@ type Wire struct {
 	closed  bool
 	current float64
 	size    float64 // greatest distance of a point from the centre
+	unit    float64 // power of two near it, in which segments are evaluated
 	centre  r3.Vec
 	far     func() [3]*field.Moments // a_i is the potential of charge i; nil for open wires
 }
@@ -68,6 +69,7 @@ func NewWire(points []r3.Vec, closed bool, current float64) (*Wire, error) {
 	for _, p := range points {
 		w.size = max(w.size, r3.Norm(r3.Sub(p, w.centre)))
 	}
+	w.unit = math.Ldexp(1, math.Ilogb(w.size))
 	if closed {
 		w.far = sync.OnceValue(w.expand)
 	}
@@ -136,32 +138,61 @@ func (w *Wire) value(p field.Point, _ field.Side, want want) Value {
 	if w.far != nil && max(math.Abs(d.X), math.Abs(d.Y), math.Abs(d.Z)) > wireReach*w.size {
 		return w.away(p)
 	}
-	tol := p.Slack + 4*u*(r3.Norm(v)+r3.Norm(w.centre)+w.size)
+	if max(math.Abs(d.X), math.Abs(d.Y), math.Abs(d.Z)) > elementReach*w.size {
+		return w.element(d)
+	}
+	k := 1 / w.unit
+	tol := k * (p.Slack + 4*u*(r3.Norm(v)+r3.Norm(w.centre)+w.size))
 	var sum Value
 	var size, slopes float64
-	last := pair.VecOf(w.points[0]).Sub(p.X)
+	last := scaled(pair.VecOf(w.points[0]).Sub(p.X), k)
 	n := len(w.points)
 	if w.closed {
 		n++
 	}
 	for i := 1; i < n; i++ {
 		at := w.points[i%len(w.points)]
-		next := pair.VecOf(at).Sub(p.X)
-		s := segment{a: last, b: next, t: pair.VecOf(at).Sub(pair.VecOf(w.points[i-1]))}
+		next := scaled(pair.VecOf(at).Sub(p.X), k)
+		s := segment{a: last, b: next, t: scaled(pair.VecOf(at).Sub(pair.VecOf(w.points[i-1])), k)}
 		if !s.add(&sum, tol, want, &size, &slopes) {
 			return nowhere(field.AtPoint)
 		}
 		last = next
 	}
-	k := over4P * w.current
-	sum.A, sum.B = r3.Scale(k, sum.A), r3.Scale(k, sum.B)
-	sum.ErrA *= 12 * u * math.Abs(k)
-	sum.ErrB = 24 * u * math.Abs(k) * size
+	f := over4P * w.current
+	sum.A, sum.B = r3.Scale(f, sum.A), r3.Scale(f*k, sum.B)
+	sum.ErrA *= 12 * u * math.Abs(f)
+	sum.ErrB = 24 * u * math.Abs(f*k) * size
 	for i := range sum.grad {
-		sum.grad[i] *= k
+		sum.grad[i] *= f * k * k
 	}
-	sum.errGrad = 48 * u * math.Abs(k) * slopes
+	sum.errGrad = 48 * u * math.Abs(f*k*k) * slopes
 	return sum
+}
+
+// scaled returns v times a power of two.
+func scaled(v pair.Vec, k float64) pair.Vec {
+	return pair.Vec{X: v.X.Scale(k), Y: v.Y.Scale(k), Z: v.Z.Scale(k)}
+}
+
+// elementReach is the distance in sizes beyond which an open wire is one short element: 1e-17 is left out.
+const elementReach = 1e17
+
+// element returns the value of an open wire very far away, at d from its centre.
+func (w *Wire) element(d r3.Vec) Value {
+	dl := r3.Sub(w.points[len(w.points)-1], w.points[0])
+	r := math.Hypot(math.Hypot(d.X, d.Y), d.Z)
+	n := r3.Scale(1/r, d)
+	f := over4P * w.current / r
+	v := Value{A: r3.Scale(f, dl), B: r3.Scale(f/r, r3.Cross(dl, n))}
+	g := f / r / r
+	e := r3.Cross(dl, n)
+	for k, c := range [6]float64{e.X * n.X, e.Y * n.Y, e.Z * n.Z, 0.5 * (e.X*n.Y + e.Y*n.X), 0.5 * (e.X*n.Z + e.Z*n.X), 0.5 * (e.Y*n.Z + e.Z*n.Y)} {
+		v.grad[k] = -3 * g * c
+	}
+	size := math.Abs(f) * r3.Norm(dl)
+	v.ErrA, v.ErrB, v.errGrad = 16*u*size, 16*u*size/r, 64*u*size/r/r
+	return v
 }
 
 // segment is a straight piece seen from the point: a and b go to its ends, t is b - a without their rounding.
