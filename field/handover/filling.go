@@ -2,7 +2,6 @@ package handover
 
 import (
 	"fmt"
-	"math"
 
 	"example.com/boundpole/field"
 	"example.com/boundpole/field/bound"
@@ -28,7 +27,12 @@ func fillingOf(c *bound.Charge, v bound.Volume) filling {
 		f.density = func(r3.Vec) float64 { return v.Min }
 		return f
 	}
-	p := field.Func{Size: math.Cbrt(c.Body().Volume()), P: func(x r3.Vec) [3]float64 {
+	var area float64
+	for _, l := range c.Layers {
+		area += l.Area
+	}
+	thickness := 2 * c.Body().Volume() / area // of a plate; of other bodies about a third of the size
+	p := field.Func{Size: thickness, P: func(x r3.Vec) [3]float64 {
 		v := c.Polarization(pair.VecOf(x))
 		return [3]float64{v.X, v.Y, v.Z}
 	}}

@@ -29,7 +29,7 @@ var apart = []struct {
 	foreign string // all foreign packages that the room may import; empty: those of every room
 	users   string // who may import the room; empty: by the order
 }{
-	{room: "field/codata", users: "field/handover charge magnet magnet/grade verify/... examples/..."},
+	{room: "field/codata", users: "charge magnet magnet/grade field/handover verify/... examples/..."},
 	{room: "field/closedform", foreign: "gonum.org/v1/gonum/spatial/r3 gonum.org/v1/gonum/mathext",
 		users: "verify/... examples/..."},
 	{room: "magnet/cgs", users: "magnet verify/... examples/..."},
