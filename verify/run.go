@@ -62,6 +62,7 @@ func families(o *Options) []Family {
 		{"energies", "Self energies and pair energies, integrated from the library's potential.", energies},
 		{"forces", "Forces between magnets, integrated from the library's field over the charge of the second.", forces},
 		{"flux tubes", "A straight tube of circulating flux is a polarized cylinder: A = g, plus p inside.", fluxTubes},
+		{"currents", "The Amperian picture against the poles, free currents on their axes, and what loops link: B and A.", currents},
 		{"worked examples", "Jobs of the trade in SI units.", workedExamples},
 		{"reference values", "Worst point of each reference body, in units of the contract 1e-12.", referenceValues},
 		{estimateFamily, "The library's own bounds on its error, against random triples of body, polarization and point in hard places.\n" +
