@@ -222,7 +222,7 @@ func (f *farField) build() {
 
 // affineAt returns p at x, summed in pairs: far from the origin the terms may cancel.
 func affineAt(p *field.Affine, x r3.Vec) r3.Vec {
-	at := pair.VecOf(x)
+	at := pair.VecOf(x).Sub(pair.VecOf(p.About))
 	row := func(c float64, g *[3]float64) float64 {
 		return pair.VecOf(r3.Vec{X: g[0], Y: g[1], Z: g[2]}).Dot(at).AddFloat(c).Value()
 	}
