@@ -5,6 +5,8 @@ package refsource
 
 import (
 	"fmt"
+	"maps"
+	"slices"
 
 	"example.com/boundpole/field"
 	"example.com/boundpole/field/bound"
@@ -172,14 +174,48 @@ func polynomial(q *refcase.Polarization, pose geom.Pose) field.Polarization {
 	if !pose.Turned() && pose.Origin().Value() == (r3.Vec{}) {
 		return p
 	}
-	outer := func(x r3.Vec) r3.Vec { return pose.ToOuter(pair.VecOf(x)).Value() }
-	return field.Func{
-		P: func(x r3.Vec) [3]float64 {
-			v := pose.VectorToLocal(p.At(outer(x)))
-			return [3]float64{v.X, v.Y, v.Z}
-		},
-		Div: func(x r3.Vec) float64 { return p.Divergence(outer(x)) },
+	return composed(p, pose)
+}
+
+// composed returns a polynomial of the outer frame as seen in that of a pose.
+func composed(p field.Polynomial, pose geom.Pose) field.Polynomial {
+	m, o := pose.Matrix(), pose.Origin().Value()
+	linear := [3]map[[3]int]float64{}
+	for i, c := range [3]float64{o.X, o.Y, o.Z} {
+		linear[i] = map[[3]int]float64{{}: c, {1, 0, 0}: m[i][0], {0, 1, 0}: m[i][1], {0, 0, 1}: m[i][2]}
 	}
+	var all [3]map[[3]int]float64
+	for i := range all {
+		all[i] = map[[3]int]float64{}
+	}
+	for _, t := range p {
+		f := map[[3]int]float64{{}: t.Coefficient}
+		for i, n := range t.Powers {
+			for range n {
+				next := map[[3]int]float64{}
+				for a, u := range f {
+					for b, v := range linear[i] {
+						next[[3]int{a[0] + b[0], a[1] + b[1], a[2] + b[2]}] += u * v
+					}
+				}
+				f = next
+			}
+		}
+		for powers, v := range f {
+			for i := range 3 { // components turn back
+				all[i][powers] += m[t.Component][i] * v
+			}
+		}
+	}
+	var q field.Polynomial
+	for i := range all {
+		for _, powers := range slices.SortedFunc(maps.Keys(all[i]), func(a, b [3]int) int { return slices.Compare(a[:], b[:]) }) {
+			if c := all[i][powers]; c != 0 {
+				q = append(q, field.Term{Component: i, Coefficient: c, Powers: powers})
+			}
+		}
+	}
+	return q
 }
 
 func vectors(list [][3]float64) []r3.Vec {
