@@ -13,8 +13,8 @@ import (
 	"example.com/boundpole/field/bound"
 	"example.com/boundpole/field/element"
 	"example.com/boundpole/geom"
-	"example.com/boundpole/geom/pair"
 	"example.com/boundpole/verify/refcase"
+	"example.com/boundpole/verify/refsource"
 	"gonum.org/v1/gonum/spatial/r3"
 )
 
@@ -213,7 +213,7 @@ func gradientSource(t *testing.T, c *refcase.Case) (family string, src field.Sou
 		family = "prism uniform"
 		src, err = bound.Of(body, field.Uniform{P: refcase.Vec(c.Polarization.P)})
 	} else {
-		src, err = referenceSource(t, c)
+		src, err = refsource.Of(c)
 	}
 	if errors.Is(err, bound.ErrUnsupported) {
 		return family, nil, rho
@@ -221,12 +221,8 @@ func gradientSource(t *testing.T, c *refcase.Case) (family string, src field.Sou
 	if err != nil || src == nil {
 		t.Fatalf("%s: no source: %v", c.ID, err)
 	}
-	if _, p, ok := referenceBody(t, c); ok {
-		pose, err := c.Pose()
-		if err != nil {
-			t.Fatal(err)
-		}
-		rho = func(x r3.Vec) float64 { return -p.Divergence(pose.ToLocal(pair.VecOf(x)).Value()) }
+	if charge, ok := src.(*bound.Charge); ok {
+		rho = charge.VolumeDensity
 	}
 	return family, src, rho
 }

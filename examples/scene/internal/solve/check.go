@@ -38,6 +38,8 @@ func CheckRecord(h *scenefile.HandCheck, rec *Record) Check {
 		return held(h, component(m.H, q.Of)...)
 	case "B":
 		return held(h, component(m.B, q.Of)...)
+	case "A":
+		return held(h, component(rec.Guide.A, q.Of)...)
 	}
 	return held(h, math.NaN())
 }
