@@ -38,6 +38,8 @@ func every(t testing.TB) map[string]current.Source {
 	add("guide", guide, err)
 	arc, err := current.NewArcGuide(geom.ArcDegrees(1, 2, 1, 0, 360), geom.Pose{}, 1)
 	add("closed guide", arc, err)
+	bent, err := current.NewArcGuide(geom.ArcDegrees(1, 2, 1, 0, 90), geom.Pose{}, 1)
+	add("bent guide", bent, err)
 	turn, err := geom.Turn(r3.Vec{X: 1, Y: 1}, 25)
 	add("turned loop", current.Posed{Source: loop, Pose: turn.Then(geom.Translate(r3.Vec{X: 3}))}, err)
 	return all
@@ -46,7 +48,7 @@ func every(t testing.TB) map[string]current.Source {
 // FuzzPlaces asks for values anywhere: nothing panics, and a value that is not a number says so in its status.
 func FuzzPlaces(f *testing.F) {
 	for _, x := range []r3.Vec{{}, {X: 1, Z: 0.5}, {X: 1}, {X: 1, Z: 0.25}, {X: 0.6, Y: 0.8, Z: 0.5}, {X: 0.5, Z: 2}, {Z: 1e-300}, {X: 1e-200, Y: -1e-160},
-		{X: 1e300, Y: 1e300}, {Z: -1e155}, {X: 1e80, Z: 1e70}, {X: 2e9, Y: 1e8}, {X: math.Inf(1)}, {Y: math.NaN()}, {X: 1 + 1e-12, Z: 0.5 - 1e-12}, {X: 5e-324}, {X: 1e-200, Y: -1e-160, Z: -0.25}} {
+		{X: 1e300, Y: 1e300}, {Z: -1e155}, {X: 1e80, Z: 1e70}, {X: 2e9, Y: 1e8}, {X: math.Inf(1)}, {Y: math.NaN()}, {X: 1 + 1e-12, Z: 0.5 - 1e-12}, {X: 5e-324}, {X: 1.5}, {Y: 1.5, Z: 0.5}, {Z: 0.5}, {X: 1e-200, Y: -1e-160, Z: -0.25}} {
 		f.Add(x.X, x.Y, x.Z, 0)
 		f.Add(x.X, x.Y, x.Z, 1)
 	}

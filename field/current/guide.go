@@ -7,7 +7,6 @@ import (
 
 	"example.com/boundpole/field"
 	"example.com/boundpole/field/bound"
-	"example.com/boundpole/field/cubature"
 	"example.com/boundpole/geom"
 	"gonum.org/v1/gonum/spatial/r3"
 )
@@ -30,7 +29,7 @@ import (
 // Singular: |A| grows as log(1/d) at distance d from the rims of the ends; on them A is NaN, Chi finite, field.OnEdge. On the wall
 // A jumps along the tube: the mean of both sides, or the side asked for.
 // Accuracy: straight: 1e-12 max(|A|, 1e-3 A0 min(1, (a/R)^3)), a the bounding radius, and chi likewise (TestGuideReference).
-// Arcs 1e-10 of the same (TestArcGuide).
+// Arcs 1e-12 of the same (TestArcGuideEdges), thick walls 1e-10 (TestThickGuide).
 // Source: Helmholtz's theorem: A = (1/4pi) int B x (x-r)/|x-r|^3 dV for the flux density B [own derivation]; the ends as
 // [Jackson1999] sec. 5.9 has the poles of a magnet.
 type Guide struct {
@@ -96,17 +95,9 @@ func NewArcGuide(bore geom.Arc, pose geom.Pose, flux float64) (*Guide, error) {
 	if bore.Full() || flux == 0 {
 		return g, nil
 	}
-	var ends field.Sum
-	faces := bore.Faces()
-	for k, sign := range [2]float64{-1, 1} { // from, to: the last two
-		face := faces[len(faces)-2+k]
-		charts := face.Surface.(geom.Charted).Charts()
-		density := func(x, _ r3.Vec) float64 { return sign * flux / math.Hypot(x.X, x.Y) }
-		l, err := cubature.NewLayer(charts, density, nil)
-		if err != nil {
-			return nil, err
-		}
-		ends = append(ends, l)
+	ends, err := newArcEnds(bore, flux)
+	if err != nil {
+		return nil, err
 	}
 	g.ends = field.Posed{Source: ends, Pose: pose}
 	return g, nil

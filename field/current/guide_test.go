@@ -3,6 +3,7 @@ package current_test
 import (
 	"encoding/json"
 	"math"
+	"math/rand/v2"
 	"os"
 	"testing"
 
@@ -168,6 +169,73 @@ func TestArcGuideEnds(t *testing.T) {
 	want := turn.VectorToOuter(r3.Scale(1.5, r3.Vec{X: -wall.Y, Y: wall.X}))
 	if d := r3.Norm(r3.Sub(r3.Sub(in.A, out.A), want)); d > 1e-14 || in.Status != field.OnFace {
 		t.Errorf("jump on the wall %v, want %v; %v", r3.Sub(in.A, out.A), want, in.Status)
+	}
+}
+
+// TestArcGuideEdges holds A of a bent tube close to the edges of its ends against testdata/arc.py.
+func TestArcGuideEdges(t *testing.T) {
+	g, err := current.NewArcGuide(geom.ArcDegrees(1, 2, 1, 0, 90), geom.Pose{}, 0.5)
+	if err != nil {
+		t.Fatal(err)
+	}
+	for _, c := range []struct {
+		x r3.Vec
+		a [3]string
+	}{
+		{r3.Vec{X: 1.5, Y: -1e-3, Z: 0.25}, [3]string{"-0.025728557211984937245", "0.16219090404282529817", "-0.043839010163850775836"}},
+		{r3.Vec{X: 1.5, Y: 1e-6, Z: 0.25}, [3]string{"-0.025835338222014441185", "0.16253494864597045913", "-0.043838721337341136094"}},
+		{r3.Vec{X: 1.25, Y: -1e-9}, [3]string{"0.019126446959407801429", "0.1945089842451527109", "0"}},
+		{r3.Vec{X: 1.0 - 1e-6, Y: -1e-6, Z: 0.1}, [3]string{"0.99595778879563796569", "0.055387216958035919311", "-0.010936749567760261"}},
+		{r3.Vec{X: 2.0 + 1e-9, Y: -1e-9, Z: 0.1}, [3]string{"-0.80596336830200035539", "0.028722361749429719628", "-0.0085637387271559607062"}},
+		{r3.Vec{X: 1.5, Y: 1e-6, Z: 0.5 - 1e-6}, [3]string{"-0.013403860103022255008", "0.2044335178604555854", "-0.68981580795760629098"}},
+		{r3.Vec{X: 1.999999, Y: 1e-3, Z: 0.499}, [3]string{"-0.15981258304548628596", "0.20064213465073400723", "-0.13346918821286535015"}},
+	} {
+		v := g.At(c.x, field.Mean)
+		miss, size := off(list(v.A), c.a[:])
+		if miss > 1e-13*size || miss > v.ErrA || v.ErrA > 1e-13 || v.Status != field.Regular {
+			t.Errorf("at %v: A %v misses by %.3g of %.3g, estimate %.3g, %v", c.x, v.A, miss, size, v.ErrA, v.Status)
+		}
+	}
+	// far away the charges of the ends cancel: the field of the dipole int M_A dV = c h (b - a) (-1 + ..), to one order in a/R
+	far := r3.Vec{X: 1e6, Y: 2e6, Z: 3e5}
+	v := g.At(far, field.Mean)
+	m := r3.Scale(0.5, r3.Vec{X: -1, Y: 1}) // c (b - a) h times the integral of phi over a quarter turn
+	n := r3.Unit(far)
+	r := r3.Norm(far)
+	want := r3.Scale(1/(4*math.Pi*r*r*r), r3.Sub(r3.Scale(3*r3.Dot(m, n), n), m))
+	if d := r3.Norm(r3.Sub(v.A, want)); d > 5e-6*r3.Norm(want) || v.ErrA > 1e-12*r3.Norm(want) {
+		t.Errorf("far away: A %v, dipole %v, estimate %.3g", v.A, want, v.ErrA)
+	}
+	rim := g.At(r3.Vec{X: 2, Z: 0.25}, field.Mean)
+	if rim.Status != field.OnEdge || !math.IsNaN(rim.A.X) || math.IsNaN(rim.Chi) {
+		t.Errorf("on an edge: %+v", rim)
+	}
+	if d := field.At(g.Ends(), r3.Vec{X: 3, Y: 1}, field.Mean, field.WantG|field.WantGrad).Grad; math.Abs(d[0]+d[1]+d[2]) > 1e-12 || d[0] == 0 {
+		t.Errorf("gradient %v", d)
+	}
+}
+
+// TestArcGuideLayers holds the charge of the ends against cubature over them, which the gradient comes from.
+func TestArcGuideLayers(t *testing.T) {
+	rng := rand.New(rand.NewPCG(4, 4))
+	for _, arc := range []geom.Arc{geom.ArcDegrees(1, 2, 1, 20, 130), geom.ArcDegrees(0.01, 1, 0.125, -10, 200), geom.ArcDegrees(1, 1.01, 2, 0, 300)} {
+		g, err := current.NewArcGuide(arc, geom.Pose{}, 1)
+		if err != nil {
+			t.Fatal(err)
+		}
+		worst := 0.0
+		for range 40 {
+			r := func() float64 { return 4*rng.Float64() - 2 }
+			x := r3.Vec{X: r(), Y: r(), Z: r()}
+			a := field.At(g.Ends(), x, field.Mean, field.WantPhi|field.WantG|field.WantErr)
+			b := field.At(g.Ends(), x, field.Mean, field.WantPhi|field.WantG|field.WantGrad|field.WantErr)
+			miss := r3.Norm(r3.Sub(a.G, b.G))
+			worst = max(worst, miss/r3.Norm(b.G))
+			if miss > a.ErrG+b.ErrG || math.Abs(a.Phi-b.Phi) > a.ErrPhi+b.ErrPhi || a.ErrG > 1e-11/arc.Inner {
+				t.Errorf("%+v at %v: g %v, by cubature %v, off by %.3g, estimates %.3g, %.3g; phi %v and %v", arc, x, a.G, b.G, miss, a.ErrG, b.ErrG, a.Phi, b.Phi)
+			}
+		}
+		t.Logf("%+v: worst %.2g of g", arc, worst)
 	}
 }
 

@@ -220,37 +220,12 @@ func (q *azimuthal) jump(h *sheet) {
 // strip is the contribution of a sheet by one rule.
 type strip struct{ a, r, b, sizeA, sizeB float64 }
 
-// panels of a rule: points a panel, and the factor by which panels grow. A panel from x to 3x or 4x is 3.7 or 3 in Bernstein's
-// measure away from a singularity at 0, so that 16 or 20 points leave 5e-19 and 8e-20.
-type panels struct {
-	points int
-	growth float64
-}
-
-var ruleFine, ruleCoarse = panels{20, 4}, panels{16, 3}
-
-// integrate takes the integral along the sheet; places are counted from the one next to the point, the foot.
+// integrate takes the integral along the sheet with one rule.
 func (q *azimuthal) integrate(h *sheet, lo, hi, off float64, rule panels) (s strip) {
-	origin, up, down := 0.0, hi, -lo // of the panels, and how far they go up and down
-	switch {
-	case lo > 0:
-		origin, up, down = lo, h.hi-h.lo, 0
-	case hi < 0:
-		origin, up, down = hi, 0, h.hi-h.lo
-	}
-	long := max(up, down)
-	step := max(math.Hypot(origin, off), 0x1p-60*long)
+	start := max(lo, -hi, 0)
 	g := cubature.Legendre(rule.points)
-	cut := min(up, down)
-	for from := 0.0; from < long; {
-		to := min(max(step, rule.growth*from), long)
-		if from < cut && cut < to {
-			to = cut
-		}
-		to = h.before(from, to, q.rho, math.Abs(origin))
-		q.panel(&s, h, origin, off, from, to, to <= up, to <= down, g)
-		from = to
-	}
+	march(lo, hi, h.hi-h.lo, off, rule, func(from, to float64) float64 { return h.before(from, to, q.rho, start) },
+		func(origin, from, to float64, up, down bool) { q.panel(&s, h, origin, off, from, to, up, down, g) })
 	return s
 }
 

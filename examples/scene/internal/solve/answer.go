@@ -56,13 +56,16 @@ func (a *Answer) Find(name string) *Quantity {
 // CheckAnswer holds one hand check against an answer.
 func CheckAnswer(h *scenefile.HandCheck, a *Answer) Check {
 	q := a.Find(h.Quantity.Name)
-	switch {
-	case q == nil:
+	if q == nil {
 		return held(h, math.NaN())
-	case len(q.Value) == 3:
-		return held(h, component(r3.Vec{X: q.Value[0], Y: q.Value[1], Z: q.Value[2]}, h.Quantity.Of)...)
 	}
-	return held(h, q.Value...)
+	value := q.Value
+	if len(value) == 3 {
+		value = component(r3.Vec{X: value[0], Y: value[1], Z: value[2]}, h.Quantity.Of)
+	}
+	c := held(h, value...)
+	c.Ladder = q.Ladder
+	return c
 }
 
 // Answer answers a request that is not for points and no travel. Its error is that of the context alone: what cannot be

@@ -12,6 +12,7 @@ type Check struct {
 	Quantity   string // as written in the scene
 	Name       string // without address and component
 	Kind       Kind   // of the part it speaks of, if it speaks of one
+	Ladder     string // of the units of an answer's quantity, see Quantity
 	At         int
 	Hand       []float64 // SI; one number or three
 	Value      []float64
