@@ -171,10 +171,16 @@ func (s *integrated) points() int {
 	return int(math.Ceil(8/math.Log10(t+math.Sqrt(t*t-1)))) + 1
 }
 
-// carries reports whether a face has any charge.
+// carries reports whether a face has any charge: more than what the rounding of its normals makes of p along it.
 func (c *Charge) carries(f geom.Face) bool {
 	lo, hi := c.extremes(f)
-	return lo != 0 || hi != 0
+	most := 0.0
+	f.Surface.Nodes(4, func(x, _ r3.Vec, _ float64) {
+		if p := r3.Norm(c.p.At(x)); p > most {
+			most = p
+		}
+	})
+	return max(math.Abs(lo), math.Abs(hi)) > 8*0x1p-53*most
 }
 
 // free reports whether a cell has no charge.

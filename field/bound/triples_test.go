@@ -26,7 +26,7 @@ func TestTriples(t *testing.T) {
 			compareAll(t, 1e-10, 1, func(c *refcase.Case) bool {
 				seen++
 				switch family {
-				case "box-polynomial", "ellipsoid-affine": // over faces and cells: up to a second each
+				case "ellipsoid-affine": // over faces and cells: up to a second each
 					return seen%80 == 0
 				case "cone", "torus", "disc-linear", "cylinder-axial": // quick, or close to a limit
 					return true
