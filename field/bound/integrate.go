@@ -58,9 +58,15 @@ func (c *Charge) integrated() (field.Source, error) {
 				s.builds = append(s.builds, func() (field.Evaluator, error) { return l, nil })
 			}
 		}
-		for _, v := range r.volumes {
-			s.builds = append(s.builds, func() (field.Evaluator, error) { return v, nil })
-		}
+		s.builds = append(s.builds, func() (field.Evaluator, error) {
+			sum, err := c.aroundOrigin()
+			if sum == nil && err == nil {
+				for _, v := range r.volumes {
+					sum = append(sum, v)
+				}
+			}
+			return sum, err
+		})
 		return s, nil
 	}
 	for _, f := range c.local.Faces() {
@@ -113,6 +119,8 @@ func (s *integrated) prepare() {
 			s.layers = append(s.layers, src)
 		case *cubature.Volume:
 			s.volumes = append(s.volumes, src)
+		case field.Sum:
+			s.volumes = append(s.volumes, src...)
 		}
 	}
 	if len(s.layers) > 0 {
