@@ -2,16 +2,21 @@ package force
 
 import (
 	"context"
+	"flag"
 	"math/rand/v2"
 	"testing"
 
 	"gonum.org/v1/gonum/spatial/r3"
 )
 
+var checks = flag.Int("checks", 5, "how many random pairs of bodies are compared by virtual work and stress")
+
 // TestCheck compares three ways that share no integral in random pairs that do not touch.
+//
+//	go test ./field/force -run TestCheck -checks 1000 -timeout 2h
 func TestCheck(t *testing.T) {
 	open, work := 0, 0
-	for seed := uint64(2000); open < 5; seed++ {
+	for seed := uint64(2000); open < *checks; seed++ {
 		d := draw{rand.New(rand.NewPCG(seed, 7))}
 		c, err := d.pair()
 		if err != nil {
@@ -41,7 +46,7 @@ func TestCheck(t *testing.T) {
 			t.Logf("%s: |F| %.3g direct %.2g, work %.2g, stress %.2g; spread %.2g", c.name, f, got.Direct.Error.Force/f, got.Work.ForceError/f, got.Stress.ForceError/f, got.Spread.Force/f)
 		}
 	}
-	if work < 4 {
-		t.Errorf("virtual work was good to 1e-5 in %d of %d pairs, want 4", work, open)
+	if work < *checks*4/5 {
+		t.Errorf("virtual work was good to 1e-5 in %d of %d pairs, want four of five", work, open)
 	}
 }

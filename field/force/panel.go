@@ -87,7 +87,7 @@ func (w *work) measure(p *panel, rho float64) {
 }
 
 // climb integrates by the next rule and bounds its error. Away from edges of the other part rules converge like a power of their
-// number of points, so that the next difference is smaller than the last by their ratio, of which the root is taken. Near edges
+// number of points, so that the next difference is smaller than the last by their ratio, of which twice the root is taken. Near edges
 // two rules may agree by chance, so that the difference before counts too.
 func (w *work) climb(p *panel, rho float64) {
 	coarse, last := p.value, p.step
@@ -103,7 +103,7 @@ func (w *work) climb(p *panel, rho float64) {
 		case p.near:
 			p.miss[k] = max(2*d, 0.2*last[k])
 		case fall < 0.1: // false for the first two rules
-			p.miss[k] = d * max(math.Sqrt(fall), 0.03)
+			p.miss[k] = d * max(2*math.Sqrt(fall), 0.05)
 		}
 	}
 }
