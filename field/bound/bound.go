@@ -129,6 +129,11 @@ func (c *Charge) Polarization(x pair.Vec) r3.Vec {
 // Density returns sigma of a layer at a point of its face with outward normal n, in the outer frame.
 func (c *Charge) Density(x, n r3.Vec) float64 { return r3.Dot(c.Polarization(pair.VecOf(x)), n) }
 
+// VolumeDensity returns rho at a point of the outer frame, continued outside the body.
+func (c *Charge) VolumeDensity(x r3.Vec) float64 {
+	return -c.p.Divergence(c.pose.ToLocal(pair.VecOf(x)).Value()) + 0 // no negative zero
+}
+
 // Field returns g at x.
 func (c *Charge) Field(x r3.Vec) r3.Vec { return c.source.Field(x) }
 
@@ -150,22 +155,6 @@ func (c *Charge) Total() float64 {
 		q, size = q+v.Charge, size+math.Abs(v.Charge)
 	}
 	return clean(q, size)
-}
-
-// Expand returns the multipole expansion about a centre, up to an order between 1 and 40, from the dipole density.
-func (c *Charge) Expand(centre r3.Vec, order int) *field.Moments {
-	order = min(max(order, 1), 40)
-	m := field.NewMoments(centre, reach(c.body.Bounds(), centre), order)
-	for _, v := range c.Volumes {
-		v.Cell.Nodes(order/2+2, func(x r3.Vec, w float64) { m.AddDipole(x, r3.Scale(w, c.Polarization(pair.VecOf(x)))) })
-	}
-	return m
-}
-
-// reach returns the greatest distance of the box from a point.
-func reach(b r3.Box, c r3.Vec) float64 {
-	far := func(lo, hi, c float64) float64 { return max(math.Abs(lo-c), math.Abs(hi-c)) }
-	return r3.Norm(r3.Vec{X: far(b.Min.X, b.Max.X, c.X), Y: far(b.Min.Y, b.Max.Y, c.Y), Z: far(b.Min.Z, b.Max.Z, c.Z)})
 }
 
 // clean returns exactly zero for what only rounding has left of a sum whose terms have the magnitude size.
