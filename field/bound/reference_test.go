@@ -17,7 +17,7 @@ import (
 func integratedCase(c *refcase.Case) (quadrature, patches bool) {
 	kind := c.Polarization.Kind
 	switch c.Body.Type {
-	case "box": // polynomials are exact: integers come as their own kinds
+	case "box":
 		patches = kind == "radial_s2" || kind == "radial_unit" || kind == "ball_r2"
 		quadrature = kind != "uniform" && kind != "affine" && !patches
 	case "tube_sector", "truncated_cone", "torus":
