@@ -7,6 +7,7 @@ import (
 	"os"
 	"path/filepath"
 	"sort"
+	"strings"
 	"testing"
 
 	"example.com/boundpole/field"
@@ -246,6 +247,9 @@ func prismOf(c *refcase.Case) geom.Body {
 
 func casesOf(t *testing.T, file string) map[string]*refcase.Case {
 	t.Helper()
+	if strings.HasPrefix(file, "triples/") {
+		file += ".gz" // packed
+	}
 	raw, err := os.ReadFile(filepath.Join("../../verify/testdata", file))
 	if err != nil {
 		t.Fatal(err)

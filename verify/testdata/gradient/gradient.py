@@ -16,6 +16,7 @@ result; it is accepted if
 and else tried again with 130 and 220 digits. The norm is never taken below 1e-6 of p_max/size times (size/R)^4. Points and dipoles:
 exact derivatives in multiprecision, held against the same differences.
 """
+import gzip
 import json
 import math
 import os
@@ -29,6 +30,7 @@ sys.path[:0] = [os.path.join(HERE, "../more"), os.path.join(HERE, "../hard")]
 import gen2  # noqa: F401  (completes gen.VALUE)
 import check2
 import gen
+import sampler
 from gen import add, dot, fr, mul, sub, vec
 from num import Fr, mp, mpf
 
@@ -37,7 +39,8 @@ ORDER = ((0, 0), (1, 1), (2, 2), (0, 1), (0, 2), (1, 2))    # xx yy zz xy xz yz
 
 
 def data(name):
-    with open(os.path.join(HERE, "..", name)) as f:
+    path = os.path.join(HERE, "..", name)
+    with gzip.open(path + ".gz") if name.startswith("triples/") else open(path) as f:
         return json.load(f)
 
 
