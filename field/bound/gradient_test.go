@@ -159,8 +159,8 @@ func TestGradientReference(t *testing.T) {
 		if c == nil {
 			t.Fatalf("%s holds no case %s", row.File, row.ID)
 		}
-		if _, patches := integratedCase(c); patches { // milliseconds to a second a point: a sample
-			if patched++; testing.Short() || patched%3 != 0 {
+		if _, patches := integratedCase(c); patches { // seconds a point: a sample
+			if patched++; testing.Short() || patched%6 != 0 {
 				continue
 			}
 			row.Index = row.Index[:1]
