@@ -4,6 +4,9 @@
 //
 //	Vm = phi,   H = g,   B = mu0 (H + M)
 //
+// Free currents are parts too (Loop, Wire, Solenoid). The other picture of the same fields is Amperian: bound currents, with the
+// vector potential A in T m; FluxTube is the tube of circulating flux, with A and no B around it.
+//
 // North is +sigma. Lengths are in metres unless a Model says otherwise, frames right-handed, normals outward. M is rigid: no recoil, no iron,
 // no saturation, no eddy currents. On a face the mean of both sides is given, or the side asked for. Models are immutable
 // once built and safe for concurrent use.
@@ -97,10 +100,7 @@ func (m Model) Readings(at *field.Points, side field.Side) []Reading {
 func (m Model) ReadingsTowards(at *field.Points, side field.Side, ways []r3.Vec) []Reading {
 	s := m.Parts.Sample(at, side, ways, field.WantPhi|field.WantG|field.WantErr, r3.Scale(1/Mu0, m.Applied))
 	out := make([]Reading, at.Len())
-	unit := m.Unit
-	if unit == 0 {
-		unit = 1
-	}
+	unit := metres(m.Unit)
 	for i := range out {
 		v := s.Values.At(i)
 		out[i] = Reading{

@@ -9,10 +9,8 @@ import (
 	"sync"
 
 	"example.com/boundpole/field"
-	"example.com/boundpole/field/element"
-	"example.com/boundpole/geom"
 	"example.com/boundpole/verify/refcase"
-	"gonum.org/v1/gonum/spatial/r3"
+	"example.com/boundpole/verify/refsource"
 )
 
 //go:embed testdata/dev.json
@@ -60,7 +58,9 @@ func referenceValues() []trial {
 
 // worstPoint returns the greatest ratio of error to tolerance over the points of a case.
 func worstPoint(l *lab, c *refcase.Case) result {
-	src, sheet := referenceSource(l, c)
+	src, err := refsource.Of(c)
+	l.note(err)
+	sheet := c.Polarization.Kind == "sheet_linear"
 	worst := 0.0
 	for k := range c.Points {
 		ratio := math.Inf(1)
@@ -84,73 +84,4 @@ func worstPoint(l *lab, c *refcase.Case) result {
 
 func frobenius(g [6]float64) float64 {
 	return math.Sqrt(g[0]*g[0] + g[1]*g[1] + g[2]*g[2] + 2*(g[3]*g[3]+g[4]*g[4]+g[5]*g[5]))
-}
-
-// referenceSource returns the source of a case.
-func referenceSource(l *lab, c *refcase.Case) (src field.Source, sheet bool) {
-	pose, err := c.Pose()
-	l.note(err)
-	b, q := &c.Body, &c.Polarization
-	var body geom.Body
-	switch b.Type {
-	case "polygon":
-		shape := geom.Polygon{Vertices: vectors(b.Vertices)}
-		l.note(shape.Check())
-		return element.NewPolygon(shape, q.A, refcase.Vec(q.B)), true
-	case "disc":
-		return field.Posed{Source: l.disc(b.Radius, 0, q.A), Pose: pose}, true
-	case "annulus":
-		return field.Posed{Source: l.annulus(b.R1, b.R2, 0, q.A), Pose: pose}, true
-	case "box":
-		body = geom.Box{Size: r3.Scale(2, refcase.Vec(*b.Half))}
-	case "polyhedron":
-		body = geom.Polyhedron{Vertices: vectors(b.Vertices), Loops: b.Faces}
-	case "cylinder":
-		body = geom.Cylinder{Radius: b.Radius, Height: 2 * b.HalfLen}
-	case "tube":
-		body = geom.Tube{Inner: b.R1, Outer: b.R2, Height: 2 * b.HalfLen}
-	case "sphere":
-		body = geom.Sphere{Radius: b.Radius}
-	case "spherical_shell":
-		body = geom.HollowSphere{Inner: b.R1, Outer: b.R2}
-	case "ellipsoid":
-		body = geom.Ellipsoid{SemiAxes: refcase.Vec(*b.SemiAxes)}
-	}
-	p, err := localPolarization(c, pose)
-	l.note(err)
-	return l.charge(geom.At(body, pose), p), false
-}
-
-func vectors(list [][3]float64) []r3.Vec {
-	out := make([]r3.Vec, len(list))
-	for i, v := range list {
-		out[i] = refcase.Vec(v)
-	}
-	return out
-}
-
-// localPolarization turns the polarization of a case into the body's own frame.
-func localPolarization(c *refcase.Case, pose geom.Pose) (field.Affine, error) {
-	var p field.Affine
-	q := &c.Polarization
-	switch q.Kind {
-	case "uniform":
-		p.Value = pose.VectorToLocal(refcase.Vec(q.P))
-	case "axial_z":
-		p.Gradient[2][2] = q.C
-	case "affine":
-		g, err := q.Gradient()
-		if err != nil {
-			return p, err
-		}
-		global := field.Affine{Value: refcase.Vec(q.P0), Gradient: g}
-		p.Value = pose.VectorToLocal(global.At(pose.Origin().Value()))
-		m := pose.Matrix()
-		for i := range 9 {
-			for j := range 9 {
-				p.Gradient[i/3][i%3] += m[j/3][i/3] * g[j/3][j%3] * m[j%3][i%3]
-			}
-		}
-	}
-	return p, nil
 }

@@ -16,6 +16,7 @@ import (
 type Options struct {
 	Family  string // only this family; empty: all
 	Workers int    // cases evaluated at a time; 0: GOMAXPROCS. The result does not depend on it
+	All     bool   // every stored triple of the estimates, a minute of work; false: a fixed sample of the slow ones
 	// Alter replaces every source before it is evaluated, to see which cases notice an error. nil: none. Densities and
 	// charges that are read off a body without evaluating its field, and B and D in a body, are not altered.
 	Alter func(field.Source) field.Source
@@ -24,7 +25,7 @@ type Options struct {
 // Family is a group of cases about one subject.
 type Family struct {
 	Name  string
-	About string // what is compared, in a sentence
+	About string // what is compared, in a sentence or two, each on a line
 
 	trials func() []trial
 }
@@ -40,7 +41,9 @@ type trial struct {
 }
 
 // Families returns the families in the order of Run.
-func Families() []Family {
+func Families() []Family { return families(&Options{}) }
+
+func families(o *Options) []Family {
 	return []Family{
 		{"thin rod", "A rod polarized along its axis acts like its two charged end discs, from afar like two poles.", thinRod},
 		{"slanted bar", "The charge density of a slanted end is M cos(tilt); the pole strength M A does not depend on the tilt.", slantedBar},
@@ -59,9 +62,14 @@ func Families() []Family {
 		{"energies", "Self energies and pair energies, integrated from the library's potential.", energies},
 		{"forces", "Forces between magnets, integrated from the library's field over the charge of the second.", forces},
 		{"flux tubes", "A straight tube of circulating flux is a polarized cylinder: A = g, plus p inside.", fluxTubes},
+		{"currents", "The Amperian picture against the poles, free currents on their axes, and what loops link: B and A.", currents},
 		{"worked examples", "Jobs of the trade in SI units.", workedExamples},
 		{"reference values", "Worst point of each reference body, in units of the contract 1e-12.", referenceValues},
+		{estimateFamily, "The library's own bounds on its error, against random triples of body, polarization and point in hard places.\n" +
+			"true: how many bound the error; over: median of estimate/max(|error|, u |value|); worst: error over what the contract allows.",
+			func() []trial { return estimates(o) }},
 		{"independent methods", "The same field computed in another way.", independentMethods},
+		{"integrators", "Integration over faces and cells against textbook forms and elements; orders of convergence against theory.", integrators},
 		{"identities", "What every bound charge obeys, of every kind of body.", identities},
 		{"laws", "Laws of the field, checked on one source of each kind; the value is the number of violations.", laws},
 		{"same bits", "Results that must agree in every bit; the value is the number of values that do not.", sameBits},
@@ -78,7 +86,7 @@ func Run(ctx context.Context, o *Options) ([]Case, error) {
 	}
 	var cases []Case
 	var trials []trial
-	for _, f := range Families() {
+	for _, f := range families(o) {
 		if o.Family != "" && o.Family != f.Name {
 			continue
 		}

@@ -3,6 +3,7 @@ package verify_test
 import (
 	"context"
 	"errors"
+	"fmt"
 	"math"
 	"runtime"
 	"strings"
@@ -32,6 +33,7 @@ func TestSuite(t *testing.T) {
 			t.Errorf("ID %q is used twice or has blanks or commas", c.ID)
 		}
 		seen[c.ID] = true
+		enoughTriples(t, &c)
 		if c.Source.String() == "" || c.Reason == "" || c.Inputs == "" || c.Kind == "" || c.Name == "" {
 			t.Errorf("%s: source %q, reason %q, inputs %q, kind %q: one is missing", c.ID, c.Source, c.Reason, c.Inputs, c.Kind)
 		}
@@ -191,6 +193,53 @@ func TestWrongLawsFail(t *testing.T) {
 	}
 	if flux < 8 {
 		t.Errorf("%d cases of closed flux, want at least 8", flux)
+	}
+}
+
+// TestWrongEstimatesFail shifts the potential by far more than its estimate, and makes the estimate of the field too careful:
+// of every family of triples the estimates of phi are then false, those of g useless, and the error breaks the contract.
+func TestWrongEstimatesFail(t *testing.T) {
+	if testing.Short() {
+		t.Skip("takes seconds; run without -short")
+	}
+	found := map[string]int{}
+	for _, c := range spoiled(t, "estimates", func(src field.Source) field.Source {
+		return wrong{src, func(v *field.Values, at *field.Points) {
+			for i := range v.Phi {
+				v.Phi[i] *= 1 + 1e-8
+				v.ErrG[i] *= 1e4
+			}
+		}}
+	}) {
+		_, column, _ := c.Cell()
+		if column == "phi true" || column == "g over" || column == "worst" {
+			found[column]++
+			if c.OK {
+				t.Errorf("%s did not notice: got %v", c.ID, c.Got)
+			}
+		}
+	}
+	for _, column := range []string{"phi true", "g over", "worst"} {
+		if found[column] < 24 {
+			t.Errorf("%d cases named %s, want at least 24", found[column], column)
+		}
+	}
+}
+
+// enoughTriples demands the triples that the claims on estimates rest on: 1500 of each closed form, 300 of each integral.
+func enoughTriples(t *testing.T, c *verify.Case) {
+	t.Helper()
+	row, column, ok := c.Cell()
+	if !ok || column != "worst" {
+		return
+	}
+	least := 1500
+	if strings.HasSuffix(c.Reason, "1e-10") {
+		least = 300
+	}
+	var some, all int
+	if _, err := fmt.Sscanf(c.Source.String(), "%d of %d triples", &some, &all); err != nil || all < least {
+		t.Errorf("%s: %q, want at least %d triples", row, c.Source, least)
 	}
 }
 

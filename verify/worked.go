@@ -23,8 +23,10 @@ func magnetOf(l *lab, body geom.Body, j r3.Vec) magnet.Model {
 // outsideB returns B in tesla at a point outside all magnets, from H.
 func outsideB(l *lab, m magnet.Model, x r3.Vec) r3.Vec { return r3.Scale(magnet.Mu0, l.g(m, x)) }
 
-// workedExamples returns jobs with magnets, then with electrets and dielectrics.
-func workedExamples() []trial { return append(magnetJobs(), electricJobs()...) }
+// workedExamples returns jobs with magnets, with electrets and dielectrics, and with forces.
+func workedExamples() []trial {
+	return append(append(magnetJobs(), electricJobs()...), workedForces()...)
+}
 
 func magnetJobs() []trial {
 	solenoid := published("Jackson1999", "prob. 5.19")

@@ -74,7 +74,8 @@ func (r *runner) request(q *scenefile.Request, charges []solve.PartCharge) error
 		r.results.Open(q)
 	}
 	var checks []solve.Check
-	if q.Kind == "charges" {
+	switch q.Kind {
+	case "charges":
 		for i := range q.Hand {
 			checks = append(checks, r.setup.CheckCharge(&q.Hand[i], charges))
 		}
@@ -83,11 +84,30 @@ func (r *runner) request(q *scenefile.Request, charges []solve.PartCharge) error
 				return err
 			}
 		}
-	} else {
-		var err error
-		if checks, err = r.points(q); err != nil {
+	case "travel":
+		if err := r.travel(q); err != nil {
 			return err
 		}
+	case "hand_over":
+		if err := r.handOver(q); err != nil {
+			return err
+		}
+	case "reading", "linkage", "force", "energy", "reach":
+		a, err := r.answer(q)
+		if err != nil {
+			return err
+		}
+		for i := range q.Hand {
+			checks = append(checks, solve.CheckAnswer(&q.Hand[i], a))
+		}
+		r.report.Answer(q, a)
+	default:
+		var err error
+		see, end := r.report.Points(q)
+		if checks, err = r.points(q, see); err != nil {
+			return err
+		}
+		end()
 	}
 	for _, c := range checks {
 		r.missed = r.missed || !c.OK
@@ -99,8 +119,22 @@ func (r *runner) request(q *scenefile.Request, charges []solve.PartCharge) error
 	return r.results.Close(checks)
 }
 
-// points answers a request at points: report, records and table take every point as it comes.
-func (r *runner) points(q *scenefile.Request) ([]solve.Check, error) {
+// answer answers a request that is not for points.
+func (r *runner) answer(q *scenefile.Request) (*solve.Answer, error) {
+	a, err := r.setup.Answer(r.ctx, q)
+	if err != nil {
+		return nil, err
+	}
+	r.missed = r.missed || a.Missed
+	r.watch.Reach = r.watch.Reach || q.Kind == "reach"
+	if r.results != nil {
+		r.results.Answer(a)
+	}
+	return a, nil
+}
+
+// points answers a request at points: see, records and table take every point as it comes.
+func (r *runner) points(q *scenefile.Request, see func(i int, rec *solve.Record)) ([]solve.Check, error) {
 	var table *output.Table
 	if r.folder != nil && q.CSV != "" {
 		file, err := r.folder.Create(q.CSV)
@@ -114,7 +148,6 @@ func (r *runner) points(q *scenefile.Request) ([]solve.Check, error) {
 		r.results.OpenRecords()
 	}
 	checks := make([]solve.Check, len(q.Hand))
-	see, end := r.report.Points(q)
 	err := r.setup.Records(r.ctx, q, func(i int, rec *solve.Record) error {
 		r.watch.See(rec, solve.SideOf(q.Side))
 		r.missed = r.missed || len(rec.Missed) > 0
@@ -137,7 +170,6 @@ func (r *runner) points(q *scenefile.Request) ([]solve.Check, error) {
 	if err != nil {
 		return nil, err
 	}
-	end()
 	if records {
 		r.results.CloseRecords()
 	}

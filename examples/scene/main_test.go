@@ -32,6 +32,7 @@ type results struct {
 			VolumeCharge float64 `json:"volume_charge"`
 			Moment       []float64
 		}
+		Force   []float64
 		Records []record
 		Checks  []struct {
 			Quantity string
@@ -95,11 +96,11 @@ func near(t *testing.T, what string, got, want, rel float64) {
 // digit that is given there.
 func TestDefaultScene(t *testing.T) {
 	status, report, r := solved(t, "")
-	if status != done || !strings.Contains(report, "All hand checks hold (23).") {
+	if status != done || !strings.Contains(report, "All hand checks hold (25).") {
 		t.Errorf("status %d, want %d and all hand checks held:\n%s", status, done, report)
 	}
 	names := []string{"charges", "Hall plate", "magnet face, air side", "magnet face, metal side", "magnet centre and rim",
-		"film and plate", "one metre above", "lid travel", "section"}
+		"film and plate", "one metre above", "lid travel", "section", "pull of the trim bar", "where 0.5 mT ends"}
 	for i, a := range r.Answers {
 		if a.Name != names[i] && a.Request != names[i] {
 			t.Errorf("answer %d is %q %q, want %q", i, a.Request, a.Name, names[i])
@@ -126,6 +127,8 @@ func TestDefaultScene(t *testing.T) {
 	near(t, "V over the film", *r.Answers[5].Records[1].V, 50.033, 1e-5)
 	near(t, "E over the film", r.Answers[5].Records[1].E[2], 16.012e3, 5e-5)
 	near(t, "B one metre above", r.Answers[6].Records[0].B[2], 23.03e-9, 5e-4)
+	near(t, "force of the trim bar, z", r.Answers[9].Force[2], 10.69e-3, 5e-4)
+	near(t, "force of the trim bar, x", r.Answers[9].Force[0], 2.14e-3, 2.5e-3)
 	if n, m := len(r.Answers[7].Records), len(r.Answers[8].Records); n != 28 || m != 121*41 {
 		t.Errorf("%d and %d records on line and plane, want 28 and %d", n, m, 121*41)
 	}

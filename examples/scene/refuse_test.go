@@ -75,7 +75,6 @@ var refusals = []struct {
 		"/parts/0", []string{"not plane"}},
 	{"inert body that is none", `{"parts": [{"name": "a", "shape": "prism", "height": 1, "base": [[0,0],[1,1],[1,0],[0,1]]}]}`, "/parts/0", []string{"cross"}},
 	{"later shape", part(`"shape": "mesh", "file": "a.stl"`), "/parts/0/shape", []string{"not supported yet"}},
-	{"later request", ask(`{"reach": {"flux_density": 5e-4}}`), "/wanted/0/reach", []string{"not supported yet"}},
 	{"missing points file", ask(`{"points_file": "nope.csv"}`), "/wanted/0/points_file", []string{"nope.csv"}},
 	{"points file with decimal commas", ask(`{"points_file": "comma.csv"}`), "/wanted/0/points_file", []string{"comma.csv:1", "decimal comma"}},
 	{"binary points file", ask(`{"points_file": "binary.csv"}`), "/wanted/0/points_file", []string{"binary.csv:1"}},

@@ -29,14 +29,15 @@ type Charge struct {
 	Moment     r3.Vec     // integral of p over the volume: the dipole moment
 	Identities []Identity // what must vanish, and how far it does
 
-	body   geom.Body    // as given, perhaps placed
-	inner  geom.Locator // tells points of the body's own frame
-	place  geom.Locator // tells points of the outer frame
-	local  geom.Body    // in its own frame
-	pose   geom.Pose
-	p      field.Polarization // in the body's own frame
-	own    field.Source       // in the body's own frame
-	source field.Source       // in the outer frame
+	body     geom.Body    // as given, perhaps placed
+	inner    geom.Locator // tells points of the body's own frame
+	place    geom.Locator // tells points of the outer frame
+	local    geom.Body    // in its own frame
+	pose     geom.Pose
+	p        field.Polarization // in the body's own frame
+	resolved *resolved          // of a power law
+	own      field.Source       // in the body's own frame
+	source   field.Source       // in the outer frame
 }
 
 // Layer is what one face carries.
@@ -154,22 +155,6 @@ func (c *Charge) Total() float64 {
 		q, size = q+v.Charge, size+math.Abs(v.Charge)
 	}
 	return clean(q, size)
-}
-
-// Expand returns the multipole expansion about a centre, up to an order between 1 and 40, from the dipole density.
-func (c *Charge) Expand(centre r3.Vec, order int) *field.Moments {
-	order = min(max(order, 1), 40)
-	m := field.NewMoments(centre, reach(c.body.Bounds(), centre), order)
-	for _, v := range c.Volumes {
-		v.Cell.Nodes(order/2+2, func(x r3.Vec, w float64) { m.AddDipole(x, r3.Scale(w, c.Polarization(pair.VecOf(x)))) })
-	}
-	return m
-}
-
-// reach returns the greatest distance of the box from a point.
-func reach(b r3.Box, c r3.Vec) float64 {
-	far := func(lo, hi, c float64) float64 { return max(math.Abs(lo-c), math.Abs(hi-c)) }
-	return r3.Norm(r3.Vec{X: far(b.Min.X, b.Max.X, c.X), Y: far(b.Min.Y, b.Max.Y, c.Y), Z: far(b.Min.Z, b.Max.Z, c.Z)})
 }
 
 // clean returns exactly zero for what only rounding has left of a sum whose terms have the magnitude size.

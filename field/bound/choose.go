@@ -61,6 +61,15 @@ func wholeBody(body geom.Body, p field.Polarization) (field.Source, error) {
 		if l.uniform {
 			return element.NewCone(b, l.affine.Value)
 		}
+		if l.axial && l.affine.At(r3.Vec{}) == (r3.Vec{}) { // in plates it is the better one
+			return element.NewAxialPowerCone(b, l.affine.Gradient[2][2], 1)
+		}
+		if l.is {
+			return element.NewAffineCone(b, l.affine)
+		}
+		if q, ok := p.(field.AxialPower); ok && q.Power <= 40 { // what its rules resolve
+			return element.NewAxialPowerCone(b, q.Coefficient, q.Power)
+		}
 	case geom.Torus:
 		if l.uniform {
 			return element.NewTorus(b, l.affine.Value)
@@ -76,8 +85,8 @@ func wholeBody(body geom.Body, p field.Polarization) (field.Source, error) {
 		}
 		return sphereForm(b.Inner, b.Outer, p)
 	case geom.Ellipsoid:
-		if l.uniform {
-			return element.NewEllipsoid(b, l.affine.Value)
+		if l.is {
+			return element.NewAffineEllipsoid(b, l.affine)
 		}
 	}
 	return nil, nil

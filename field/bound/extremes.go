@@ -14,6 +14,9 @@ type span struct{ lo, hi float64 }
 func newSpan() span { return span{math.Inf(1), math.Inf(-1)} }
 
 func (s *span) see(v float64) {
+	if math.IsNaN(v) { // on the axis of a law that has no direction there
+		return
+	}
 	v += 0 // no negative zero
 	s.lo, s.hi = min(s.lo, v), max(s.hi, v)
 }

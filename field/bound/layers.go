@@ -18,22 +18,24 @@ func (c *Charge) nodes() int {
 }
 
 // fill computes layers and volumes, then checks the identities.
-func (c *Charge) fill() error {
+func (c *Charge) fill() (err error) {
+	if c.resolved, err = c.resolve(); err != nil {
+		return err
+	}
 	var sums identitySums
 	outer := c.body.Faces()
 	for i, f := range c.local.Faces() {
-		c.Layers = append(c.Layers, c.layer(f, outer[i], &sums))
+		c.Layers = append(c.Layers, c.layer(i, f, outer[i], &sums))
 	}
 	cells := c.body.Cells()
 	for i, cell := range c.local.Cells() {
-		c.Volumes = append(c.Volumes, c.volume(cell, cells[i], &sums))
+		c.Volumes = append(c.Volumes, c.volume(i, cell, cells[i], &sums))
 	}
 	moment := sums.moment
 	if a, ok := c.p.(field.Affine); ok {
 		moment = r3.Scale(c.local.Volume(), a.At(c.local.Centroid()))
 	}
 	c.Moment = c.pose.VectorToOuter(moment)
-	var err error
 	if c.Identities, err = sums.check(c, c.coarseSums()); err != nil {
 		return err
 	}
@@ -51,24 +53,29 @@ func (c *Charge) coarseSums() *identitySums {
 	for _, f := range c.local.Faces() {
 		f.Surface.Nodes(n, func(x, normal r3.Vec, w float64) {
 			normal = r3.Scale(f.Sign(), normal)
-			s.addFace(x, normal, w, r3.Dot(c.p.At(x), normal))
+			s.addFace(x, normal, w, c.sigma(x, normal))
 		})
 	}
 	for _, cell := range c.local.Cells() {
-		cell.Nodes(n, func(x r3.Vec, w float64) { s.addCell(x, w, -c.p.Divergence(x), c.p.At(x)) })
+		cell.Nodes(n, func(x r3.Vec, w float64) {
+			if rho := c.rho(x); rho-rho == 0 { // else on the singular line itself
+				s.addCell(x, w, rho, c.p.At(x))
+			}
+		})
 	}
 	return s
 }
 
-// layer integrates sigma over one face of the body in its own frame.
-func (c *Charge) layer(f, outer geom.Face, sums *identitySums) Layer {
+// layer integrates sigma over face number i of the body in its own frame.
+func (c *Charge) layer(i int, f, outer geom.Face, sums *identitySums) Layer {
 	l := Layer{Face: outer, Area: f.Surface.Area()}
 	var q, size float64
-	s := f.Sign()
-	f.Surface.Nodes(c.nodes(), func(x, n r3.Vec, w float64) {
-		n = r3.Scale(s, n)
+	c.faceNodes(i, f, c.nodes(), func(x, n r3.Vec, w float64) {
 		p := c.p.At(x)
 		sigma := r3.Dot(p, n)
+		if sigma-sigma != 0 { // on the singular line of a face that carries nothing
+			sigma, p = 0, r3.Vec{}
+		}
 		q += w * sigma
 		size += w * (math.Abs(sigma) + math.Abs(p.X*n.X) + math.Abs(p.Y*n.Y) + math.Abs(p.Z*n.Z))
 		sums.addFace(x, n, w, sigma)
@@ -85,15 +92,18 @@ func (c *Charge) layer(f, outer geom.Face, sums *identitySums) Layer {
 	return l
 }
 
-// volume integrates rho over one cell of the body in its own frame.
-func (c *Charge) volume(cell, outer geom.Cell, sums *identitySums) Volume {
+// volume integrates rho over cell number i of the body in its own frame.
+func (c *Charge) volume(i int, cell, outer geom.Cell, sums *identitySums) Volume {
 	v := Volume{Cell: outer, Size: cell.Volume()}
 	var q, size float64
-	cell.Nodes(c.nodes(), func(x r3.Vec, w float64) {
-		rho := -c.p.Divergence(x) + 0 // no negative zero
+	c.cellNodes(i, cell, c.nodes(), func(x r3.Vec, w float64) {
+		rho := c.rho(x)
 		q, size = q+w*rho, size+math.Abs(w*rho)
 		sums.addCell(x, w, rho, c.p.At(x))
 	})
+	if c.resolved != nil && c.resolved.whole && len(c.local.Cells()) > 1 { // then q is that of all cells
+		q, size = c.cellCharge(cell, q, size)
+	}
 	v.Charge = clean(q, size)
 	v.Min, v.Max = c.extremesInside(cell)
 	if v.Min == v.Max {

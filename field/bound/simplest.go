@@ -128,3 +128,48 @@ func degree(p field.Polarization) (n int, ok bool) {
 	}
 	return 0, false
 }
+
+// polynomialOf returns a polarization as a polynomial; ok is false if it is none.
+func polynomialOf(p field.Polarization) (q field.Polynomial, ok bool) {
+	switch p := p.(type) {
+	case field.Polynomial:
+		return p, true
+	case field.AxialPower:
+		return field.Polynomial{{Component: 2, Coefficient: p.Coefficient, Powers: [3]int{0, 0, p.Power}}}, true
+	case field.RadialPower:
+		return oddPower(p.Coefficient, p.Power, 2)
+	case field.CentralPower:
+		return oddPower(p.Coefficient, p.Power, 3)
+	}
+	return nil, false
+}
+
+// oddPower returns c r^n times the unit vector along r, r the distance in the first axes coordinates: a polynomial for odd n.
+func oddPower(c, n float64, axes int) (q field.Polynomial, ok bool) {
+	const most = 33
+	if !(n >= 1 && n <= most) || math.Mod(n, 2) != 1 {
+		return nil, false
+	}
+	half := int(n) / 2
+	for i := range half + 1 {
+		for j := range half + 1 - i {
+			k := half - i - j
+			if axes == 2 && k > 0 {
+				continue
+			}
+			ways := c
+			for m := range j { // half!/(i! j! k!) = C(half, i) C(half - i, j)
+				ways = ways * float64(half-i-m) / float64(m+1)
+			}
+			for m := range i {
+				ways = ways * float64(half-m) / float64(m+1)
+			}
+			for a := range axes {
+				powers := [3]int{2 * i, 2 * j, 2 * k}
+				powers[a]++
+				q = append(q, field.Term{Component: a, Coefficient: ways, Powers: powers})
+			}
+		}
+	}
+	return q, true
+}

@@ -1,5 +1,5 @@
 // Package closedform is a catalogue of textbook closed forms for the field of
-// charge, dipoles and polarized bodies. It is the yardstick against which
+// charge, dipoles, polarized bodies and currents. It is the yardstick against which
 // numeric kernels are checked, so it shares no code with them: every function
 // is a few lines of elementary algebra, written after the printed formula and
 // rearranged only where that formula loses digits.

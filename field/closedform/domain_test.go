@@ -30,6 +30,7 @@ var lengths = map[string][]int{
 	"CoatedSpherePolarizability": {2, 3}, "CoatedSphereCoreRatio": {2, 3},
 	"SphericalShieldRatio": {0, 1, 2}, "SphericalShieldMoment": {0, 1, 2}, "CylindricalShieldRatio": {0, 1, 2},
 	"HalbachField": {1, 2}, "HalbachCentreField": {1, 2, 3}, "HalbachQuadrupoleGradient": {1, 2}, "HalbachArrayField": {1, 2},
+	"LoopAxisField": {1}, "SegmentField": {1, 2}, "CoaxialLoopInductance": {0, 1},
 	"ElectretPotential": {1, 2}, "ElectretGapField": {1, 2, 3},
 }
 

@@ -26,6 +26,7 @@ func TestScale(t *testing.T) {
 		"BoxMagnetometricFactor": {0, 0}, "BoxCentreFactor": {0, 0}, "BoxCentrePotential": {1, 2}, "BoxAxisInduction": {1, 0},
 		"RectangleAxisPotential": {1, 1}, "RectangleAxisField": {1, 0}, "RectangleSelfEnergy": {1, 3}, "ImageChargeForce": {2, -2},
 		"SphericalShieldRatio": {1, 0}, "CylindricalShieldRatio": {1, 0}, "HalbachCentreField": {1, 0}, "HalbachArrayField": {1, 0}, "ElectretGapField": {1, 0},
+		"LoopAxisField": {1, -1}, "SegmentField": {1, -1}, "CoaxialLoopInductance": {0, 1},
 	} {
 		for _, e := range []int{230, -230} {
 			x := append([]float64(nil), good[name]...)

@@ -18,7 +18,7 @@ type cell struct {
 	radius  float64
 	scale   float64 // greatest coordinate
 	charge  float64 // integral of |rho|
-	peak    float64 // greatest |rho|
+	peak    float64 // greatest |rho|, or eight times the mean if that is less: it may be infinite at an edge
 	loose   float64 // charge that is not resolved
 	least   int     // place in solidLadder of the smallest rule that integrates charge and moments
 	faces   [6]panel
@@ -33,34 +33,41 @@ var solidLadder = [...]int{4, 6, 8, 10, 12, 14, 16, 20, 24, 28, 32}
 // solidMeasured is the place in solidLadder of the rule that measures a cell.
 const solidMeasured = 5
 
-// at returns place and charge per volume of the parameter cube.
-func (c *cell) at(p [3]float64) (x r3.Vec, q float64) {
-	x, xu, xv, xw := c.block.At(p[0], p[1], p[2])
-	det := r3.Dot(r3.Cross(xu, xv), xw)
-	if det == 0 {
-		return x, 0
+// rule visits the points of the product rule with n points a direction, with their pieces of volume.
+func (c *cell) rule(n int, visit func(i int, x r3.Vec, volume float64)) {
+	g := legendre(n)
+	part := (c.hi[0] - c.lo[0]) * (c.hi[1] - c.lo[1]) * (c.hi[2] - c.lo[2]) / 8
+	for i := range g.X {
+		for j := range g.X {
+			for l := range g.X {
+				x, xu, xv, xw := c.block.At(between(c.lo[0], c.hi[0], g.X[i]), between(c.lo[1], c.hi[1], g.X[j]), between(c.lo[2], c.hi[2], g.X[l]))
+				visit((i*n+j)*n+l, x, r3.Dot(r3.Cross(xu, xv), xw)*g.W[i]*g.W[j]*g.W[l]*part)
+			}
+		}
 	}
-	return x, c.density(x) * det
 }
 
 // nodes returns the charges of the rule solidLadder[k].
 func (c *cell) nodes(k int) *nodeSet {
 	c.once[k].Do(func() {
 		n := solidLadder[k]
-		g := legendre(n)
 		set := newNodeSet(n * n * n)
-		volume := (c.hi[0] - c.lo[0]) * (c.hi[1] - c.lo[1]) * (c.hi[2] - c.lo[2]) / 8
-		for i := range g.X {
-			for j := range g.X {
-				for l := range g.X {
-					x, q := c.at([3]float64{between(c.lo[0], c.hi[0], g.X[i]), between(c.lo[1], c.hi[1], g.X[j]), between(c.lo[2], c.hi[2], g.X[l])})
-					set.put((i*n+j)*n+l, x, q*g.W[i]*g.W[j]*g.W[l]*volume)
-				}
+		c.rule(n, func(i int, x r3.Vec, volume float64) {
+			q := 0.0
+			if volume != 0 {
+				q = c.density(x) * volume
 			}
-		}
+			set.put(i, x, q)
+		})
 		c.sets[k] = set
 	})
 	return c.sets[k]
+}
+
+// volume returns the size of the cell, roughly.
+func (c *cell) volume() (v float64) {
+	c.rule(4, func(_ int, _ r3.Vec, volume float64) { v += math.Abs(volume) })
+	return v
 }
 
 // measure finds centre, radius, magnitudes, the smallest rule and the faces.

@@ -63,6 +63,6 @@ func (l *Layer) gradient(w *work, t *target, v *field.Value) {
 	}
 	v.ErrGrad += 0.1 * frobenius(&last)
 	if t.rim < math.Inf(1) {
-		v.ErrGrad += 2 * u * (l.scale + scaleOf(t.x)) * l.peak / (math.Pi * t.rim * t.rim)
+		v.ErrGrad += 2 * u * (l.scale + scaleOf(t.x)) * t.ends / (math.Pi * t.rim * t.rim)
 	}
 }

@@ -18,6 +18,19 @@ type innerFoot struct {
 	to, low  r3.Vec // the target
 }
 
+// apex returns the density to be taken out of the gradient: that at the foot. Far from the target nothing need be, nor is anything where
+// the density is infinite.
+func (f *innerFoot) apex() float64 {
+	if f.distance > 0.1*f.cell.radius {
+		return 0
+	}
+	rho := f.cell.density(f.x)
+	if rho-rho != 0 {
+		return 0
+	}
+	return rho
+}
+
 // foot finds the point of the cell nearest to x, from the nearest of its nodes, by projected Gauss-Newton steps.
 func (c *cell) foot(x, low r3.Vec) innerFoot {
 	set := c.nodes(1)

@@ -83,6 +83,18 @@ func NewLayer(charts []geom.Chart, density func(x, n r3.Vec) float64, s *Setting
 // Charge returns the total charge and the bound on its error.
 func (l *Layer) Charge() (charge, estimate float64) { return l.total() }
 
+// Rule visits the points of the rule that measures the charge, with the unit normal and the piece of area of each.
+func (l *Layer) Rule(visit func(x, n r3.Vec, area float64)) {
+	for _, p := range l.panels {
+		set := p.nodes(measured)
+		for i, a := range set.area {
+			if size := r3.Norm(a); size > 0 {
+				visit(r3.Vec{X: set.x[i], Y: set.y[i], Z: set.z[i]}, r3.Scale(1/size, a), size)
+			}
+		}
+	}
+}
+
 // Unresolved returns the charge that the panels do not resolve: zero for a smooth density.
 func (l *Layer) Unresolved() float64 { return l.loose }
 
@@ -102,16 +114,43 @@ func (l *Layer) Evaluate(dst *field.Values, at *field.Points, side field.Side) {
 // Bounds returns a box that contains the charge.
 func (l *Layer) Bounds() r3.Box { return l.bounds }
 
+// Less evaluates at one point the density less that of a uniform polarization, less.n: to be added to the field of a body with that
+// polarization which is known otherwise. Where p is that of the body at its point nearest to x, what is left vanishes there,
+// and so does what the rounding of the charts would do beside an edge.
+// The status is never NotConverged: what accuracy is enough, the whole tells.
+func (l *Layer) Less(less r3.Vec, p field.Point, side field.Side, want field.Want) field.Value {
+	return l.near(less, true, p, side, want)
+}
+
+// Nearest returns the point of the layer nearest to x, and its distance.
+func (l *Layer) Nearest(x r3.Vec) (foot r3.Vec, distance float64) {
+	distance = math.Inf(1)
+	for _, p := range l.panels {
+		if r3.Norm(r3.Sub(x, p.centre))-p.radius < distance {
+			if f := p.foot(x); f.distance < distance {
+				foot, distance = f.x, f.distance
+			}
+		}
+	}
+	return foot, distance
+}
+
 // value evaluates at one point.
 func (l *Layer) value(p field.Point, side field.Side, want field.Want) field.Value {
-	x, low := p.X.Value(), p.X.Low()
-	if l.isFar(x) {
+	if l.isFar(p.X.Value()) {
 		return l.farValue(p, want)
 	}
+	return l.near(r3.Vec{}, false, p, side, want)
+}
+
+// near evaluates at one point, without the expansion.
+func (l *Layer) near(less r3.Vec, part bool, p field.Point, side field.Side, want field.Want) field.Value {
+	x, low := p.X.Value(), p.X.Low()
 	w := works.Get().(*work)
 	defer works.Put(w)
 	w.nodes = 0
-	t := target{x: x, low: low, tol: l.tolerance(x, p.Slack), side: side, want: want}
+	t := target{x: x, low: low, less: less, tol: l.tolerance(x, p.Slack), side: side, want: want}
+	t.part = part
 	v := l.close(w, &t)
 	if t.hugs {
 		l.gradient(w, &t, &v)
@@ -122,12 +161,15 @@ func (l *Layer) value(p field.Point, side field.Side, want field.Want) field.Val
 // target is the point of one evaluation and what was found about it.
 type target struct {
 	x, low r3.Vec
+	less   r3.Vec // uniform polarization whose charge is left out
+	part   bool   // the whole judges the accuracy
 	tol    float64
 	side   field.Side
 	want   field.Want
 	status field.Status
 	offset float64 // distance of the nearest panel, +Inf if none is near
 	rim    float64 // distance of the nearest live edge, +Inf if none is near
+	ends   float64 // greatest density that ends at a live edge near by
 	away   r3.Vec  // unit vector from the nearest panel to x
 	hugs   bool    // so near that the gradient is extrapolated
 	plain  bool    // but must not be
@@ -144,7 +186,7 @@ func (l *Layer) close(w *work, t *target) field.Value {
 	for _, p := range l.panels {
 		d := r3.Norm(r3.Sub(t.x, p.centre))
 		if a, b, ok := rungs(d/p.radius, p.least, ladder[:]); ok {
-			coarse, fine := p.nodes(a).sum(t.x, t.low, grad), p.nodes(b).sum(t.x, t.low, grad)
+			coarse, fine := p.nodes(a).sumLess(t.x, t.low, t.less, grad), p.nodes(b).sumLess(t.x, t.low, t.less, grad)
 			e := apart(&coarse, &fine)
 			if l.enough(&fine, &e, &scale, t.want) {
 				total.add(&fine, 1)
@@ -166,7 +208,7 @@ func (l *Layer) close(w *work, t *target) field.Value {
 	}
 	for i := range w.feet {
 		f := &w.feet[i]
-		s, e := l.nearPanel(w, f, want, &scale)
+		s, e := l.nearPanel(w, f, t.less, want, &scale)
 		total.add(&s, 1)
 		errs.add(e)
 		errs.add(looseGap(f.panel.loose, max(f.distance, 1e-3*f.panel.radius)))
@@ -176,17 +218,19 @@ func (l *Layer) close(w *work, t *target) field.Value {
 	v.ErrPhi, v.ErrG, v.ErrGrad = v.ErrPhi+e.phi, v.ErrG+e.g, v.ErrGrad+e.t
 	l.onFace(w, t, &v)
 	l.rounding(w, t, &v)
-	l.judge(&v, &scale, t.want)
+	if !t.part {
+		l.judge(&v, &scale, t.want)
+	}
 	return v
 }
 
 // nearPanel raises the level until the two rules agree.
-func (l *Layer) nearPanel(w *work, f *placedFoot, want field.Want, scale *gap) (s sums, e gap) {
+func (l *Layer) nearPanel(w *work, f *placedFoot, less r3.Vec, want field.Want, scale *gap) (s sums, e gap) {
 	grad := want&field.WantGrad != 0
 	last := gap{math.Inf(1), math.Inf(1), math.Inf(1)}
 	for k := l.firstLevel(); k < len(levels); k++ {
 		before := w.nodes
-		a, b := w.near(f, k, 0, grad), w.near(f, k, 1, grad)
+		a, b := w.near(f, less, k, 0, grad), w.near(f, less, k, 1, grad)
 		d := apart(&a, &b)
 		if d.g > 0.1*last.g && d.phi > 0.1*last.phi { // rounding, not convergence, is what is left
 			if d.g < last.g {

@@ -18,6 +18,7 @@ type placedFoot struct {
 type ray struct {
 	p          *panel
 	f          *placedFoot
+	less       r3.Vec
 	eu, ev     float64
 	weight     float64
 	length     float64 // metric length
@@ -29,7 +30,7 @@ type ray struct {
 // Near the surface the vector from the target to a node must be right relative to itself, which a difference of two rounded
 // places is not. It is the integral of the chart's derivatives along the ray, taken with the integration matrix of the Gauss
 // points of each piece: its error is a few u of its length.
-func (w *work) near(f *placedFoot, k, which int, grad bool) (s sums) {
+func (w *work) near(f *placedFoot, less r3.Vec, k, which int, grad bool) (s sums) {
 	p := f.panel
 	l := levels[k][which]
 	reach := max(r3.Norm(f.w), 1e-16*p.scale)
@@ -42,7 +43,7 @@ func (w *work) near(f *placedFoot, k, which int, grad bool) (s sums) {
 	fine := reach < 0x1p-5*p.scale
 	cache := w.pieces(k, which)
 	metric.rays(l, func(eu, ev, weight, length float64) {
-		r := ray{p: p, f: f, eu: eu, ev: ev, weight: weight, length: length, fine: fine, grad: grad}
+		r := ray{p: p, f: f, less: less, eu: eu, ev: ev, weight: weight, length: length, fine: fine, grad: grad}
 		rule := cache.get(reach / length)
 		part := r.sum(w, rule)
 		w.nodes += len(rule.X)
@@ -78,7 +79,7 @@ func (r *ray) put(s *sums, k, q float64, area r3.Vec, dx, dy, dz float64) {
 		s.boundary(r3.Scale(k, area), dx, dy, dz)
 		return
 	}
-	s.charge(k*q, dx, dy, dz, r.grad)
+	s.charge(k*(q-r3.Dot(r.less, area)), dx, dy, dz, r.grad)
 }
 
 // fineSum adds a piece with places integrated from its start, and returns its end.

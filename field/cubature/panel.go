@@ -39,6 +39,9 @@ func (p *panel) at(u, v float64) (x, area r3.Vec, q float64) {
 	return x, area, p.charged(x, area)
 }
 
+// left is the density at x with unit normal n less that of a uniform polarization.
+func (p *panel) left(x, n, less r3.Vec) float64 { return p.density(x, n) - r3.Dot(less, n) }
+
 // charged returns the charge per area of the parameter square.
 func (p *panel) charged(x, area r3.Vec) float64 {
 	if p.density == nil {
@@ -59,11 +62,13 @@ func (p *panel) nodes(k int) *nodeSet {
 		n := ladder[k]
 		g := legendre(n)
 		set := newNodeSet(n * n)
+		set.area = make([]r3.Vec, n*n)
 		du, dv := (p.hi[0]-p.lo[0])/2, (p.hi[1]-p.lo[1])/2
 		for i, a := range g.X {
 			for j, b := range g.X {
-				x, _, q := p.at(between(p.lo[0], p.hi[0], a), between(p.lo[1], p.hi[1], b))
+				x, area, q := p.at(between(p.lo[0], p.hi[0], a), between(p.lo[1], p.hi[1], b))
 				set.put(i*n+j, x, q*g.W[i]*g.W[j]*du*dv)
+				set.area[i*n+j] = r3.Scale(g.W[i]*g.W[j]*du*dv, area)
 			}
 		}
 		p.sets[k] = set

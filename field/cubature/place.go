@@ -12,6 +12,7 @@ type rim struct {
 	at       r3.Vec // from the target
 	tangent  r3.Vec // unit
 	m        r3.Vec // outward in the surface, times density
+	whole    r3.Vec // the same with nothing left out
 	n        r3.Vec // normal of the surface
 	distance float64
 	done     bool
@@ -29,7 +30,7 @@ const edgeReach = 1e-2
 // would see a line of charge u/d between them. So the vectors from all feet derive from the foot that is nearest, by
 // integrals of the chart's derivatives between the feet.
 func (l *Layer) place(w *work, t *target) {
-	t.offset, t.rim = math.Inf(1), math.Inf(1)
+	t.offset, t.rim, t.ends = math.Inf(1), math.Inf(1), 0
 	if len(w.feet) == 0 {
 		return
 	}
@@ -85,15 +86,15 @@ func (p *panel) inward(c [2]float64) r3.Vec {
 }
 
 // sharpness returns the density times the change of the normal round a tip: zero on a smooth surface.
-func (p *panel) sharpness(c [2]float64, axis int) r3.Vec {
+func (p *panel) sharpness(c [2]float64, axis int, less r3.Vec) (m, whole r3.Vec) {
 	a, b := c, c
 	a[1-axis], b[1-axis] = p.lo[1-axis], p.hi[1-axis]
-	m := r3.Sub(p.inward(a), p.inward(b))
-	if r3.Norm(m) < 1e-9 {
-		return r3.Vec{}
+	turn := r3.Sub(p.inward(a), p.inward(b))
+	if r3.Norm(turn) < 1e-9 {
+		return m, whole
 	}
 	x, _, _ := p.chart.At(c[0], c[1])
-	return r3.Scale(p.density(x, p.inward(c)), m)
+	return r3.Scale(p.left(x, p.inward(c), less), turn), r3.Scale(p.left(x, p.inward(c), r3.Vec{}), turn)
 }
 
 func unit(v r3.Vec) r3.Vec {
@@ -205,7 +206,7 @@ func (l *Layer) rims(w *work, t *target) {
 		}
 		for axis := range 2 {
 			for _, end := range [2]bool{false, true} {
-				f.rim(w, axis, end, 0)
+				f.rim(w, t.less, axis, end, 0)
 			}
 		}
 	}
@@ -214,16 +215,16 @@ func (l *Layer) rims(w *work, t *target) {
 		if a.done {
 			continue
 		}
-		m, size := a.m, r3.Norm(a.m)
+		m, whole, size := a.m, a.whole, r3.Norm(a.whole)
 		for j := i + 1; j < len(w.rims); j++ {
 			b := &w.rims[j]
 			if !b.done && a.with(b, t.tol) {
 				b.done = true
-				m, size = r3.Add(m, b.m), size+r3.Norm(b.m)
+				m, whole, size = r3.Add(m, b.m), r3.Add(whole, b.whole), size+r3.Norm(b.whole)
 			}
 		}
-		if r3.Norm(m) > 1e-9*size {
-			t.rim = min(t.rim, a.distance)
+		if r3.Norm(whole) > 1e-9*size {
+			t.rim, t.ends = min(t.rim, a.distance), max(t.ends, r3.Norm(m))
 			a.m = m
 		} else {
 			a.done = true
@@ -238,7 +239,7 @@ func (a *rim) with(b *rim, tol float64) bool {
 }
 
 // rim adds a side of the panel if it is close; the density is that of a panel that has none.
-func (f *placedFoot) rim(w *work, axis int, end bool, density float64) {
+func (f *placedFoot) rim(w *work, less r3.Vec, axis int, end bool, density float64) {
 	p := f.panel
 	to := f.c
 	to[axis] = p.lo[axis]
@@ -260,8 +261,8 @@ func (f *placedFoot) rim(w *work, axis int, end bool, density float64) {
 		if p.density == nil {
 			return
 		}
-		if m := p.sharpness(h.c, axis); m != (r3.Vec{}) {
-			w.rims = append(w.rims, rim{at: at, m: m, distance: r3.Norm(at), tip: true})
+		if m, whole := p.sharpness(h.c, axis, less); whole != (r3.Vec{}) {
+			w.rims = append(w.rims, rim{at: at, m: m, whole: whole, distance: r3.Norm(at), tip: true})
 		}
 		return
 	}
@@ -271,10 +272,11 @@ func (f *placedFoot) rim(w *work, axis int, end bool, density float64) {
 	if (axis == 0) != end { // xu x xv = n: xv x n points along xu, n x xu along xv
 		m = r3.Scale(-1, m)
 	}
+	whole := density
 	if p.density != nil {
-		density = p.density(h.x, n)
+		density, whole = p.left(h.x, n, less), p.left(h.x, n, r3.Vec{})
 	}
-	w.rims = append(w.rims, rim{at: at, tangent: tangent, m: r3.Scale(density, m), n: n, distance: r3.Norm(at), own: !f.aligned})
+	w.rims = append(w.rims, rim{at: at, tangent: tangent, m: r3.Scale(density, m), whole: r3.Scale(whole, m), n: n, distance: r3.Norm(at), own: !f.aligned})
 }
 
 // onFace turns the outside limit into what was asked for.
@@ -288,7 +290,7 @@ func (l *Layer) onFace(w *work, t *target, v *field.Value) {
 	case field.OnFace:
 		f := w.nearest()
 		n := f.normal(f.panel)
-		sigma := f.panel.density(f.x, n)
+		sigma := f.panel.left(f.x, n, t.less)
 		v.ErrGrad = math.Inf(1)
 		switch t.side {
 		case field.Mean:

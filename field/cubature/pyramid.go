@@ -35,7 +35,7 @@ func (c *solidCaches) set(l level) {
 func (w *work) pyramids(f *innerFoot, k, which int, grad bool) (s sums) {
 	p := pyramid{grad: grad, caches: &w.solid[2*k+which], level: solidLevels[k][which]}
 	if grad {
-		p.rho = f.cell.density(f.x)
+		p.rho = f.apex()
 	}
 	p.whole(w, f, &s, 0)
 	return s

@@ -45,6 +45,7 @@ func splitBlocks(blocks []geom.Block, density func(x r3.Vec) float64, most int) 
 // rough returns the direction in which the cell has to be cut, -1 if it need not be, and the charge that is not resolved.
 func (c *cell) rough(line *lineRule, peak *float64) (axis int, loose float64, err error) {
 	var worst, turned [3]float64
+	most := 8 * c.charge / c.volume()
 	for axis := range 3 {
 		for _, other := range [4][2]float64{{-0.83, 0.07}, {0.07, 0.91}, {0.91, -0.83}, {-0.4, 0.5}} {
 			var defect, size [5]float64
@@ -66,7 +67,7 @@ func (c *cell) rough(line *lineRule, peak *float64) (axis int, loose float64, er
 				if err == nil && det < 0 {
 					err = fmt.Errorf("cubature: block %d is left-handed at (%v, %v, %v); exchange two of its parameters", c.index, p[0], p[1], p[2])
 				}
-				c.peak = max(c.peak, math.Abs(rho))
+				c.peak = max(c.peak, min(math.Abs(rho), most))
 				last = [3]r3.Vec{xu, xv, xw}[axis]
 				if !begun {
 					first, begun = last, true

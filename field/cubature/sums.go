@@ -119,14 +119,28 @@ func frobenius(t *[6]float64) float64 {
 	return math.Sqrt(t[0]*t[0] + t[1]*t[1] + t[2]*t[2] + 2*(t[3]*t[3]+t[4]*t[4]+t[5]*t[5]))
 }
 
-// nodeSet is charges at points, as a structure of arrays.
-type nodeSet struct{ x, y, z, q []float64 }
+// nodeSet is charges at points, as a structure of arrays, with their pieces of area where they lie on a surface.
+type nodeSet struct {
+	x, y, z, q []float64
+	area       []r3.Vec
+}
 
 func (c *nodeSet) put(i int, x r3.Vec, q float64) { c.x[i], c.y[i], c.z[i], c.q[i] = x.X, x.Y, x.Z, q }
 
 func newNodeSet(n int) *nodeSet {
 	room := make([]float64, 4*n)
-	return &nodeSet{room[:n:n], room[n : 2*n : 2*n], room[2*n : 3*n : 3*n], room[3*n:]}
+	return &nodeSet{x: room[:n:n], y: room[n : 2*n : 2*n], z: room[2*n : 3*n : 3*n], q: room[3*n:]}
+}
+
+// sumLess returns the sums over all charges less those of a uniform polarization.
+func (c *nodeSet) sumLess(x, low, less r3.Vec, grad bool) (s sums) {
+	if less == (r3.Vec{}) {
+		return c.sum(x, low, grad)
+	}
+	for i, a := range c.area {
+		s.charge(c.q[i]-r3.Dot(less, a), (x.X-c.x[i])+low.X, (x.Y-c.y[i])+low.Y, (x.Z-c.z[i])+low.Z, grad)
+	}
+	return s
 }
 
 // sum returns the sums over all charges.

@@ -39,14 +39,17 @@ func (v *Volume) uniform(w *work, x, low r3.Vec, tol float64, scale *gap, total 
 			g.align(f)
 		}
 		in := &w.inner[i/6]
-		rho := in.cell.density(in.x)
+		rho := in.apex()
 		if g.distance <= tol {
 			jump = r3.Add(jump, r3.Scale(rho, g.normal(g.panel)))
 		}
 		if g.distance < edgeReach*g.panel.radius {
 			for side := range 4 {
-				g.rim(w, side/2, side%2 == 1, rho)
+				g.rim(w, r3.Vec{}, side/2, side%2 == 1, rho)
 			}
+		}
+		if rho == 0 {
+			continue
 		}
 		s, e := v.nearFace(w, g, rho, scale)
 		total.add(&s, rho)
@@ -96,7 +99,7 @@ func (v *Volume) nearFace(w *work, f *placedFoot, rho float64, scale *gap) (s su
 	last := math.Inf(1)
 	for k := v.firstLevel(); k < len(levels); k++ {
 		before := w.nodes
-		a, b := w.near(f, k, 0, true), w.near(f, k, 1, true)
+		a, b := w.near(f, r3.Vec{}, k, 0, true), w.near(f, r3.Vec{}, k, 1, true)
 		d := apart(&a, &b)
 		if d.t > last {
 			return s, e

@@ -68,6 +68,14 @@ func NewVolume(blocks []geom.Block, density func(x r3.Vec) float64, s *Settings)
 // Charge returns the total charge and the bound on its error.
 func (v *Volume) Charge() (charge, estimate float64) { return v.total() }
 
+// Rule visits the points of a rule that is good to 1e-13 for what is as smooth as the charge, with the piece of volume of each.
+func (v *Volume) Rule(visit func(x r3.Vec, volume float64)) {
+	const points = 11 // against 14 that know the charge to 1e-9
+	for _, c := range v.cells {
+		c.rule(points, func(_ int, x r3.Vec, volume float64) { visit(x, volume) })
+	}
+}
+
 // Unresolved returns the charge that the cells do not resolve: zero for a smooth density.
 func (v *Volume) Unresolved() float64 { return v.loose }
 

@@ -119,11 +119,18 @@ func (b *AxialPower) value(x field.Point, side field.Side, want field.Want) fiel
 	c.lap -= in
 	c.zz -= in // the step of the solid angle through the disc at the point
 	c.sizeH += math.Abs(in)
+	c.sizeU *= 0.5 // measured: of 400 triples the least estimate of phi is 1.3 times the error, the median one 70 times
 	v := b.finish(&p, &c, left, status, want)
-	if f.half < 0.05*f.outer { // measured: in plates the rounding of the rule's weights adds up instead of averaging out
+	plate(&v, f.half, f.outer)
+	return v
+}
+
+// plate raises the estimates of a body of low height: there the rounding of the rule's weights adds up instead of averaging
+// out (measured).
+func plate(v *field.Value, half, radius float64) {
+	if half < 0.05*radius {
 		v.ErrPhi, v.ErrG = 4*v.ErrPhi, 4*v.ErrG
 	}
-	return v
 }
 
 // add adds the ends and the volume within a wall, the volume as stacked discs. It returns what the rules may have left out.

@@ -19,32 +19,49 @@ import (
 // carry no charge the point is regular.
 // Accuracy: |error| <= 3e-12 max(|g|, 1e-3 g0) for g, 3e-12 max(|phi|, 1e-3 phi0) for phi, with g0 = |P| min(1, (a/R)^3),
 // phi0 = |P| a min(1, (a/R)^2), a the bounding radius (worst 6.6e-13 and 2.3e-12, both on a cone 1e-3 radii high; else 3.8e-14
-// and 6.6e-14, TestRingReference).
+// and 6.6e-14, TestRingReference). The gradient to 1e-9 max(|grad g|, 1e-3 |P|/size) (worst 6.2e-11, TestGradientReference in
+// field/bound), but inside next to the tip of a needle, of radius s times the distance from it, to about 5e-15/s^3 of |grad g|
+// (measured down to s = 1e-3): the charge all round nearly cancels there. The estimate holds.
 // Source: ends as discs (see Disc); the wall as rings of charge and of charge cos(phi) by Gauss-Legendre in panels graded
 // towards the point (see ringView, march); close to the wall the gradient from its derivative along it (ringAlong);
 // multipoles beyond 2.5 bounding radii.
 type Cone struct {
-	shape geom.Cone
-	p     r3.Vec
-	half  float64
-	bound float64
-	wall  line
-	far   roundMultipoles
+	frustum
+	p   r3.Vec
+	far roundMultipoles
 }
+
+// frustum is the shape of the cones.
+type frustum struct {
+	shape geom.Cone
+	half  float64
+	bound float64 // radius of a sphere about the origin that holds it
+	wall  line
+}
+
+// newFrustum returns the error of shape.Check.
+func newFrustum(shape geom.Cone) (f frustum, err error) {
+	half := shape.Height / 2
+	f = frustum{shape: shape, half: half, bound: math.Hypot(max(shape.Bottom, shape.Top), half)}
+	f.wall = newLine(shape.Bottom, -half, shape.Top, half)
+	return f, shape.Check()
+}
+
+// Bounds returns the box of the body.
+func (f *frustum) Bounds() r3.Box { return f.shape.Bounds() }
 
 // NewCone returns the cone polarized with p.
 func NewCone(shape geom.Cone, p r3.Vec) (*Cone, error) {
-	if err := shape.Check(); err != nil {
+	f, err := newFrustum(shape)
+	if err != nil {
 		return nil, err
 	}
 	if err := finitePolarization(p); err != nil {
 		return nil, err
 	}
-	half := shape.Height / 2
-	b := &Cone{shape: shape, p: p, half: half, bound: math.Hypot(max(shape.Bottom, shape.Top), half)}
-	b.wall = newLine(shape.Bottom, -half, shape.Top, half)
+	b := &Cone{frustum: f, p: p}
 	b.far = roundMultipoles{bound: b.bound}
-	acrossRing(-half, half, func(z, wz float64) {
+	acrossRing(-b.half, b.half, func(z, wz float64) {
 		t := 0.5 + z/shape.Height
 		acrossRing(0, shape.Bottom*(1-t)+shape.Top*t, func(s, ws float64) {
 			b.far.addUniform(s, z, 2*math.Pi*s*ws*wz, p.Z)
@@ -72,9 +89,6 @@ func (b *Cone) Evaluate(dst *field.Values, at *field.Points, side field.Side) {
 	field.Fill(dst, at, func(p field.Point, want field.Want) field.Value { return b.value(p, side, want) })
 }
 
-// Bounds returns the box of the body.
-func (b *Cone) Bounds() r3.Box { return b.shape.Bounds() }
-
 func (b *Cone) value(x field.Point, side field.Side, want field.Want) field.Value {
 	p := newRoundPoint(x, 0, b.bound)
 	t := r3.Vec{X: b.p.X, Y: b.p.Y}
@@ -83,18 +97,26 @@ func (b *Cone) value(x field.Point, side field.Side, want field.Want) field.Valu
 		return p.value(&c, &k, t, want)
 	}
 	v := b.wall.view(&p)
+	end := b.p.Z != 0
+	status, face := b.place(&p, &v, [3]bool{end, end, end && v.nz != 0 || b.p.X != 0 || b.p.Y != 0})
 	bottom, top := p.rim(b.shape.Bottom, -b.half), p.rim(b.shape.Top, b.half)
-	status, onWall := b.place(&p, &v, &bottom, &top, sideSign(side))
+	switch out := sideSign(side); {
+	case status != field.OnFace:
+	case face == bottomFace:
+		bottom.sign = -out
+	case face == topFace:
+		top.sign = out
+	}
 	if status == field.OnEdge {
 		want = field.WantPhi | want&field.WantErr
 	}
 	var c constant
 	var k cosine
-	if b.p.Z != 0 {
+	if end {
 		b.addEnds(&bottom, &top, &c, want)
 	}
 	s := newRingSurface(b.p, want)
-	s.evaluate(&v, &c, &k, onWall, side)
+	s.evaluate(&v, &c, &k, status == field.OnFace && face == wallFace, side)
 	r := p.value(&c, &k, t, want)
 	switch status {
 	case field.OnEdge:
@@ -105,30 +127,36 @@ func (b *Cone) value(x field.Point, side field.Side, want field.Want) field.Valu
 	return s.settled(r)
 }
 
-// place tells what kind of place the point is on, and whether that is the wall; on an end it sets the side.
-func (b *Cone) place(p *roundPoint, v *ringView, bottom, top *rim, out float64) (status field.Status, onWall bool) {
-	if most := max(-bottom.z, top.z, v.d); most > p.tol || most < -p.tol {
-		return field.Regular, false
+// The faces of a frustum.
+const (
+	noFace = iota - 1
+	bottomFace
+	topFace
+	wallFace
+)
+
+// place tells which face the point is on, and what that makes of it if these faces are charged. Where faces meet the place
+// is an edge if one of them is.
+func (f *frustum) place(p *roundPoint, v *ringView, charged [3]bool) (status field.Status, face int) {
+	h := [3]float64{bottomFace: -p.height(-f.half), topFace: p.height(f.half), wallFace: v.d}
+	if most := max(h[0], h[1], h[2]); most > p.tol || most < -p.tol {
+		return field.Regular, noFace
 	}
-	onBottom, onTop := bottom.z <= p.tol, top.z >= -p.tol
-	onWall = v.d >= -p.tol
-	end := b.p.Z != 0
-	wall := b.p.X != 0 || b.p.Y != 0 || b.p.Z != 0 && v.nz != 0
-	switch {
-	case onWall && (onBottom || onTop), onBottom && onTop:
-		if end || wall {
-			return field.OnEdge, false
+	face = noFace
+	met, live := 0, false
+	for k, d := range h {
+		if d >= -p.tol {
+			met, face = met+1, k
+			live = live || charged[k]
 		}
-	case onWall && wall:
-		return field.OnFace, true
-	case onBottom && end:
-		bottom.sign = -out
-		return field.OnFace, false
-	case onTop && end:
-		top.sign = out
-		return field.OnFace, false
 	}
-	return field.Regular, false
+	switch {
+	case !live:
+		return field.Regular, face
+	case met > 1:
+		return field.OnEdge, face
+	}
+	return field.OnFace, face
 }
 
 // addEnds adds the end faces.

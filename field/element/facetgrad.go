@@ -40,6 +40,10 @@ func (f *facets) gradient(w *facetRoom, sum *facetSums, side field.Side) (tensor
 			continue
 		}
 		sx := q.sigma - r3.Dot(q.gamma, w.a[q.ref])
+		rough := math.Abs(sx) // what the rounding of sx goes with: it vanishes where linear charge changes sign
+		if f.linear {
+			rough = f.dense + r3.Norm(q.gamma)*w.r[q.ref]
+		}
 		var turn r3.Vec // gO, summed over the rim
 		var s r3.Vec
 		for k := range q.corners {
@@ -48,7 +52,7 @@ func (f *facets) gradient(w *facetRoom, sum *facetSums, side field.Side) (tensor
 			t.addOuter(sx, c.m, gl)
 			turn = r3.Sub(turn, spin)
 			s = r3.Add(s, r3.Scale(w.l[c.edge], c.m))
-			size += math.Abs(sx) * (r3.Norm(gl) + r3.Norm(spin))
+			size += rough * (r3.Norm(gl) + r3.Norm(spin))
 		}
 		t.addOuter(sx, q.n, turn)
 		if !f.linear {

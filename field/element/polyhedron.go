@@ -1,6 +1,7 @@
 package element
 
 import (
+	"math"
 	"sync"
 
 	"example.com/boundpole/field"
@@ -36,7 +37,7 @@ func NewPolyhedron(body geom.Polyhedron, p field.Affine) *Polyhedron {
 		n := newell(verts, loop).Value()
 		specs = append(specs, facetSpec{
 			loop:    loop,
-			density: func(x r3.Vec) float64 { return r3.Dot(p.At(x), n) },
+			density: func(x r3.Vec) float64 { return r3.Dot(affineAt(&p, x), n) },
 			gamma: r3.Vec{
 				X: g[0][0]*n.X + g[1][0]*n.Y + g[2][0]*n.Z,
 				Y: g[0][1]*n.X + g[1][1]*n.Y + g[2][1]*n.Z,
@@ -113,7 +114,9 @@ func NewPolygon(sheet geom.Polygon, density float64, gradient r3.Vec) *Polygon {
 	for i := range loop {
 		loop[i] = i
 	}
-	spec := facetSpec{loop: loop, gamma: gradient, density: func(x r3.Vec) float64 { return density + r3.Dot(gradient, x) }}
+	spec := facetSpec{loop: loop, gamma: gradient, density: func(x r3.Vec) float64 {
+		return pair.VecOf(gradient).Dot(pair.VecOf(x)).AddFloat(density).Value()
+	}}
 	s := &Polygon{flat: newFacets(verts, []facetSpec{spec}, 0)}
 	s.far = farField{flat: s.flat, reach: 3.5, order: 32}
 	if s.flat.linear {
@@ -140,7 +143,11 @@ func (s *Polygon) Moments() *field.Moments { return s.far.moments() }
 
 func (s *Polygon) point(p field.Point, side field.Side, want field.Want) field.Value {
 	if s.far.covers(p) {
-		return s.far.moments().Value(p, want)
+		v := s.far.moments().Value(p, want)
+		if want&field.WantErr != 0 {
+			s.far.loosen(&v, p)
+		}
+		return v
 	}
 	return s.flat.value(p, side, want)
 }
@@ -153,6 +160,16 @@ type farField struct {
 	order   int
 	once    sync.Once
 	m       *field.Moments
+	gross   float64 // sum of the magnitudes of the charge
+}
+
+// loosen adds what rounding of the densities may leave of charge where its parts cancel: 4 u of their magnitudes.
+func (f *farField) loosen(v *field.Value, p field.Point) {
+	r := r3.Norm(r3.Sub(p.X.Value(), f.m.Centre()))
+	e := 4 * u * over4P * f.gross / r
+	v.ErrPhi += e
+	v.ErrG += e / r
+	v.ErrGrad += 3 * e / r / r
 }
 
 // covers reports whether the expansion is to be used at p.
@@ -184,18 +201,32 @@ func (f *farField) build() {
 		face := &q.faces[i]
 		h := r3.Dot(face.n, r3.Sub(q.verts[face.ref].Value(), q.centre))
 		for k, t := range face.fan {
-			v0, v1, v2 := q.verts[t[0]].Value(), q.verts[t[1]].Value(), q.verts[t[2]].Value()
+			// densities from places relative to a vertex: far from the origin the sum of coordinates is rounded too much
+			v0 := q.verts[t[0]]
+			e1, e2 := q.verts[t[1]].Sub(v0).Value(), q.verts[t[2]].Sub(v0).Value()
+			base := face.sigma + r3.Dot(face.gamma, v0.Sub(q.verts[face.ref]).Value())
 			for _, nd := range nodes {
-				y := r3.Add(r3.Scale(1-nd.s-nd.t, v0), r3.Add(r3.Scale(nd.s, v1), r3.Scale(nd.t, v2)))
+				in := r3.Add(r3.Scale(nd.s, e1), r3.Scale(nd.t, e2))
+				y := r3.Add(v0.Value(), in)
 				w := nd.w * face.twice[k] * area
-				sigma := face.sigma + r3.Dot(face.gamma, r3.Sub(y, q.verts[face.ref].Value()))
+				sigma := base + r3.Dot(face.gamma, in)
 				f.m.AddGraded(r3.Scale(q.unit, y), w*sigma, w*q.rho*h)
+				f.gross += math.Abs(w * sigma)
 			}
 		}
 	}
 	if f.neutral {
 		f.m.Neutral()
 	}
+}
+
+// affineAt returns p at x, summed in pairs: far from the origin the terms may cancel.
+func affineAt(p *field.Affine, x r3.Vec) r3.Vec {
+	at := pair.VecOf(x)
+	row := func(c float64, g *[3]float64) float64 {
+		return pair.VecOf(r3.Vec{X: g[0], Y: g[1], Z: g[2]}).Dot(at).AddFloat(c).Value()
+	}
+	return r3.Vec{X: row(p.Value.X, &p.Gradient[0]), Y: row(p.Value.Y, &p.Gradient[1]), Z: row(p.Value.Z, &p.Gradient[2])}
 }
 
 func pairVertices(hi, lo []r3.Vec) []pair.Vec {

@@ -6,6 +6,7 @@ import (
 
 	"example.com/boundpole/field"
 	"example.com/boundpole/geom"
+	"gonum.org/v1/gonum/spatial/r3"
 )
 
 // powerBody is what AxialPower and RadialPower share: a cylinder or tube with volume charge. faces has the same shape, and
@@ -69,17 +70,22 @@ func (c *constant) widen() {
 
 // finish makes the value of the sums at a point that is where status says, with what the rules may have left out.
 func (b *powerBody) finish(p *roundPoint, c *constant, left float64, status field.Status, want field.Want) field.Value {
+	return finishPower(p, c, left, b.faces.bound, b.peak, status, want)
+}
+
+// finishPower makes the value of a body with the bounding radius bound and the largest polarization peak.
+func finishPower(p *roundPoint, c *constant, left, bound, peak float64, status field.Status, want field.Want) field.Value {
 	c.widen()
 	c.sizeG += left / (rounding * u)
-	c.sizeU += left * b.faces.bound / (rounding * u)
+	c.sizeU += left * bound / (rounding * u)
 	var k cosine
-	v := p.value(c, &k, b.faces.across(), want)
+	v := p.value(c, &k, r3.Vec{}, want)
 	switch {
 	case status == field.OnEdge:
 		return onEdge(v)
 	case status == field.OnFace:
 		v.Status, v.ErrGrad = field.OnFace, math.Inf(1)
-	case left > 1e-10*b.peak:
+	case left > 1e-10*peak:
 		v.Status = field.NotConverged
 	}
 	return v

@@ -24,8 +24,9 @@ func (v *ringView) grazes() bool {
 	return d < v.rho && d < v.length()
 }
 
-// add adds a ring: charges wu and wf cos(phi) for a normal component of 1, axial and radial.
-func (o *ringAlong) add(v *ringView, r *rim, i *rimValues, h *ringFifth, nr, nz, wu, wf float64) {
+// add adds a ring: charges wu, of the derivative su along the generatrix, and wf cos(phi) for a normal component of 1, axial
+// and radial.
+func (o *ringAlong) add(v *ringView, r *rim, i *rimValues, h *ringFifth, nr, nz, wu, su, wf float64) {
 	a, rho, b := r.a, r.rho, v.bend
 	// F a and its derivative; a' = -nz on a line, and per angle -b nz, nz' = nr, nr' = -nz on an arc. The weight has the unit.
 	step := -v.unit() * nz
@@ -47,12 +48,12 @@ func (o *ringAlong) add(v *ringView, r *rim, i *rimValues, h *ringFifth, nr, nz,
 		e5, g5 = (d3-q1*h.d5)/ar, (f3-q1*f5)/ar
 	}
 	d3r, d3z := -3*(a*e5-r.d*h.d5), -3*r.z*h.d5
-	if wu != 0 {
+	if wu != 0 || su != 0 {
 		x, y := (r.d*i.s3a-a*i.d3a)/a, -r.z*h.s3
-		o.u[0] += wu * (fuS*x - fu*(change*d3r+byRho*d3))
-		o.u[1] += wu * (fuS*y - fu*(change*d3z+byZ*d3))
-		o.sizeU += math.Abs(wu) * (math.Abs(fuS)*(math.Abs(r.d)+math.Abs(r.z))*h.s3 +
-			math.Abs(fu)*(math.Abs(change)*(math.Abs(d3r)+math.Abs(d3z))+(math.Abs(byRho)+math.Abs(byZ))*d3))
+		o.u[0] += (wu*fuS+su*fu)*x - wu*fu*(change*d3r+byRho*d3)
+		o.u[1] += (wu*fuS+su*fu)*y - wu*fu*(change*d3z+byZ*d3)
+		o.sizeU += (math.Abs(wu*fuS) + math.Abs(su*fu)) * (math.Abs(r.d) + math.Abs(r.z)) * h.s3
+		o.sizeU += math.Abs(wu) * (math.Abs(fu) * (math.Abs(change)*(math.Abs(d3r)+math.Abs(d3z)) + (math.Abs(byRho)+math.Abs(byZ))*d3))
 	}
 	f3r, f3z := -3*(a*g5-r.d*f5), -3*r.z*f5
 	x, y := (i.bz-i.t1r)/a, -i.br/a
@@ -62,14 +63,15 @@ func (o *ringAlong) add(v *ringView, r *rim, i *rimValues, h *ringFifth, nr, nz,
 		math.Abs(ff)*(math.Abs(change)*(math.Abs(f3r)+math.Abs(f3z))+(math.Abs(byRho)+math.Abs(byZ))*(sin3+d3)))
 }
 
-// addEnds adds the rings at the ends of a line, for the charge axial times the normal component.
-func (o *ringAlong) addEnds(v *ringView, axial float64) {
+// addEnds adds the rings at the ends of a line.
+func (o *ringAlong) addEnds(v *ringView, surface *ringSurface) {
 	for _, end := range [2]struct{ s, sign float64 }{{v.lo, 1}, {v.hi, -1}} {
 		r, nr, nz := v.at(end.s)
 		if !(r.a > 0) {
 			continue
 		}
 		i := r.values(needLoop)
+		axial, _ := surface.density(v, end.s)
 		fu, ff := end.sign*axial*nz, end.sign*nr
 		size := (math.Abs(r.d) + math.Abs(r.z)) * i.s3a
 		o.u[0] += fu * (r.d*i.s3a - r.a*i.d3a)

@@ -28,6 +28,7 @@ func TestRingLaws(t *testing.T) {
 	shape := geom.Tube{Inner: 0.25, Outer: 1, Height: 1.5}
 	rod := geom.Cylinder{Radius: 1, Height: 1.5}
 	axial := field.AxialPower{Coefficient: 1.5, Power: 3}
+	affine := field.Affine{Value: p, Gradient: [3][3]float64{{0.5, -1.25, 0.75}, {2, -0.25, 1.5}, {-1, 0.625, 1.75}}}
 	full := field.RadialPower{Coefficient: -1, Power: 0.5}
 	for _, c := range []struct {
 		name  string
@@ -38,6 +39,9 @@ func TestRingLaws(t *testing.T) {
 	}{
 		{"frustum", build[*element.Cone](t)(element.NewCone(frustum, p)), frustum, field.Uniform{P: p}, 0.02},
 		{"tip", build[*element.Cone](t)(element.NewCone(tip, p)), tip, field.Uniform{P: p}, 0.01},
+		{"affine", build[*element.AffineCone](t)(element.NewAffineCone(frustum, affine)), frustum, affine, 0.02},
+		{"affine tip", build[*element.AffineCone](t)(element.NewAffineCone(tip, affine)), tip, affine, 0.01},
+		{"axial cone", build[*element.AxialPowerCone](t)(element.NewAxialPowerCone(frustum, 1.5, 3)), frustum, axial, 0.02},
 		{"torus", build[*element.Torus](t)(element.NewTorus(ring, p)), ring, field.Uniform{P: p}, 0.2},
 		{"axial", build[*element.AxialPower](t)(element.NewAxialPower(shape, 1.5, 3)), shape, axial, 0.02},
 		{"radial", build[*element.RadialPower](t)(element.NewRadialPower(geom.Tube{Outer: 1, Height: 1.5}, -1, 0.5)), rod, full, 0.02},

@@ -7,10 +7,12 @@ import (
 	"gonum.org/v1/gonum/spatial/r3"
 )
 
-// ringSurface is the surface of a body of uniform polarization along one generatrix. Its charge is axial times n.z and,
-// with cos(phi), n.rho for a unit of transverse polarization.
+// ringSurface is the surface of a body along one generatrix. Its charge is axial times z^power times n.z and, with cos(phi),
+// n.rho for a unit of transverse polarization.
 type ringSurface struct {
 	axial, across float64 // the polarization: along the axis, size of the transverse part
+	power         int     // not 0 only on a line
+	bottom        float64 // z of the lower end, needed for a power
 	gradient      bool    // the second derivatives are wanted
 	left          float64 // what the rules may have left out of the field
 }
@@ -30,7 +32,8 @@ func (o *ringSurface) evaluate(v *ringView, c *constant, k *cosine, on bool, sid
 		return
 	}
 	f := 2 * math.Pi * (sign(v.d) - sideSign(side)) // the normal derivative falls by 4 pi of the charge from side to side
-	axial := f * o.axial * v.nz
+	q, _ := o.density(v, min(max(0, v.lo), v.hi))
+	axial := f * q * v.nz
 	c.rho += axial * v.nr
 	c.z += axial * v.nz
 	if o.across != 0 {
@@ -39,12 +42,25 @@ func (o *ringSurface) evaluate(v *ringView, c *constant, k *cosine, on bool, sid
 	}
 }
 
+// density returns the axial polarization at s and its derivative.
+func (o *ringSurface) density(v *ringView, s float64) (q, slope float64) {
+	if o.power == 0 {
+		return o.axial, 0
+	}
+	z := o.bottom + v.nr*(s-v.lo)
+	f := o.axial * powInt(z, o.power-1)
+	return f * z, float64(o.power) * f * v.nr
+}
+
 // ringLeast is the distance, in sizes, below which a point is taken to be that far off: on the surface, the limit.
 const ringLeast = 0x1p-60
 
 // add integrates over the generatrix.
 func (o *ringSurface) add(v *ringView, c *constant, k *cosine) {
 	m := v.path()
+	if o.power > 0 {
+		m.degree, m.longest = float64(o.power), v.length()/(1+float64(o.power)/4)
+	}
 	unit := v.unit()
 	var one constant
 	var two cosine
@@ -57,8 +73,9 @@ func (o *ringSurface) add(v *ringView, c *constant, k *cosine) {
 		}
 		w *= unit
 		i := r.values(needLoop)
+		axial, slope := o.density(v, s)
 		if o.axial != 0 {
-			f := o.axial * nz
+			f := axial * nz
 			x, y := one.addRing(&r, &i, f*w)
 			p, q = p+f*x, q+f*y
 		}
@@ -70,13 +87,13 @@ func (o *ringSurface) add(v *ringView, c *constant, k *cosine) {
 		if o.gradient {
 			h := ringFifthOf(&r, &i)
 			if o.axial != 0 {
-				one.addSecond(&r, &i, &h, o.axial*nz*w, near)
+				one.addSecond(&r, &i, &h, axial*nz*w, near)
 			}
 			if o.across != 0 {
 				two.addSecond(&r, &i, &h, nr*w, near)
 			}
 			if near {
-				along.add(v, &r, &i, &h, nr, nz, o.axial*w, w)
+				along.add(v, &r, &i, &h, nr, nz, axial*w, slope*w, w)
 			}
 		}
 		return p, q
@@ -93,7 +110,7 @@ func (o *ringSurface) add(v *ringView, c *constant, k *cosine) {
 	}
 	if near {
 		if v.bend == 0 {
-			along.addEnds(v, o.axial)
+			along.addEnds(v, o)
 		}
 		along.turn(v, &one, &two)
 	}

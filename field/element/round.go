@@ -92,7 +92,7 @@ func (p *roundPoint) value(c *constant, k *cosine, t r3.Vec, want field.Want) fi
 		v.ErrPhi = over4P*u*(rounding*(c.sizeU+math.Abs(te)*p.rho*k.sizeS)+3*tn*p.rho*k.sizeS) +
 			3*u*math.Abs(v.Phi) + 8*u*u*p.reach*size // the last for the rounding of a pair
 		v.ErrG = over4P*rounding*u*(c.sizeG+tn*k.sizeG) + 4*u*size
-		v.ErrGrad = over4P * 2 * rounding * u * (c.sizeH + tn*k.sizeH)
+		v.ErrGrad = over4P * 4 * rounding * u * (c.sizeH + tn*k.sizeH)
 	}
 	return v
 }

@@ -29,10 +29,7 @@ type roundCase struct {
 		Cos, Sin float64
 		P        [3]float64
 	}
-	Points [][3]float64
-	Phi    []string
-	G      [][3]string
-	Tags   []string
+	referencePoints
 }
 
 // build returns the source in its own frame, the pose, the bounding radius and the largest density or polarization.
@@ -127,56 +124,14 @@ func loadRound(t *testing.T) []roundCase {
 // TestRoundReference holds potential, field and estimates against reference values, by the contract: an error is at
 // most 1e-12 of the value or 1e-15 of what the density could give there. The docs of the sources quote what is measured here.
 func TestRoundReference(t *testing.T) {
-	var over []float64
-	under, claims := 0, 0
+	var j judge
 	for _, c := range loadRound(t) {
-		src, pose, a, pmax := c.build(t)
-		power := 2.0
-		if k := c.Polarization.Kind; k == "sheet_linear" || k == "wall" {
-			power = 1
-		}
-		worst, worstPhi := 0.0, 0.0
-		for i := range c.Points {
-			x := vec(c.Points[i])
-			v := roundAt(src, pose, x, a, field.Mean, field.WantPhi|field.WantG|field.WantErr)
-			near := min(1, a/r3.Norm(r3.Sub(x, vec(c.Body.Centre))))
-			phi0, g0 := pmax*a*math.Pow(near, power), pmax*math.Pow(near, power+1)
-			judge := func(what string, e, size, floor, claim float64, worst *float64) {
-				ratio := e / (1e-12 * max(size, 1e-3*floor))
-				if !(ratio < 1) {
-					t.Errorf("%s at %v (%s): %s off by %.3g, %.2g of the tolerance; got %v, %v", c.ID, x, c.Tags[i], what, e, ratio, v.Phi, v.G)
-				}
-				*worst = max(*worst, ratio)
-				claims++
-				if e > claim {
-					under++
-					t.Logf("%s at %v (%s): %s off by %.3g, claim %.3g", c.ID, x, c.Tags[i], what, e, claim)
-				}
-				if size > 0 {
-					over = append(over, claim/max(e, u*size))
-				}
-			}
-			d, f := minus(t, v.Phi, c.Phi[i])
-			judge("phi", math.Abs(d), math.Abs(f), phi0, v.ErrPhi, &worstPhi)
-			if v.Status == field.OnEdge {
-				continue
-			}
-			e, size := offBy(t, v.G, c.G[i])
-			if v.Status == field.OnFace { // a turned reference point may lie 1e-16 off the face and be one-sided
-				for _, s := range []field.Side{field.Inside, field.Outside} {
-					o, _ := offBy(t, roundAt(src, pose, x, a, s, field.WantG).G, c.G[i])
-					e = min(e, o)
-				}
-			}
-			judge("g", e, size, g0, v.ErrG, &worst)
-		}
-		t.Logf("%-34s worst of the tolerance: phi %.2g, g %.2g", c.ID, worstPhi, worst)
+		src, pose, a, peak := c.build(t)
+		kind := c.Polarization.Kind
+		j.hold(t, &referenceCase{id: c.ID, src: src, pose: pose, centre: c.Body.Centre, bound: a, peak: peak,
+			sheet: kind == "sheet_linear" || kind == "wall", aim: 1e-12, referencePoints: &c.referencePoints})
 	}
-	slices.Sort(over)
-	t.Logf("%d of %d estimates too small; overestimate: median %.3g, 99 %% %.3g", under, claims, over[len(over)/2], over[len(over)*99/100])
-	if 1000*under > claims || over[len(over)/2] > 100 { // the contract on estimates
-		t.Errorf("%d of %d estimates too small, median overestimate %.3g", under, claims, over[len(over)/2])
-	}
+	j.settle(t)
 }
 
 // offBy returns |got - want| and |want|.

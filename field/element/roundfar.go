@@ -116,17 +116,20 @@ func (m *roundMultipoles) sum(p *roundPoint, want field.Want) (c constant, k cos
 	return c, k
 }
 
-// sizes bounds the sums of the sizes of the terms by those of the first terms; the degrees above fall like t^l.
+// sizes bounds the sums of the sizes of the terms by those of the first terms; the degrees above fall like t^l. Degree l feels
+// the rounding of 1/R, 2 u, l + 1 times and that of c, 3.5 u, up to l(l+1)/2 times: more than value allows from l = 2 on.
 func (m *roundMultipoles) sizes(c *constant, k *cosine, t, ir float64) {
 	tl := 1.0
 	for l := range 12 {
-		a, b, n := math.Abs(m.a[l])*tl*ir, math.Abs(m.b[l])*tl*ir*ir, float64(l+1)
+		n := float64(l + 1)
+		w := tl * ir * (1 + float64(l*l)/6)
+		a, b := math.Abs(m.a[l])*w, math.Abs(m.b[l])*w*ir
 		c.sizeU += a
 		c.sizeG += a * n * ir
-		c.sizeH += a * n * n * ir * ir
+		c.sizeH += a * n * (n + 1) * ir * ir
 		k.sizeS += b * n
 		k.sizeG += b * n * n
-		k.sizeH += b * n * n * n * ir
+		k.sizeH += b * n * n * (n + 1) * ir
 		tl *= t
 	}
 }

@@ -64,6 +64,9 @@ func (r *rim) values(what need) (v rimValues) {
 	return v
 }
 
+// axialSize returns the magnitude behind bz, far off the difference of larger terms.
+func (r *rim) axialSize(v *rimValues) float64 { return math.Abs(r.d)*v.s3a + r.rho*math.Abs(v.d3a) }
+
 // setDisc sets the solid angle on the side that sign says, and what else comes from series far off.
 func (r *rim) setDisc(v *rimValues, omega float64) {
 	v.solid = onSide(omega, r.z, r.sign, r.d)
@@ -146,7 +149,7 @@ func (s *sheet) addDisc(r *rim, v *rimValues, w float64) {
 	w = math.Abs(w)
 	s.sizeU += w * (math.Abs(r.d)*v.u + r.rho*(v.u+v.t1)*0.5 + 2*math.Pi*math.Abs(r.z))
 	s.sizeG += w * (v.t1 + 2*math.Pi)
-	s.sizeH += w * (v.t1r + math.Abs(v.bz) + math.Abs(v.br))
+	s.sizeH += w * (v.t1r + r.axialSize(v) + math.Abs(v.br))
 }
 
 // add adds w times a sheet.
@@ -206,7 +209,7 @@ func annulus(o, i *rim, what need) (s sheet) {
 		if what&needLoop != 0 {
 			vo, vi := o.values(needLoop), i.values(needLoop)
 			s.byRho, s.zz, s.rhoZ = vi.t1r-vo.t1r, vo.bz-vi.bz, vo.br-vi.br
-			s.sizeH = vi.t1r + vo.t1r + math.Abs(vo.bz) + math.Abs(vi.bz) + math.Abs(vo.br) + math.Abs(vi.br)
+			s.sizeH = vi.t1r + vo.t1r + o.axialSize(&vo) + i.axialSize(&vi) + math.Abs(vo.br) + math.Abs(vi.br)
 		}
 		return s
 	}

@@ -41,7 +41,7 @@ func (k *cosine) addCosine(r1, r2 *rim, v1, v2 *rimValues, within, w float64) {
 	size := math.Abs(full) + math.Abs(v1.s) + math.Abs(v2.s)
 	k.sizeS += w * size
 	k.sizeG += w * (2*size + math.Abs(v1.solid) + math.Abs(v2.solid) + math.Abs(jump) + v1.t1 + v2.t1)
-	k.sizeH += w * (v1.t1r + v2.t1r + math.Abs(v1.br) + math.Abs(v2.br) + math.Abs(v1.bz) + math.Abs(v2.bz) +
+	k.sizeH += w * (v1.t1r + v2.t1r + math.Abs(v1.br) + math.Abs(v2.br) + r1.axialSize(v1) + r2.axialSize(v2) +
 		size/max(r1.rho, 1e-5*r1.a))
 }
 

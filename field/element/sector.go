@@ -258,7 +258,7 @@ func (b *sector) here(p *sectorPoint, q field.Point, want field.Want) field.Valu
 	v := field.Value{Phi: over4P * s.phi, G: r3.Scale(over4P, s.vec(p))}
 	if want&field.WantErr != 0 {
 		c := b.integrate(p, &sectorCheck, want)
-		v.ErrPhi = over4P * (10*math.Abs(c.phi-s.phi) + 16*u*c.sizePhi)
+		v.ErrPhi = over4P * (10*math.Abs(c.phi-s.phi) + 8*u*c.sizePhi)
 		off := math.Sqrt((c.e-s.e)*(c.e-s.e) + (c.t-s.t)*(c.t-s.t) + (c.z-s.z)*(c.z-s.z))
 		v.ErrG = over4P * (10*off + 12*u*c.sizeG)
 	}

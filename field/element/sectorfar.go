@@ -56,7 +56,7 @@ func (b *sector) enclose() {
 	b.size = math.Hypot(best, half) * (1 + 8*u)
 }
 
-// afar returns the value of the expansion. The estimates allow for the sum over thousands of nodes, two to four times
+// afar returns the value of the expansion. The estimates allow for the sum over thousands of nodes, twice
 // what Moments does, and for the rounding of their positions, which counts where the body is small and far from the axis.
 func (b *sector) afar(x field.Point, want field.Want) field.Value {
 	v := b.moments().Value(x, want)
@@ -65,7 +65,7 @@ func (b *sector) afar(x field.Point, want field.Want) field.Value {
 	}
 	shift := 2 * u * b.unit * (r3.Norm(b.centre) + b.size)
 	r := r3.Norm(r3.Sub(x.X.Value(), r3.Scale(b.unit, b.centre)))
-	v.ErrPhi = 4*v.ErrPhi + shift*3*math.Abs(v.Phi)/r
+	v.ErrPhi = 2*v.ErrPhi + shift*3*math.Abs(v.Phi)/r
 	v.ErrG = 2*v.ErrG + shift*4*r3.Norm(v.G)/r
 	if want&field.WantGrad != 0 {
 		size := 0.0

@@ -44,7 +44,7 @@ func (b *sector) slope(p *sectorPoint) (tensor, float64) {
 			off += d * d
 		}
 	}
-	return p.turned(&main), 10*math.Sqrt(off) + 16*u*size
+	return main.turned(p.e), 10*math.Sqrt(off) + 16*u*size
 }
 
 func (b *sector) slopeBy(p *sectorPoint, rule *sectorRule) (t tensor, size float64) {

@@ -1,6 +1,10 @@
 package element
 
-import "math"
+import (
+	"math"
+
+	"gonum.org/v1/gonum/spatial/r3"
+)
 
 // sectorHess gathers 4 pi times the gradient of g of the affine part, in the frame of a sectorPoint.
 //
@@ -267,9 +271,9 @@ func (s *sectorHess) addRound(w, a, sigma, c, sn, pe, pt float64, line *segment,
 	s.size += math.Hypot(real(f), imag(f)) + math.Abs(w*sigma)*(cube0*line.r0+cube1*line.r1)
 }
 
-// turned returns the tensor in the frame of the body.
-func (p *sectorPoint) turned(t *tensor) (r tensor) {
-	x := [3][3]float64{{p.e.X, p.t.X, 0}, {p.e.Y, p.t.Y, 0}, {0, 0, 1}}
+// turned returns the tensor in the frame of the body, from that of e, the unit vector across it, and z.
+func (t *tensor) turned(e r3.Vec) (r tensor) {
+	x := [3][3]float64{{e.X, -e.Y, 0}, {e.Y, e.X, 0}, {0, 0, 1}}
 	for i := range r {
 		for j := range r {
 			for k := range r {

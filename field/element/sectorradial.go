@@ -32,10 +32,11 @@ func (s *sectorSum) addRadial(b *sector, p *sectorPoint, n *sectorPanel) {
 		for l, z := range p.zeta {
 			w2 := across*across + z*z
 			r[l] = [2]float64{math.Sqrt(t0*t0 + w2), math.Sqrt(t1*t1 + w2)}
-			i0, i1 := 1/r[l][0], 1/r[l][1]
 			line := segment{t0, t1, a1 - a0, w2, r[l][0], r[l][1]}
-			s1 := rc*line.cube() - line.inverse()
-			q := a1*i1 - a0*i0 - line.log() // rho cos S1 - S2
+			// with s = t + rho cos: three terms each of the size of the wall, however thin
+			cube, inverse, log := line.cube(), line.inverse(), line.log()
+			s1 := rc*cube - inverse
+			q := w2*cube + rc*inverse - log // rho cos S1 - S2
 			w := float64(2*l-1) * nd.w
 			s.e += w * z * s1 * c
 			s.t += w * z * s1 * sn
@@ -44,8 +45,10 @@ func (s *sectorSum) addRadial(b *sector, p *sectorPoint, n *sectorPanel) {
 				s.phi -= w * z * (rc*s1 - q)
 			}
 			if s.size {
-				s.sizeG += nd.w * (math.Abs(z*s1) + math.Abs(q))
-				s.sizePhi += nd.w * math.Abs(z) * (math.Abs(rc*s1) + math.Abs(q))
+				size1 := math.Abs(rc)*cube + math.Abs(inverse)
+				size := w2*cube + math.Abs(rc*inverse) + log
+				s.sizeG += nd.w * (math.Abs(z)*size1 + size)
+				s.sizePhi += nd.w * math.Abs(z) * (math.Abs(rc)*size1 + size)
 			}
 		}
 		if !s.potential {

@@ -163,6 +163,8 @@ func every(t *testing.T) map[string]field.Evaluator {
 		"ChargedBall":   ChargedBall{geom.Sphere{Radius: 1}, 1.5},
 		"ChargedSphere": ChargedSphere{geom.Sphere{Radius: 1}, 1.5},
 		"Ellipsoid":     e,
+		"affine": must(NewAffineEllipsoid(geom.Ellipsoid{SemiAxes: r3.Vec{X: 0.75, Y: 1, Z: 0.5}},
+			field.Affine{Value: p, Gradient: [3][3]float64{{0.5, -1.25, 0.75}, {2, -0.25, 1.5}, {-1, 0.625, 1.75}}})),
 	}
 }
 

@@ -45,17 +45,24 @@ func (s Sphere) value(p field.Point, side field.Side) field.Value {
 	return onFace(s.inside(p.X), s.outside(p.X, n, r), side)
 }
 
-// inside returns phi = P.x/3, g = -P/3.
+// inside returns phi = P.x/3, g = -P/3. The estimates of this and of what follows allow for components of P that a turn
+// into the frame of the sphere has rounded: u |P|, which phi feels where x is across P.
 func (s Sphere) inside(x pair.Vec) field.Value {
-	phi := along(s.P, x, 3)
-	return field.Value{Phi: phi, G: r3.Scale(-1.0/3, s.P), ErrPhi: 4 * u * math.Abs(phi), ErrG: 2 * u * r3.Norm(s.P)}
+	phi, size := along(s.P, x, 3), r3.Norm(s.P)
+	return field.Value{
+		Phi: phi, G: r3.Scale(-1.0/3, s.P),
+		ErrPhi: u * (4*math.Abs(phi) + size*r3.Norm(x.Value())/2), ErrG: 2 * u * size,
+	}
 }
 
 // outside returns the dipole of moment (4 pi/3) a^3 P.
 func (s Sphere) outside(x pair.Vec, n r3.Vec, r float64) field.Value {
 	a := s.Shape.Radius
 	q := a / r
-	return dipolar(s.P, along(s.P, x, r), q*q*a/3, n, r)
+	e := q * q * a / 3
+	v := dipolar(s.P, along(s.P, x, r), e, n, r)
+	v.ErrPhi += 2 * u * e * r3.Norm(s.P)
+	return v
 }
 
 // HollowSphere is the field of a uniformly polarized hollow sphere about the origin: the sphere Outer less Inner.
@@ -112,7 +119,7 @@ func (s HollowSphere) wall(x pair.Vec, n r3.Vec, r, h float64) field.Value {
 	v := dipolar(s.P, pn, -c*r/3, n, r)
 	v.Phi = phi
 	v.G = r3.Vec{X: -k/3*s.P.X - c*pn*n.X, Y: -k/3*s.P.Y - c*pn*n.Y, Z: -k/3*s.P.Z - c*pn*n.Z}
-	v.ErrPhi = 64 * u * math.Abs(phi) // h alone: 28 u
+	v.ErrPhi = 64*u*math.Abs(phi) + u*math.Abs(k)*r/2*r3.Norm(s.P) // h alone: 28 u
 	v.ErrG = 64*u*math.Abs(k)/3*r3.Norm(s.P) + 28*u*c*math.Abs(pn)
 	return v
 }
@@ -121,7 +128,9 @@ func (s HollowSphere) wall(x pair.Vec, n r3.Vec, r, h float64) field.Value {
 func (s HollowSphere) outside(x pair.Vec, n r3.Vec, r float64) field.Value {
 	a, b := s.Shape.Inner, s.Shape.Outer
 	e := (b - a) / r * (b*(b/r) + a*(b/r) + a*(a/r)) / 3
-	return dipolar(s.P, along(s.P, x, r), e, n, r)
+	v := dipolar(s.P, along(s.P, x, r), e, n, r)
+	v.ErrPhi += 2 * u * e * r3.Norm(s.P)
+	return v
 }
 
 // ChargedBall is the field of a sphere about the origin with uniform volume charge.

@@ -74,7 +74,7 @@ func (s *AffineSphere) wall(x, n r3.Vec, r, up, down float64) field.Value {
 	}
 	q3 := q * q * q
 	q5 := q3 * q * q
-	sx := s.times(x)
+	sx := tensorTimes(&s.s, x)
 	xsx := r3.Dot(x, sx)
 	v := field.Value{Phi: k3*r3.Dot(s.p, x)/3 + k5*xsx/5 - s.trace/2*down*(s.outer+r)}
 	g := r3.Add(r3.Scale(-k3/3, s.p), r3.Scale(-0.4*k5, sx))
@@ -89,10 +89,10 @@ func (s *AffineSphere) wall(x, n r3.Vec, r, up, down float64) field.Value {
 	for k := range 3 {
 		v.Grad[k] -= s.trace
 	}
-	p, size := r3.Norm(s.p), s.norm()*r
+	p, size := r3.Norm(s.p), tensorNorm(&s.s)*r
 	v.ErrPhi = 32 * u * (k3*p*r + math.Abs(s.trace)*down*s.outer + k5*size*r)
 	v.ErrG = 32 * u * (p + math.Abs(s.trace)*r + size)
-	v.ErrGrad = 8 * u * (math.Abs(s.trace) + s.norm())
+	v.ErrGrad = 8 * u * (math.Abs(s.trace) + tensorNorm(&s.s))
 	if s.inner > 0 {
 		less := s.layers(x, n, r, s.inner*s.inner*s.inner, s.inner*s.inner*s.inner*s.inner*s.inner)
 		for k := range v.Grad {
@@ -115,7 +115,13 @@ func powerDifference(b, a float64) float64 {
 // layers returns the dipole part a3 P.n/(3 r^2) and the quadrupole part a5 n.S n/(5 r^3).
 func (s *AffineSphere) layers(x, n r3.Vec, r, a3, a5 float64) field.Value {
 	v := dipolar(s.p, r3.Dot(s.p, n), a3/(3*r*r), n, r)
-	sn := s.times(n)
+	addQuadrupole(&v, &s.s, a5, n, r)
+	return v
+}
+
+// addQuadrupole adds the potential a5 n.S n/(5 r^3) of a symmetric S with trace zero at the place r n, with what follows.
+func addQuadrupole(v *field.Value, s *[3][3]float64, a5 float64, n r3.Vec, r float64) {
+	sn := tensorTimes(s, n)
 	q := r3.Dot(n, sn)
 	e := a5 / 5 / r / r / r // phi = e q
 	f := e / r
@@ -126,24 +132,23 @@ func (s *AffineSphere) layers(x, n r3.Vec, r, a3, a5 float64) field.Value {
 	nn, ss := [3]float64{n.X, n.Y, n.Z}, [3]float64{sn.X, sn.Y, sn.Z}
 	for k, ij := range tensorOrder {
 		i, j := ij[0], ij[1]
-		d := -35*q*nn[i]*nn[j] + 10*(nn[i]*ss[j]+nn[j]*ss[i]) - 2*s.s[i][j]
+		d := -35*q*nn[i]*nn[j] + 10*(nn[i]*ss[j]+nn[j]*ss[i]) - 2*s[i][j]
 		if i == j {
 			d += 5 * q
 		}
 		v.Grad[k] += t * d
 	}
-	size := s.norm()
+	size := tensorNorm(s)
 	v.ErrPhi += 16 * u * math.Abs(e) * size
 	v.ErrG += 64 * u * math.Abs(f) * size
 	v.ErrGrad += 400 * u * math.Abs(t) * size
-	return v
 }
 
 // tensorOrder is the order xx, yy, zz, xy, xz, yz.
 var tensorOrder = [6][2]int{{0, 0}, {1, 1}, {2, 2}, {0, 1}, {0, 2}, {1, 2}}
 
-func (s *AffineSphere) times(v r3.Vec) r3.Vec {
-	m := &s.s
+// tensorTimes returns M v.
+func tensorTimes(m *[3][3]float64, v r3.Vec) r3.Vec {
 	return r3.Vec{
 		X: m[0][0]*v.X + m[0][1]*v.Y + m[0][2]*v.Z,
 		Y: m[1][0]*v.X + m[1][1]*v.Y + m[1][2]*v.Z,
@@ -151,10 +156,10 @@ func (s *AffineSphere) times(v r3.Vec) r3.Vec {
 	}
 }
 
-// norm returns the Frobenius norm of S.
-func (s *AffineSphere) norm() float64 {
+// tensorNorm returns the Frobenius norm.
+func tensorNorm(m *[3][3]float64) float64 {
 	t := 0.0
-	for _, row := range s.s {
+	for _, row := range m {
 		t += row[0]*row[0] + row[1]*row[1] + row[2]*row[2]
 	}
 	return math.Sqrt(t)

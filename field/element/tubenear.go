@@ -147,8 +147,10 @@ func (n *tubePoint) near(want field.Want) field.Value {
 			n.addLayers(i, &c, &k, axial, transverse && !shells, want)
 			continue
 		case !axial:
-		case form == closeFlat:
+		case form == closeFlat && 2*b.half <= thin*n.walls[i].radius:
 			n.addFlat(i, &c, want)
+		case form == closeFlat: // a bore that is narrow beside the height: its potentials hardly cancel
+			n.addEnds(n.walls[i:i+1], &c, want)
 		case form == closeLayers:
 			n.addCloseLayers(i, &c, want)
 		case some:
@@ -228,7 +230,8 @@ func (n *tubePoint) addEnds(walls []tubeWall, c *constant, want field.Want) {
 	}
 }
 
-// addFlat is addEnds for a flat body of uniform polarization at a point close to its wall: only the potential cancels,
+// addFlat is addEnds for a flat body of uniform polarization at a point close to its wall, which is lower than thin radii:
+// only the potential cancels,
 //
 //	I = d U + rho (U - T1) - z Omega,
 //

@@ -160,7 +160,9 @@ func (n *tubePoint) addShells(k *cosine, want field.Want) {
 	for i := range r.count {
 		n.addShell(&r.shells[i], k)
 	}
-	k.tau += 4 * math.Pi * n.inside()
+	step := 4 * math.Pi * n.inside()
+	k.tau += step
+	k.sizeG += step
 	if want&field.WantGrad != 0 {
 		var only cosine
 		for i := range n.count {

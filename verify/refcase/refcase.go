@@ -26,6 +26,7 @@ type Case struct {
 	Points       [][3]float64
 	Phi          []string
 	G            [][3]string
+	Grad         [][6]string // gradient of g: xx, yy, zz, xy, xz, yz; nil if the case has none
 	Region       []string
 	Tags         []string
 	Method       string
@@ -52,6 +53,11 @@ type Body struct {
 	Top      float64 `json:"radius_top_at_z=+half_length"`
 	Major    float64 `json:"major_radius"`
 	Minor    float64 `json:"minor_radius"`
+	// Of a prism: polygon in the local plane z = 0, drawn out to the planes -+height/2 + slope.(x, y).
+	Base        [][2]float64
+	Height      float64
+	BottomSlope [2]float64 `json:"bottom_slope"`
+	TopSlope    [2]float64 `json:"top_slope"`
 }
 
 // Polarization is what the body or sheet carries, in global components.
@@ -231,13 +237,16 @@ func (c *Case) Ball() (centre r3.Vec, radius float64, err error) {
 	switch b.Type {
 	case "box":
 		return centre, r3.Norm(Vec(*b.Half)), nil
-	case "polyhedron", "polygon":
-		lo, hi := Vec(b.Vertices[0]), Vec(b.Vertices[0])
-		for _, v := range b.Vertices {
-			lo = r3.Vec{X: min(lo.X, v[0]), Y: min(lo.Y, v[1]), Z: min(lo.Z, v[2])}
-			hi = r3.Vec{X: max(hi.X, v[0]), Y: max(hi.Y, v[1]), Z: max(hi.Z, v[2])}
+	case "polyhedron", "polygon", "prism":
+		corners := c.corners()
+		lo, hi := corners[0], corners[0]
+		for _, v := range corners {
+			lo = r3.Vec{X: min(lo.X, v.X), Y: min(lo.Y, v.Y), Z: min(lo.Z, v.Z)}
+			hi = r3.Vec{X: max(hi.X, v.X), Y: max(hi.Y, v.Y), Z: max(hi.Z, v.Z)}
 		}
 		return r3.Scale(0.5, r3.Add(lo, hi)), 0.5 * r3.Norm(r3.Sub(hi, lo)), nil
+	case "point", "dipole":
+		return centre, 0, nil
 	case "disc", "sphere":
 		return centre, b.Radius, nil
 	case "annulus", "spherical_shell":
@@ -269,6 +278,8 @@ func (c *Case) largest() (p float64, sheet bool, err error) {
 	switch q.Kind {
 	case "uniform":
 		return r3.Norm(Vec(q.P)), false, nil
+	case "charge", "moment": // no size: all tolerances are relative
+		return 0, false, nil
 	case "axial_z":
 		return math.Abs(q.C) * c.Body.HalfLen, false, nil
 	case "radial_unit":
@@ -325,16 +336,29 @@ func (c *Case) corners() []r3.Vec {
 	for _, v := range c.Body.Vertices {
 		out = append(out, Vec(v))
 	}
+	pose, err := c.Pose()
+	if err != nil {
+		return out
+	}
+	for _, v := range c.localCorners() {
+		out = append(out, pose.ToOuter(pair.VecOf(v)).Value())
+	}
+	return out
+}
+
+// localCorners returns the vertices of a body that is given in a frame of its own.
+func (c *Case) localCorners() []r3.Vec {
+	var out []r3.Vec
 	if c.Body.Half != nil {
-		pose, err := c.Pose()
-		if err != nil {
-			return out
-		}
 		h := Vec(*c.Body.Half)
 		for k := range 8 {
 			s := func(bit int) float64 { return float64(k>>bit&1)*2 - 1 }
-			v := r3.Vec{X: s(0) * h.X, Y: s(1) * h.Y, Z: s(2) * h.Z}
-			out = append(out, pose.ToOuter(pair.VecOf(v)).Value())
+			out = append(out, r3.Vec{X: s(0) * h.X, Y: s(1) * h.Y, Z: s(2) * h.Z})
+		}
+	}
+	for _, v := range c.Body.Base {
+		for sign, slope := range map[float64][2]float64{-1: c.Body.BottomSlope, 1: c.Body.TopSlope} {
+			out = append(out, r3.Vec{X: v[0], Y: v[1], Z: sign*c.Body.Height/2 + slope[0]*v[0] + slope[1]*v[1]})
 		}
 	}
 	return out

@@ -1,9 +1,10 @@
 // Command report runs the verification suite and prints one line a case.
 //
-//	go run ./verify/report [-family NAME] [-json FILE] [-spoil RELATIVE]
+//	go run ./verify/report [-family NAME] [-all] [-json FILE] [-spoil RELATIVE]
 //
 // -json writes all cases as a list of objects {id, family, kind, source, expected, got, error, tolerance, ok}, null where
-// there is no number; the file appears whole or not at all. -spoil multiplies every field under test by 1 + RELATIVE
+// there is no number; the file appears whole or not at all. -all evaluates every triple of the family "estimates", of
+// which the slow ones are sampled otherwise. -spoil multiplies every field under test by 1 + RELATIVE
 // first, to see which cases notice.
 //
 // The exit status is 0 if all cases pass, 1 if one fails, 2 if the command could not do its work.
@@ -34,10 +35,11 @@ func run(ctx context.Context, args []string, out, complaints io.Writer) int {
 	flags := flag.NewFlagSet("report", flag.ContinueOnError)
 	flags.SetOutput(complaints)
 	family := flags.String("family", "", "run only the family `NAME`")
+	all := flags.Bool("all", false, "evaluate every triple of the estimates, not a fixed sample of the slow ones: minutes")
 	file := flags.String("json", "", "write the cases to `FILE`")
 	spoil := flags.Float64("spoil", 0, "multiply every field under test by 1 + `RELATIVE`, to see the suite fail")
 	flags.Usage = func() {
-		fmt.Fprintln(complaints, "usage: report [-family NAME] [-json FILE] [-spoil RELATIVE]")
+		fmt.Fprintln(complaints, "usage: report [-family NAME] [-all] [-json FILE] [-spoil RELATIVE]")
 		flags.PrintDefaults()
 		fmt.Fprintln(complaints, "families:", strings.Join(names(), ", "))
 	}
@@ -48,7 +50,7 @@ func run(ctx context.Context, args []string, out, complaints io.Writer) int {
 		fmt.Fprintf(complaints, "report: argument %q is not used; give flags only\n", flags.Arg(0))
 		return 2
 	}
-	o := &verify.Options{Family: *family}
+	o := &verify.Options{Family: *family, All: *all}
 	if *spoil != 0 {
 		o.Alter = func(src field.Source) field.Source { return field.Scaled{Source: src, Factor: 1 + *spoil} }
 	}

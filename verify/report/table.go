@@ -2,9 +2,11 @@ package main
 
 import (
 	"bufio"
+	"cmp"
 	"fmt"
 	"io"
 	"math"
+	"slices"
 	"strconv"
 	"unicode/utf8"
 
@@ -16,6 +18,8 @@ const (
 	row        = "%s %-36s %14s %14s %8s %8s  %s\n"
 	nameWidth  = 36
 	placeWidth = 31
+
+	sampleWidth = 22 // of the source beside a table of cells
 )
 
 // writeTable prints the cases by family, the failures once more, the counts and the verdict.
@@ -33,7 +37,14 @@ func writeTable(to io.Writer, cases []verify.Case) error {
 		if c.Family != family {
 			family = c.Family
 			fmt.Fprintf(out, "\n%s\n%s\n", family, about[family])
-			fmt.Fprintf(out, row, " ", "case", "expected", "got", "error", "allowed", "source")
+			if _, _, ok := c.Cell(); ok {
+				writeSideBySide(out, cases[i:])
+			} else {
+				fmt.Fprintf(out, row, " ", "case", "expected", "got", "error", "allowed", "source")
+			}
+		}
+		if _, _, ok := c.Cell(); ok {
+			continue
 		}
 		mark := " "
 		if !c.OK {
@@ -45,6 +56,42 @@ func writeTable(to io.Writer, cases []verify.Case) error {
 	writeFailures(out, cases)
 	writeCounts(out, cases)
 	return out.Flush()
+}
+
+// writeSideBySide prints the family of the first case with a line for each row of its table: the values, and an x after one
+// that fails.
+func writeSideBySide(out io.Writer, cases []verify.Case) {
+	var rows, columns []string
+	cells, source := map[[2]string]string{}, map[string]string{}
+	for i := range cases {
+		c := &cases[i]
+		r, k, _ := c.Cell()
+		if c.Family != cases[0].Family {
+			break
+		}
+		if !slices.Contains(rows, r) {
+			rows = append(rows, r)
+		}
+		if !slices.Contains(columns, k) {
+			columns = append(columns, k)
+		}
+		cells[[2]string{r, k}] = strconv.FormatFloat(c.Got, 'g', 4, 64)
+		if !c.OK {
+			cells[[2]string{r, k}] += " x"
+		}
+		source[r] = c.Source.String()
+	}
+	line := func(name string, cell func(column string) string, last string) {
+		fmt.Fprintf(out, "  %-17s", name)
+		for _, k := range columns {
+			fmt.Fprintf(out, " %10s", cell(k))
+		}
+		fmt.Fprintf(out, "  %s\n", last)
+	}
+	line("case", func(column string) string { return column }, "source")
+	for _, r := range rows {
+		line(r, func(column string) string { return cmp.Or(cells[[2]string{r, column}], "-") }, short(source[r], sampleWidth))
+	}
 }
 
 // writeFailures tells of each failed case what a reader needs to repeat it.

@@ -16,6 +16,7 @@ var stages = []string{
 	"field/element",
 	"field/cubature",
 	"field/bound",
+	"field/current field/image field/flux field/handover",
 	"geom/meshfile field/multipole field/force field/response field/inverse field/fieldfile field/plot",
 	"charge magnet",
 	"verify/... examples/...",
@@ -28,9 +29,11 @@ var apart = []struct {
 	foreign string // all foreign packages that the room may import; empty: those of every room
 	users   string // who may import the room; empty: by the order
 }{
-	{room: "field/codata", users: "charge magnet verify/... examples/..."},
+	{room: "field/codata", users: "charge magnet magnet/grade field/handover verify/... examples/..."},
 	{room: "field/closedform", foreign: "gonum.org/v1/gonum/spatial/r3 gonum.org/v1/gonum/mathext",
 		users: "verify/... examples/..."},
+	{room: "magnet/cgs", users: "magnet verify/... examples/..."},
+	{room: "magnet/grade", may: "field/codata", users: "magnet verify/... examples/..."},
 	{room: "geom/meshfile", may: "geom/pair geom"},
 	{room: "verify/law", may: "geom/pair geom field", users: "verify/... examples/..."},
 	{room: "verify/refcase", may: "geom/pair geom"},

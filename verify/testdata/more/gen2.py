@@ -3,7 +3,9 @@
 
 gen2.py verify REF.json [PREFIX...]   recompute the cases that this program knows
 gen2.py make OUT.json [PREFIX...]     write the cases of cases2.py (all, or those whose name starts so); kept values are reused
-gen2.py triples SEED COUNT FAMILY [OUT.json]   random bodies and points of a family of sampler.py, values of >= 20 digits
+gen2.py triples SEED COUNT FAMILY OUT.json.gz   random bodies and points of a family of closed.py (closed forms) or sampler.py
+                                                (integrals), values of >= 20 digits
+gen2.py brute FAMILY...               values of a family of closed.py against quadrature of the dipole density: digits of agreement
 """
 import json
 import os
@@ -68,8 +70,12 @@ if __name__ == "__main__":
         make(sys.argv[2], sys.argv[3:])
     elif sys.argv[1] == "verify":
         verify(sys.argv[2], sys.argv[3:] or [""])
+    elif sys.argv[1] == "brute":
+        import closed
+        for family in sys.argv[2:]:
+            closed.brute(family)
     elif sys.argv[1] == "triples":
+        import closed
         import sampler
-        seed, count, family = sys.argv[2], int(sys.argv[3]), sys.argv[4]
-        path = sys.argv[5] if len(sys.argv) > 5 else os.path.join(os.path.dirname(os.path.abspath(__file__)), "triples-%s-%s.json" % (family, seed))
-        sampler.triples(seed, count, family, path)
+        seed, count, family, path = sys.argv[2], int(sys.argv[3]), sys.argv[4], sys.argv[5]
+        (closed if family in closed.FAMILIES else sampler).triples(seed, count, family, path)

@@ -1,10 +1,15 @@
-"""Multiprecision numbers of the integrators: gmpy2.mpfr, at the precision of mpmath (mp.dps); conversions both ways."""
+"""Multiprecision numbers of the integrators: gmpy2.mpfr (or mpf where gmpy2 is missing) at the precision of mpmath (mp.dps);
+conversions both ways."""
 import os
 import sys
 from fractions import Fraction as Fr
 
 sys.path[:0] = [os.path.dirname(os.path.abspath(__file__)), "../hard"]
-import gmpy2
+try:
+    import gmpy2
+except ImportError:                                  # mpmath alone will do
+    import plainmp as gmpy2
+    sys.modules["gmpy2"] = gmpy2
 from gmpy2 import atan, atan2, cos, log, log1p, mpfr, sin, sinh, cosh, asinh, sqrt, hypot  # noqa: F401
 from mpmath import mp, mpf
 
@@ -30,7 +35,7 @@ def N(q):
 
 def back(v):
     """mpf of an mpfr."""
-    if not isinstance(v, type(mpfr(0))):
+    if isinstance(v, mpf) or not isinstance(v, type(mpfr(0))):
         return mpf(v)
     if v == 0:
         return mpf(0)

@@ -1,6 +1,10 @@
-"""Random (body, polarization, point) triples with weight on hard places, values of >= 20 digits."""
+"""Random (body, polarization, point) triples with weight on hard places, values of >= 20 digits; closed forms: closed.py."""
+import gzip
+import json
 import math
+import os
 import random
+import time
 
 from num import *
 import cases
@@ -249,21 +253,22 @@ def draw_other(P, case, tag, r):
     return [(q.points[i], q.tags[i]) for i in r.sample(near, min(6, len(near))) + r.sample(rest, min(4, len(rest)))]
 
 
+def pack(path, cases):
+    """Write cases, a line each, as gzipped JSON without time stamp; words that only explain are left out."""
+    lean = lambda d: {k: v for k, v in d.items() if k not in ("frame", "angle", "note", "meaning")}
+    lines = [json.dumps({k: lean(v) if isinstance(v, dict) else v for k, v in c.items() if k != "size"}, separators=(",", ":")) for c in cases]
+    with open(path + ".part", "wb") as raw, gzip.GzipFile("", "wb", 9, raw, 0) as f:
+        f.write(("[\n" + ",\n".join(lines) + "\n]\n").encode())
+    os.replace(path + ".part", path)
+
+
 def triples(seed, count, family, path, digits=46, every=10):
-    import json
-    import os
-    import time
     r = random.Random("%s-%s" % (seed, family))
     make = FAMILIES[family]
     names, weights = [c[0] for c in CLASSES], [c[1] for c in CLASSES]
     out, t0, worst, k = [], time.time(), 99.0, 0
     if family in ("ellipsoid-affine", "box-polynomial", "cylinder-radial", "cylinder-axial"):
         digits = 70
-
-    def save():
-        with open(path + ".part", "w") as f:
-            f.write("[\n" + ",\n".join(json.dumps(c) for c in out) + "\n]\n")
-        os.replace(path + ".part", path)
     while len(out) < count:
         k += 1
         mp.dps = 60
@@ -314,9 +319,9 @@ def triples(seed, count, family, path, digits=46, every=10):
                 out.append({"id": "triple-%s-%s-%d" % (family, seed, len(out)), "body": b, "polarization": p, "size": case["size"],
                             "points": [x], "phi": [t(v[0])], "g": [[t(q) for q in v[1]]], "region": [v[2]], "tags": [tag]})
             if len(out) % 50 == 0:
-                save()
+                pack(path, out)
             if len(out) >= count:
                 break
-    save()
+    pack(path, out)
     print("%s seed %s: %d triples, %.1fs, least digits on a sample (every %dth, against more digits and nodes) %.1f"
           % (family, seed, len(out), time.time() - t0, every, worst), flush=True)

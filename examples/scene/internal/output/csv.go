@@ -9,7 +9,6 @@ import (
 
 	"example.com/boundpole/examples/scene/internal/scenefile"
 	"example.com/boundpole/examples/scene/internal/solve"
-	"example.com/boundpole/field"
 	"gonum.org/v1/gonum/spatial/r3"
 )
 
@@ -23,9 +22,27 @@ type Table struct {
 // NewTable returns a table, its metadata and header written.
 func NewTable(setup *solve.Setup, q *scenefile.Request, w io.Writer) *Table {
 	t := &Table{setup: setup, w: bufio.NewWriterSize(w, 1<<16)}
+	t.w.WriteString(metadata(setup, q))
+	header := "x[m],y[m],z[m]"
+	if setup.Electric {
+		header += ",V[V],Ex[V/m],Ey[V/m],Ez[V/m],Dx[C/m^2],Dy[C/m^2],Dz[C/m^2]"
+	}
+	if setup.Magnetic {
+		header += ",Vm[A],Hx[A/m],Hy[A/m],Hz[A/m],Bx[T],By[T],Bz[T]"
+	}
+	if setup.Guiding {
+		header += ",Ax[T*m],Ay[T*m],Az[T*m]"
+	}
+	t.w.WriteString(header + ",inside,status\n")
+	return t
+}
+
+// metadata returns the comment lines before the header.
+func metadata(setup *solve.Setup, q *scenefile.Request) string {
+	text := ""
 	meta := func(key, value string) {
 		if value != "" {
-			t.w.WriteString("# " + key + ": " + scenefile.OneLine(value) + "\n")
+			text += "# " + key + ": " + scenefile.OneLine(value) + "\n"
 		}
 	}
 	meta("scene", setup.Scene.Title)
@@ -34,15 +51,7 @@ func NewTable(setup *solve.Setup, q *scenefile.Request, w io.Writer) *Table {
 	meta("side", string(q.Side))
 	meta("units", "SI, lengths in m, frame of the scene; an empty field does not exist, see status")
 	meta("constants", string(constants()))
-	header := "x[m],y[m],z[m]"
-	if setup.Electric {
-		header += ",V[V],Ex[V/m],Ey[V/m],Ez[V/m],Dx[C/m^2],Dy[C/m^2],Dz[C/m^2]"
-	}
-	if setup.Magnetic {
-		header += ",Vm[A],Hx[A/m],Hy[A/m],Hz[A/m],Bx[T],By[T],Bz[T]"
-	}
-	t.w.WriteString(header + ",inside,status\n")
-	return t
+	return text
 }
 
 // Record writes one row.
@@ -59,18 +68,20 @@ func (t *Table) Record(rec *solve.Record) error {
 		t.vector(rec.Magnetic.H)
 		t.vector(rec.Magnetic.B)
 	}
+	if t.setup.Guiding {
+		t.vector(rec.Guide.A)
+	}
 	if rec.Inside >= 0 {
 		t.row = append(t.row, field1(t.setup.Parts[rec.Inside].Name)...)
 	}
 	t.row = append(t.row, ',')
-	if rec.Status != field.Regular {
-		t.row = append(t.row, rec.Status.String()...)
-	}
+	state := rec.State()
+	t.row = append(t.row, state...)
 	for i, name := range rec.Missed {
 		switch {
 		case i > 0:
 			t.row = append(t.row, ' ')
-		case rec.Status != field.Regular:
+		case state != "":
 			t.row = append(t.row, "; accuracy missed: "...)
 		default:
 			t.row = append(t.row, "accuracy missed: "...)

@@ -13,7 +13,6 @@ import (
 	"example.com/boundpole/charge"
 	"example.com/boundpole/examples/scene/internal/scenefile"
 	"example.com/boundpole/examples/scene/internal/solve"
-	"example.com/boundpole/field"
 	"example.com/boundpole/magnet"
 	"gonum.org/v1/gonum/spatial/r3"
 )
@@ -24,6 +23,8 @@ type Results struct {
 	w     *bufio.Writer
 	buf   []byte
 	count int // answers so far
+
+	nested []nesting
 }
 
 // NewResults returns a writer of answers; Head and Tail make a document of them.
@@ -247,13 +248,17 @@ func (r *Results) Record(i int, rec *solve.Record) error {
 		r.key("B")
 		r.vec(rec.Magnetic.B)
 	}
+	if s.Guiding {
+		r.key("A")
+		r.vec(rec.Guide.A)
+	}
 	if rec.Gradient != nil {
 		r.gradient(rec.Gradient)
 	}
 	r.estimates(rec)
-	if rec.Status != field.Regular {
+	if state := rec.State(); state != "" {
 		r.key("status")
-		r.text(rec.Status.String())
+		r.text(state)
 	}
 	if len(rec.Missed) > 0 {
 		r.key("accuracy_missed")
@@ -321,6 +326,9 @@ func (r *Results) estimates(rec *solve.Record) {
 		put("Vm", rec.Magnetic.ErrVm)
 		put("H", rec.Magnetic.ErrH)
 	}
+	if r.setup.Guiding {
+		put("A", rec.Guide.ErrA)
+	}
 	r.buf = append(r.buf, '}')
 }
 
@@ -347,6 +355,9 @@ func (r *Results) byPart(all []solve.Contribution) {
 			r.vec(c.H)
 			r.key("B")
 			r.vec(c.B)
+		case solve.Circulating:
+			r.key("A")
+			r.vec(c.A)
 		}
 		r.buf = append(r.buf, '}')
 	}

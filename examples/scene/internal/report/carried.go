@@ -24,6 +24,9 @@ func quantitiesOf(k solve.Kind) quantities {
 	if k == solve.Magnetized {
 		return quantities{"M", "dM", "g", "m"}
 	}
+	if k == solve.Circulating {
+		return quantities{"MA", "dA", "qA", "mA"}
+	}
 	return quantities{"P", "dP", "q", "p"}
 }
 

@@ -115,6 +115,12 @@ func (r *Report) unitOf(c *check, size float64) scale {
 	q := quantitiesOf(c.Kind)
 	l := r.setup.Unit
 	unit := string(r.setup.Scene.Length)
+	switch {
+	case c.Ladder == "L":
+		return scale{unit, l}
+	case c.Ladder != "":
+		return pick(c.Ladder, size)
+	}
 	switch c.Name {
 	case "area":
 		return scale{unit + "²", l * l}

@@ -5,6 +5,7 @@ import (
 	"io"
 	"math"
 	"slices"
+	"strings"
 
 	"example.com/boundpole/examples/scene/internal/scenefile"
 	"example.com/boundpole/examples/scene/internal/solve"
@@ -34,7 +35,7 @@ func (r *Report) Points(q *scenefile.Request) (see func(i int, rec *solve.Record
 
 func (l *listing) see(i int, rec *solve.Record) {
 	if len(rec.Missed) > 0 {
-		l.report.miss(l.q, i, rec)
+		l.report.miss(fmt.Sprintf("%s, point %d: %s.", titleOf(l.q), i, strings.Join(rec.Missed, ", ")))
 	}
 	if l.n <= mostRows {
 		l.records = append(l.records, *rec)
@@ -74,8 +75,8 @@ func (l *listing) end() {
 	fmt.Fprintf(w, "  %s%s\n", titleOf(l.q), side)
 	s := l.report.setup
 	switch {
-	case !s.Magnetic && !s.Electric:
-		fmt.Fprintln(w, "  no part carries polarization, magnetization or charge")
+	case !s.Magnetic && !s.Electric && !s.Guiding:
+		fmt.Fprintln(w, "  no part carries polarization, magnetization, charge or flux")
 	case l.n > mostRows:
 		l.summary(w)
 	default:
@@ -111,6 +112,15 @@ func (l *listing) rows(w io.Writer) {
 			ex, ey, ez, en, eu := vector("E", rec.Electric.E)
 			dx, dy, dz, _, du := vector("D", rec.Electric.D)
 			t.add(append(l.at(rec), ex, ey, ez, en, eu, dx, dy, dz, du, value("V", rec.Electric.V), l.where(rec, rec.Electric.Status, "a magnet", "V", "E"))...)
+		}
+		t.print(w)
+	}
+	if s.Guiding {
+		t := newTable(l.heads("Ax", "Ay", "Az", "|A|", "<", "<where")...)
+		for i := range l.records {
+			rec := &l.records[i]
+			ax, ay, az, an, au := vector("A", rec.Guide.A)
+			t.add(append(l.at(rec), ax, ay, az, an, au, l.where(rec, rec.Guide.Status, "a part", "A"))...)
 		}
 		t.print(w)
 	}
@@ -188,6 +198,8 @@ func (l *listing) where(rec *solve.Record, status field.Status, other string, va
 		}
 	}
 	switch {
+	case rec.Note != "":
+		return rec.Note
 	case status > field.OnFace && status != field.NotConverged: // what has not converged further may be as good as wanted
 		return status.String()
 	case rec.Inside >= 0:

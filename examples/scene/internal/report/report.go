@@ -18,9 +18,12 @@ type Report struct {
 	charges bytes.Buffer
 	sums    bytes.Buffer
 	fields  bytes.Buffer
-	checks  []check
-	short   []string // values that did not reach the wanted accuracy
-	shorts  int      // points with such values
+
+	forces, readings, travels bytes.Buffer
+
+	checks []check
+	short  []string // values that did not reach the wanted accuracy
+	shorts int      // points with such values
 }
 
 // check is a hand check with the name of its request.
@@ -54,6 +57,9 @@ func (r *Report) Print(w io.Writer, cautions []string) {
 	section("What each face carries", &r.charges)
 	section("Sums that must vanish", &r.sums)
 	section("Field where asked", &r.fields)
+	section("Force and torque", &r.forces)
+	section("Read, linked and reached", &r.readings)
+	section("Along the way", &r.travels)
 	r.printChecks(w)
 	list := func(name string, lines []string) {
 		if len(lines) == 0 {
@@ -84,11 +90,11 @@ func (r *Report) skipped() []string {
 // mostShort is how many points that missed the accuracy are named.
 const mostShort = 10
 
-// miss notes the values of a point that did not reach the wanted accuracy.
-func (r *Report) miss(q *scenefile.Request, i int, rec *solve.Record) {
+// miss notes what did not reach the wanted accuracy.
+func (r *Report) miss(what string) {
 	r.shorts++
 	if r.shorts <= mostShort {
-		r.short = append(r.short, fmt.Sprintf("%s, point %d: %s.", titleOf(q), i, strings.Join(rec.Missed, ", ")))
+		r.short = append(r.short, what)
 	}
 }
 
@@ -101,7 +107,7 @@ func (r *Report) unreached() []string {
 		plain(r.setup.Scene.Accuracy))}
 	out = append(out, r.short...)
 	if more := r.shorts - mostShort; more > 0 {
-		out = append(out, fmt.Sprintf("and %d more points.", more))
+		out = append(out, fmt.Sprintf("and %d more.", more))
 	}
 	return out
 }

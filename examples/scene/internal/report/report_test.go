@@ -2,6 +2,7 @@ package report
 
 import (
 	"bytes"
+	"fmt"
 	"math"
 	"strconv"
 	"strings"
@@ -182,12 +183,11 @@ func TestRelative(t *testing.T) {
 // TestShort checks what is said of values that did not reach the accuracy.
 func TestShort(t *testing.T) {
 	r := New(&solve.Setup{Scene: &scenefile.Scene{Accuracy: 1e-13}}, true)
-	q := &scenefile.Request{Kind: "points_file"}
 	for i := range 12 {
-		r.miss(q, i, &solve.Record{Missed: []string{"V", "E"}})
+		r.miss(fmt.Sprintf("points file, point %d: V, E.", i))
 	}
 	got := r.unreached()
-	if len(got) != 2+mostShort || got[1] != "points file, point 0: V, E." || got[len(got)-1] != "and "+strconv.Itoa(2)+" more points." {
+	if len(got) != 2+mostShort || got[1] != "points file, point 0: V, E." || got[len(got)-1] != "and "+strconv.Itoa(2)+" more." {
 		t.Errorf("%q", got)
 	}
 }

@@ -24,6 +24,12 @@ func (d *decoder) checkObject(n uint32, v any) error {
 		return d.checkParallelogram(n, v)
 	case *Grid:
 		return d.checkGrid(n, v)
+	case *Plane:
+		return d.checkPlane(n, v)
+	case *Reading:
+		return d.checkReading(n, v)
+	case *Linkage:
+		return d.checkLinkage(n, v)
 	}
 	return nil
 }
@@ -60,8 +66,13 @@ func (d *decoder) checkRequest(n uint32, r *Request) error {
 		}
 		r.Points = points
 	}
-	if d.points += r.Count(); d.points > MaxPoints {
-		return d.errorOn(at, fmt.Sprintf("more than %d points in all requests up to here", MaxPoints), "ask for fewer, or split the scene")
+	if err := d.checkAsked(at, r); err != nil {
+		return err
+	}
+	if r.Kind != "travel" { // what a travel asks is counted below, once for every position
+		if d.points += r.Count() * d.positions; d.points > MaxPoints {
+			return d.errorOn(at, fmt.Sprintf("more than %d points in all requests up to here", MaxPoints), "ask for fewer, or split the scene")
+		}
 	}
 	list, ok := d.member(n, "hand")
 	if !ok {
@@ -86,11 +97,20 @@ func (d *decoder) checkPart(n uint32, p *Part) error {
 		if err := d.checkCarried(n, p, carrier.key, "moment", carrier.p.Moment != nil); err != nil {
 			return err
 		}
+		if carrier.p.Grade != "" {
+			at, _ := d.member(n, carrier.key)
+			if err := d.fillGrade(at, carrier.p); err != nil {
+				return err
+			}
+		}
 	}
 	if p.Charged != nil {
 		if err := d.checkCarried(n, p, "charged", "charge", p.Charged.Charge != nil); err != nil {
 			return err
 		}
+	}
+	if err := d.checkCirculating(n, p); err != nil {
+		return err
 	}
 	if p.Class == Point && p.Polarized == nil && p.Magnetized == nil && p.Charged == nil {
 		return d.errorOn(n, "a point that carries nothing", `add "charged": {"charge": …}, or "polarized" or "magnetized": {"moment": […]}`)

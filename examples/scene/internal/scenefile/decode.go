@@ -23,6 +23,8 @@ type decoder struct {
 	outputs map[string]string               // folded name -> pointer of its key
 	bodies  map[string]int                  // name of a part or copy -> index of the part
 	points  int                             // asked for so far
+
+	positions int // at which a request is asked, more than one within a travel
 }
 
 // object decodes object n into dst, a struct; o says how.

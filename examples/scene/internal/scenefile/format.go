@@ -4,7 +4,7 @@ package scenefile
 func Format() *Table {
 	return &Table{Objects: []Object{
 		topLevel(), part(), rotation(), frame(), copies(), turn(),
-		polarized(), magnetized(), affine(), term(), axialPower(), power(), grade(), charged(),
+		polarized(), magnetized(), affine(), term(), axialPower(), power(), charged(),
 		applied(), plane(),
 		request(), line(), parallelogram(), grid(), reading(), linkage(), circle(), force(), reach(), travel(), hand(),
 	}}
@@ -22,7 +22,7 @@ func topLevel() Object {
 			key("temperature", atLeast(-273.15), `20`, "Acts on parts with a grade.").unit("°C").otherwise(`20`),
 			key("parts", list(1, object("part")), `[{"name": "bead", "shape": "sphere", "radius": 2, "polarized": {"uniform": [0, 0, 1e-6]}}]`, "The bodies.").required(),
 			key("applied", object("applied"), `{"B": [0, 0, 0.01]}`, "Uniform field from outside."),
-			key("planes", list(0, object("plane")), `[{"kind": "iron", "point": [0, 0, 0], "normal": [0, 0, 1]}]`, "Image planes; everything lies on the side of their normals.").status(Later),
+			key("planes", list(0, object("plane")), `[{"kind": "iron", "point": [0, 0, 0], "normal": [0, 0, 1]}]`, "Image planes; everything lies on the side of their normals. Two or three stand at right angles to each other."),
 			key("wanted", list(0, object("request")), `[{"charges": true}]`, "What is asked, answered in this order.").otherwise(`[{"charges": true}]`),
 		},
 	}

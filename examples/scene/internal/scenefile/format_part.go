@@ -15,7 +15,7 @@ func part() Object {
 			key("polarized", object("polarized"), `{"uniform": [0, 0, 1e-6]}`, "Electric polarization; bodies and points."),
 			key("magnetized", object("magnetized"), `{"remanence": [0, 0, 1.2]}`, "Magnetization; bodies and points."),
 			key("charged", object("charged"), `{"density": 1e-6}`, "Real charge; sheets and points."),
-			key("circulating", number(), `1e-6`, "A0: flux per metre that circulates in the thin curved wall of a cylinder, right-handed about z.").unit("T·m").status(Later),
+			key("circulating", number(), `1e-6`, "A0: flux per metre that circulates in the thin curved wall of a cylinder, right-handed about z: far from the ends the vector potential inside is A0 along z, and 0 outside.").unit("T·m"),
 			key("permittivity", permeable(), `4.5`, "Relative permittivity of a part that responds to the field.").status(Later),
 			key("permeability", permeable(), `1000`, "Relative permeability of a part that responds to the field.").status(Later),
 			key("curve", Type{Base: Input}, `"steel.csv"`, "File with a B–H or P–E table.").status(Later),
@@ -122,9 +122,11 @@ func magnetized() Object {
 			key("uniform", vector(), `[0, 0, 1e6]`, "Uniform magnetization.").unit("A/m"),
 			key("remanence", vector(), `[0, 0, 1.2]`, "Magnetic polarization J = µ0 M, equal to Br for a rigid magnet.").unit("T"),
 			key("moment", vector(), `[0, 0, 0.1]`, "Dipole moment of a point.").unit("A·m²"),
-			key("grade", object("grade"), `{"file": "grade.json", "along": [0, 0, 1]}`, "Remanence from grade data at the scene's temperature.").status(Later),
+			key("grade", Type{Base: Input}, `"grade.json"`, "File of grade data, in the scene's folder: typical remanence at the scene's temperature."),
+			key("along", direction(), `[0, 0, 1]`, "Direction of the remanence of a grade, of any length."),
 		}, laws("A/m")...),
-		Rules: []Rule{rule(ExactlyOne, "uniform", "remanence", "moment", "grade", "affine", "polynomial", "axial_power", "radial_power", "central_power")},
+		Rules: []Rule{rule(ExactlyOne, "uniform", "remanence", "moment", "grade", "affine", "polynomial", "axial_power", "radial_power", "central_power"),
+			rule(Together, "grade", "along"), rule(Together, "along", "grade")},
 	}
 }
 
@@ -180,16 +182,6 @@ func power() Object {
 		Keys: []Key{
 			key("coefficient", number(), `2`, "c, for distances in the file's unit.").required(),
 			key("power", between(-64, 64), `1`, "n.").required(),
-		},
-	}
-}
-
-func grade() Object {
-	return Object{
-		Name: "grade", Title: "A grade",
-		Keys: []Key{
-			key("file", Type{Base: Input}, `"grade.json"`, "File of grade data, in the scene's folder.").required(),
-			key("along", direction(), `[0, 0, 1]`, "Direction of the remanence, of any length.").required(),
 		},
 	}
 }

@@ -40,25 +40,26 @@ func requests() []Variant {
 		{Name: "grid", Doc: "Values in a box.",
 			Keys:  []Key{ask(object("grid"), "grid", `{"min": [0, 0, 0], "max": [1, 1, 1], "counts": [3, 3, 3]}`, "The box."), side, csv, vtk},
 			Gives: pointMeasures()},
-		{Name: "reading", Status: Later, Doc: "What a sensor reads: the mean of one component over its area.",
+		{Name: "reading", Doc: "What a sensor reads: the mean over its area of the component of B along its normal, of E in a scene without magnetized parts, of A in one with circulating parts only.",
 			Keys:  []Key{ask(object("reading"), "reading", `{"at": [0, 0, -1], "normal": [0, 0, 1], "disc": 0.2}`, "The sensor.")},
-			Gives: []Measure{{Name: "mean"}}},
-		{Name: "linkage", Status: Later, Doc: "Flux linkage of a coil.",
+			Gives: []Measure{{Name: "mean", Unit: "T or V/m"}}},
+		{Name: "linkage", Doc: "Flux linkage of a coil: turns times the flux of B of the magnetized and circulating parts and of the applied field.",
 			Keys:  []Key{ask(object("linkage"), "linkage", `{"circle": {"centre": [0, 0, 0], "normal": [0, 0, 1], "radius": 5}, "turns": 100}`, "The coil.")},
 			Gives: []Measure{{Name: "linkage", Unit: "Wb"}}},
-		{Name: "force", Status: Later, Doc: "Force and torque on a part from all other parts, the planes and the applied field. Electric and magnetic parts do not act on each other.",
+		{Name: "force", Doc: "Force and torque on a part from all other parts, the planes and the applied field. Electric, magnetic and circulating parts do not act on each other. A part with copies is named with the number of the copy.",
 			Keys:  []Key{ask(object("force"), "force", `{"on": "lid magnet"}`, "The part.")},
 			Gives: []Measure{{Name: "force", Form: "xyz", Unit: "N"}, {Name: "torque", Form: "xyz", Unit: "N·m"}}},
-		{Name: "energy", Status: Later, Doc: "Interaction energy of two rigid parts.",
+		{Name: "energy", Doc: "Interaction energy of two rigid parts.",
 			Keys:  []Key{ask(array(2, Type{Base: Name}), "energy", `["lid magnet", "trim bar"]`, "Their names.")},
 			Gives: []Measure{{Name: "energy", Unit: "J"}}},
-		{Name: "reach", Status: Later, Doc: "How far from the magnetized parts their own flux density is still reached.",
+		{Name: "reach", Doc: "How far from the magnetized parts their own flux density is still reached.",
 			Keys:  []Key{ask(object("reach"), "reach", `{"flux_density": 5e-4}`, "The flux density.")},
 			Gives: []Measure{{Name: "distance", Unit: "m"}, {Name: "from_surface", Unit: "m"}}},
-		{Name: "travel", Status: Later, Doc: "Requests at several positions of a part.",
+		{Name: "travel", Doc: "Requests at several positions of a part; none of them a travel.",
 			Keys: []Key{ask(object("travel"), "travel", `{"part": "lid magnet", "shift": [0, 0, 10], "count": 11, "ask": [{"points": [[0, 0, 0]]}]}`, "The movement."), plot, csv}},
-		{Name: "hand_over", Status: Later, Doc: "The equivalent charges for another simulator.",
-			Keys: []Key{ask(Type{Base: Output}, "hand_over", `"charges.json"`, "Name of the file, .json or .csv.")}},
+		{Name: "hand_over", Doc: "The equivalent charges for another simulator.",
+			Keys: []Key{ask(Type{Base: Output}, "hand_over", `"charges.json"`, "Name of the file, .json or .csv; its format is described in package field/handover."),
+				key("kind", choice("electric", "magnetic"), `"magnetic"`, "Which charges; needed where the scene has both.")}},
 	}
 }
 
@@ -67,6 +68,7 @@ func pointMeasures() []Measure {
 	return []Measure{
 		{Name: "V", Unit: "V", Kind: "E"}, {Name: "E", Form: "xyz", Unit: "V/m", Kind: "E"}, {Name: "D", Form: "xyz", Unit: "C/m²", Kind: "E"},
 		{Name: "Vm", Unit: "A", Kind: "B"}, {Name: "H", Form: "xyz", Unit: "A/m", Kind: "B"}, {Name: "B", Form: "xyz", Unit: "T", Kind: "B"},
+		{Name: "A", Form: "xyz", Unit: "T·m", Kind: "A"},
 	}
 }
 
@@ -179,7 +181,7 @@ func travel() Object {
 		Keys: []Key{
 			key("part", Type{Base: Name}, `"lid magnet"`, "Name of the part.").required(),
 			key("shift", vector(), `[0, 0, 10]`, "The whole way.").unit("length"),
-			key("rotation", object("turn"), `{"axis": [0, 0, 1], "degrees": 90}`, "The whole rotation."),
+			key("rotation", object("turn"), `{"axis": [0, 0, 1], "degrees": 90}`, "The whole rotation, about an axis of the scene."),
 			key("count", integer(1, MaxPoints), `11`, "Number of positions.").required(),
 			key("ask", list(1, object("request")), `[{"points": [[0, 0, 0]]}]`, "Requests at every position.").required(),
 		},

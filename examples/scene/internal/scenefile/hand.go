@@ -168,17 +168,20 @@ func (d *decoder) partNames(name string) string {
 // checkKind refuses an electric quantity in a scene without electric parts, and
 // likewise for magnetic ones.
 func (d *decoder) checkKind(q Quantity, m Measure) *fault {
-	var electric, magnetic bool
+	var electric, magnetic, circulating bool
 	for i := range d.scene.Parts {
 		p := &d.scene.Parts[i]
 		electric = electric || p.Polarized != nil || p.Charged != nil
 		magnetic = magnetic || p.Magnetized != nil
+		circulating = circulating || p.Circulating != nil
 	}
 	switch {
 	case m.Kind == "E" && !electric:
 		return &fault{fmt.Sprintf("nothing in the scene yields %s", q.shown()), "V, E and D need a polarized or charged part"}
 	case m.Kind == "B" && !magnetic:
 		return &fault{fmt.Sprintf("nothing in the scene yields %s", q.shown()), "Vm, H and B need a magnetized part"}
+	case m.Kind == "A" && !circulating:
+		return &fault{fmt.Sprintf("nothing in the scene yields %s", q.shown()), "A needs a circulating part"}
 	}
 	return nil
 }

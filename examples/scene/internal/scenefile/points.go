@@ -3,7 +3,6 @@ package scenefile
 import (
 	"bytes"
 	"fmt"
-	"io/fs"
 	"math"
 	"strconv"
 	"strings"
@@ -14,26 +13,9 @@ import (
 
 // readPoints reads a file of points from the scene's folder.
 func (d *decoder) readPoints(name string) ([]r3.Vec, *fault) {
-	if d.folder == nil {
-		return nil, &fault{"input files need a scene that is itself a file", "write the scene to a file beside " + strconv.Quote(shorten(name))}
-	}
-	info, err := fs.Stat(d.folder, name) // first: opening a pipe would wait for its writer
-	if err == nil && !info.Mode().IsRegular() {
-		return nil, &fault{fmt.Sprintf("%s is not a regular file", name), "name a file of rows x,y,z"}
-	}
-	var data []byte
-	if err == nil {
-		var f fs.File
-		if f, err = d.folder.Open(name); err == nil {
-			defer f.Close()
-			data, err = readAll(name, f)
-		}
-	}
-	if e, ok := err.(*Error); ok {
-		return nil, &fault{name + ": " + e.Problem, e.Remedy}
-	}
-	if err != nil {
-		return nil, &fault{fmt.Sprintf("%s cannot be read: %s", name, reason(err)), "input files lie in the scene's folder or below, links included"}
+	data, missing := d.readInput(name, "a file of rows x,y,z")
+	if missing != nil {
+		return nil, missing
 	}
 	points, line, bad := parsePoints(data, d.scene.Length)
 	if bad != nil {

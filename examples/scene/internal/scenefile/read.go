@@ -63,7 +63,7 @@ func Parse(file string, data []byte, folder fs.FS) (*Scene, error) {
 	d := decoder{
 		document: doc, table: Format(), folder: folder, scene: s,
 		fields: map[reflect.Type]map[string]int{}, lookup: map[string]map[string]*Key{},
-		outputs: map[string]string{}, bodies: map[string]int{},
+		outputs: map[string]string{}, bodies: map[string]int{}, positions: 1,
 	}
 	if err := d.object(0, &d.table.Objects[0], reflect.ValueOf(s).Elem()); err != nil {
 		return nil, err

@@ -4,7 +4,7 @@ import "gonum.org/v1/gonum/spatial/r3"
 
 // A Request is one thing wanted. Kind names it; the field of that kind is set.
 type Request struct {
-	Kind string      // "charges", "points", "points_file", "line", "plane" or "grid"
+	Kind string      // "charges", "points", "reading", …
 	Name string      `key:"name"`
 	Hand []HandCheck `key:"hand"`
 
@@ -14,6 +14,15 @@ type Request struct {
 	Line       *Line          `key:"line"`
 	Plane      *Parallelogram `key:"plane"`
 	Grid       *Grid          `key:"grid"`
+
+	Reading  *Reading `key:"reading"`
+	Linkage  *Linkage `key:"linkage"`
+	Force    *Force   `key:"force"`
+	Energy   []string `key:"energy"` // two names
+	Reach    *Reach   `key:"reach"`
+	Travel   *Travel  `key:"travel"`
+	HandOver string   `key:"hand_over"` // name of a file to write
+	Charge   string   `key:"kind"`      // of hand_over: "electric" or "magnetic"; "" where the scene has one only
 
 	Side   Side `key:"side"`
 	ByPart bool `key:"by_part"`
@@ -49,6 +58,49 @@ type Grid struct {
 	Counts [3]int `key:"counts"`
 }
 
+// A Reading is the area of a sensor; exactly one of Disc and Rectangle is set.
+type Reading struct {
+	At        r3.Vec    `key:"at"`
+	Normal    r3.Vec    `key:"normal"`    // not 0
+	Disc      *float64  `key:"disc"`      // radius
+	Rectangle []float64 `key:"rectangle"` // width along Along, height
+	Along     *r3.Vec   `key:"along"`     // not parallel to Normal
+}
+
+// A Linkage is a coil; exactly one of Circle and Polygon is set.
+type Linkage struct {
+	Circle  *Circle  `key:"circle"`
+	Polygon []r3.Vec `key:"polygon"`
+	Turns   float64  `key:"turns"`
+}
+
+// A Circle is a round coil.
+type Circle struct {
+	Centre r3.Vec  `key:"centre"`
+	Normal r3.Vec  `key:"normal"` // not 0
+	Radius float64 `key:"radius"`
+}
+
+// A Force is asked on a part; About is nil for the part's centre.
+type Force struct {
+	On    string  `key:"on"`
+	About *r3.Vec `key:"about"`
+}
+
+// A Reach asks how far a flux density is reached.
+type Reach struct {
+	FluxDensity float64 `key:"flux_density"` // T
+}
+
+// A Travel asks requests at Count positions of a part.
+type Travel struct {
+	Part     string    `key:"part"`
+	Shift    r3.Vec    `key:"shift"`
+	Rotation *Turn     `key:"rotation"`
+	Count    int       `key:"count"`
+	Ask      []Request `key:"ask"`
+}
+
 // Count returns the number of points that the request asks for, at most
 // MaxPoints, or MaxPoints + 1 where there are more.
 func (r *Request) Count() int {
@@ -61,6 +113,12 @@ func (r *Request) Count() int {
 		return product(r.Plane.Counts[:]...)
 	case "grid":
 		return product(r.Grid.Counts[:]...)
+	case "travel":
+		n := 0
+		for i := range r.Travel.Ask {
+			n = min(n+product(max(r.Travel.Ask[i].Count(), 1), r.Travel.Count), MaxPoints+1)
+		}
+		return n
 	}
 	return 0
 }

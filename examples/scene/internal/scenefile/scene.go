@@ -4,6 +4,7 @@ import (
 	"math"
 	"strconv"
 
+	"example.com/boundpole/magnet/grade"
 	"gonum.org/v1/gonum/spatial/r2"
 	"gonum.org/v1/gonum/spatial/r3"
 )
@@ -18,6 +19,7 @@ type Scene struct {
 	Temperature float64   `key:"temperature"` // °C
 	Parts       []Part    `key:"parts"`
 	Applied     *Applied  `key:"applied"`
+	Planes      []Plane   `key:"planes"`
 	Wanted      []Request `key:"wanted"`
 
 	// Skipped lists the accepted keys that this release cannot serve, in the
@@ -56,8 +58,16 @@ type Applied struct {
 	B *r3.Vec `key:"B"` // T
 }
 
-// A Part is a body, a sheet or a point. At most one of Polarized, Magnetized
-// and Charged is set, at most one of Rotations and Frame.
+// A Plane is a wall that mirrors the field; all parts lie where Normal points.
+type Plane struct {
+	Kind         string   `key:"kind"` // "iron", "conductor" or "dielectric"
+	Point        r3.Vec   `key:"point"`
+	Normal       r3.Vec   `key:"normal"`       // not 0
+	Permittivity *float64 `key:"permittivity"` // of a dielectric plane
+}
+
+// A Part is a body, a sheet or a point. At most one of Polarized, Magnetized,
+// Charged and Circulating is set, at most one of Rotations and Frame.
 type Part struct {
 	Name       string        `key:"name"`
 	Shape      any           // *Box, *Cylinder, …
@@ -71,6 +81,8 @@ type Part struct {
 	Polarized  *Polarization `key:"polarized"`  // C/m², C·m
 	Magnetized *Polarization `key:"magnetized"` // A/m, T, A·m²
 	Charged    *Charge       `key:"charged"`    // C/m², C
+
+	Circulating *float64 `key:"circulating"` // T·m
 }
 
 // Names returns the names of the bodies that the part places: its own, or those
@@ -118,11 +130,15 @@ type Polarization struct {
 	Uniform      *r3.Vec     `key:"uniform"`
 	Remanence    *r3.Vec     `key:"remanence"` // T; magnetic only
 	Moment       *r3.Vec     `key:"moment"`    // of a point
+	Grade        string      `key:"grade"`     // file of grade data, with Along; "" for none
+	Along        *r3.Vec     `key:"along"`     // not 0
 	Affine       *Affine     `key:"affine"`
 	Polynomial   []Term      `key:"polynomial"`
 	AxialPower   *AxialPower `key:"axial_power"`
 	RadialPower  *Power      `key:"radial_power"`
 	CentralPower *Power      `key:"central_power"`
+
+	Data *grade.Grade // content of Grade
 }
 
 // An Affine is the law Value + Gradient·(r − About); row i of Gradient is the

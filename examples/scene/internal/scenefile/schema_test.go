@@ -187,8 +187,9 @@ func TestSchemaRefuses(t *testing.T) {
 		"byte order mark", "utf-16", "repeated", "wrong UTF-8", "surrogate", "too deep", "more than", "not supported yet", "would be read as 0",
 		"control characters", "is already", "must be less", "ends of the prism", "does not exist", "named twice", "is parallel", "cannot be",
 		"is for points", "is polarized by", "carries nothing", "too long", "max must be above", "must not", "device name", "is taken", "plain relative",
-		"not a regular", "wrong.csv", "unknown quantity", "value of", "must be a number of a point", "yields", "no part is called", "has no face", "does not say",
-		"is for requests", "more than one turn", "must not both be",
+		"not a regular", "wrong.csv", "wrong.json", "unknown quantity", "value of", "must be a number of a point", "yields", "no part is called", "has no face", "does not say",
+		"is for requests", "more than one turn", "must not both be", "dielectric plane without", "on a plane of kind", "is for cylinders", "encloses no area",
+		"no part is", "no interaction", "within a travel", "file of one position", "hand_over writes", "the scene has electric and magnetic",
 	}
 	schema := committedSchema(t)
 	for _, c := range badScenes {

@@ -16,12 +16,12 @@ const floorShare = 1e-3
 // proven to keep the accuracy are not asked, those of integrated ones and of what has not converged always. A value that
 // does not exist where it should has missed it too; on edges and at point sources there is none.
 func (s *Setup) judge(rec *Record, x r3.Vec, side field.Side) {
-	if s.Electric {
+	if s.Electric && !s.hidden(x, Charged) {
 		v := &rec.Electric
 		s.held(rec, &reach{parts: s.electric.Parts, kinds: [2]Kind{Polarized, Charged}, names: [2]string{"V", "E"}, x: x, side: side,
 			phi: v.V * epsilon0 / s.Unit, g: r3.Scale(epsilon0, v.E), errPhi: v.ErrV * epsilon0 / s.Unit, errG: v.ErrE * epsilon0, status: v.Status})
 	}
-	if s.Magnetic {
+	if s.Magnetic && !s.hidden(x, Magnetized) {
 		v := &rec.Magnetic
 		s.held(rec, &reach{parts: s.magnetic.Parts, kinds: [2]Kind{Magnetized, Magnetized}, names: [2]string{"Vm", "H"}, x: x, side: side,
 			phi: v.Vm / s.Unit, g: v.H, errPhi: v.ErrVm / s.Unit, errG: v.ErrH, status: v.Status})

@@ -11,8 +11,10 @@ import (
 	"example.com/boundpole/examples/scene/internal/scenefile"
 	"example.com/boundpole/field"
 	"example.com/boundpole/field/bound"
+	"example.com/boundpole/field/image"
 	"example.com/boundpole/geom"
 	"example.com/boundpole/magnet"
+	"example.com/boundpole/magnet/grade"
 	"gonum.org/v1/gonum/spatial/r3"
 )
 
@@ -25,6 +27,8 @@ const (
 	Polarized  Kind = "polarized"
 	Magnetized Kind = "magnetized"
 	Charged    Kind = "charged"
+
+	Circulating Kind = "circulating"
 )
 
 // Part is one placed body, sheet or point: a part of the scene or one of its copies.
@@ -49,7 +53,8 @@ type Part struct {
 	law      field.Polarization // of a polarized body, in its own frame and the unit of the file, before factor
 	factor   float64
 	singular singular
-	proven   float64 // accuracy that needs no estimate, see proven
+	proven   float64        // accuracy that needs no estimate, see proven
+	material grade.Material // of a magnet with a grade
 }
 
 // Setup is a scene ready to be asked.
@@ -61,9 +66,12 @@ type Setup struct {
 	Warnings []string
 
 	Electric, Magnetic bool // kinds that the records have
+	Guiding            bool // circulating flux: records have A
 	slow               bool // a part is integrated
 	electric           charge.Model
 	magnetic           magnet.Model
+	guides             bound.Assembly // charge M_A.n of circulating parts
+	walls              []image.Plane
 	places             bound.Assembly // all parts, for sides and for telling where a point is
 	surface            func() (volts float64, of *Part)
 }
@@ -78,8 +86,23 @@ func Build(scene *scenefile.Scene) (*Setup, error) {
 			return nil, err
 		}
 	}
-	s.electric.Unit, s.magnetic.Unit = s.Unit, s.Unit
-	if a := scene.Applied; a != nil {
+	if err := s.addPlanes(); err != nil {
+		return nil, err
+	}
+	s.assemble()
+	if err := s.checkSides(); err != nil {
+		return nil, err
+	}
+	s.warnOverlaps()
+	s.warnOperating()
+	return s, nil
+}
+
+// assemble makes the models of the parts as they are placed.
+func (s *Setup) assemble() {
+	s.electric, s.magnetic = charge.Model{Unit: s.Unit}, magnet.Model{Unit: s.Unit}
+	s.guides, s.places = nil, nil
+	if a := s.Scene.Applied; a != nil {
 		if a.E != nil {
 			s.electric.Applied = *a.E
 		}
@@ -98,10 +121,13 @@ func Build(scene *scenefile.Scene) (*Setup, error) {
 		case Polarized, Charged:
 			s.Electric = true
 			s.electric.Parts = append(s.electric.Parts, p.Member)
+		case Circulating:
+			s.Guiding = true
+			s.guides = append(s.guides, p.Member)
 		}
 	}
-	s.warnOverlaps()
-	return s, nil
+	s.electric.Parts = s.mirrored(s.electric.Parts, Charged)
+	s.magnetic.Parts = s.mirrored(s.magnetic.Parts, Magnetized)
 }
 
 // addPart places part i of the scene and its copies.

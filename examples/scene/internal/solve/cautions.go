@@ -15,6 +15,7 @@ import (
 type Watch struct {
 	Volts float64 // largest |V| seen
 	Air   float64 // largest |E| seen outside all parts, V/m
+	Reach bool    // a reach was asked for
 }
 
 // See takes in one record of a request for a side.
@@ -47,6 +48,9 @@ func (s *Setup) Cautions(w Watch) []string {
 			"Fields of about 0.5–1 mT may affect implants: follow the clinician and the device maker.")
 	}
 	surface, _ := s.surface()
+	if w.Reach {
+		out = append(out, "Rigid parts only, no iron nearby; for planning, not a clearance; measure.")
+	}
 	if v := max(w.Volts, surface); v > touchVolts {
 		out = append(out, volts(v)+"; may damage inputs, spark, ignite vapours.")
 	}

@@ -12,6 +12,7 @@ type Check struct {
 	Quantity   string // as written in the scene
 	Name       string // without address and component
 	Kind       Kind   // of the part it speaks of, if it speaks of one
+	Ladder     string // of the units of an answer's quantity, see Quantity
 	At         int
 	Hand       []float64 // SI; one number or three
 	Value      []float64
@@ -38,6 +39,8 @@ func CheckRecord(h *scenefile.HandCheck, rec *Record) Check {
 		return held(h, component(m.H, q.Of)...)
 	case "B":
 		return held(h, component(m.B, q.Of)...)
+	case "A":
+		return held(h, component(rec.Guide.A, q.Of)...)
 	}
 	return held(h, math.NaN())
 }

@@ -28,6 +28,9 @@ func (s *Setup) gradients(recs []Record, at *field.Points, side field.Side, ways
 	if s.Electric {
 		v := sample(s.electric.Parts)
 		for i := range recs {
+			if s.hidden(at.Vec(i), Charged) {
+				continue
+			}
 			if t := s.tensorOf(&recs[i], v.At(i), "gradient E", at.Vec(i), [2]Kind{Polarized, Charged}); t != nil {
 				recs[i].Gradient.E = t.scaled(s.perMetre / epsilon0)
 			}
@@ -36,6 +39,9 @@ func (s *Setup) gradients(recs []Record, at *field.Points, side field.Side, ways
 	if s.Magnetic {
 		v := sample(s.magnetic.Parts)
 		for i := range recs {
+			if s.hidden(at.Vec(i), Magnetized) {
+				continue
+			}
 			t := s.tensorOf(&recs[i], v.At(i), "gradient B", at.Vec(i), [2]Kind{Magnetized, Magnetized})
 			if t == nil {
 				continue

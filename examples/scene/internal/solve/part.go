@@ -11,6 +11,8 @@ import (
 	"example.com/boundpole/field"
 	"example.com/boundpole/field/bound"
 	"example.com/boundpole/geom"
+	"example.com/boundpole/magnet"
+	"example.com/boundpole/magnet/grade"
 	"gonum.org/v1/gonum/spatial/r3"
 )
 
@@ -24,6 +26,7 @@ type made struct {
 	law      field.Polarization // of a body, before scaling
 	singular singular
 	proven   float64
+	material grade.Material // of a magnet with a grade
 	density  float64
 	gradient r3.Vec
 	point    float64
@@ -55,8 +58,18 @@ func (s *Setup) make(i int) (*made, error) {
 		at += "/polarized"
 	case part.Magnetized != nil:
 		m.kind = Magnetized
-		err = m.polarize(part, part.Magnetized)
 		at += "/magnetized"
+		if part.Magnetized.Grade != "" {
+			m.material, err = part.Magnetized.Data.At(s.Scene.Temperature)
+			if err != nil {
+				return nil, s.Scene.ErrorAt(at+"/grade", plainWords(err), "")
+			}
+		}
+		err = m.polarize(part, part.Magnetized)
+	case part.Circulating != nil:
+		m.kind = Circulating
+		err = m.bind(part, field.Uniform{P: r3.Vec{Z: *part.Circulating}})
+		at += "/circulating"
 	case part.Charged != nil:
 		m.kind = Charged
 		err = m.give(part)
@@ -87,7 +100,16 @@ func (m *made) polarize(part *scenefile.Part, p *scenefile.Polarization) error {
 		m.peak = r3.Norm(m.moment)
 		return finite(m.peak)
 	}
-	m.law = polarizationOf(p)
+	if p.Grade != "" {
+		br := r3.Scale(m.material.Br.Value(), r3.Unit(direction(*p.Along)))
+		return m.bind(part, field.Uniform{P: magnet.Remanence(br)})
+	}
+	return m.bind(part, polarizationOf(p))
+}
+
+// bind computes the bound charge of a body for a law, as given and reversed.
+func (m *made) bind(part *scenefile.Part, law field.Polarization) error {
+	m.law = law
 	if m.singular = singularOf(m.body, m.law); m.singular.met && m.singular.power < 0 {
 		return m.singular.fault()
 	}
@@ -138,7 +160,7 @@ func finite(v float64) error {
 // plainWords returns an error of the library without the name of the package in front.
 func plainWords(err error) string {
 	text := err.Error()
-	for _, name := range []string{"geom: ", "bound: ", "charge: ", "element: ", "field: "} {
+	for _, name := range []string{"geom: ", "bound: ", "charge: ", "element: ", "field: ", "grade: ", "magnet: ", "image: ", "force: ", "flux: ", "current: ", "handover: "} {
 		text = strings.TrimPrefix(text, name)
 	}
 	return text
@@ -162,6 +184,7 @@ func (s *Setup) place(m *made, name string, pose geom.Pose, sign float64) {
 			p.Body = p.Charge.Body()
 			p.Member = bound.Member{Charge: p.Charge}
 			p.law, p.factor, p.singular, p.proven = m.law, sign*s.Scene.Parts[m.part].Scale, m.singular, m.proven
+			p.material = m.material
 		}
 	case m.sheet != nil:
 		p.Local = m.sheet.Bounds()

@@ -21,10 +21,19 @@ type Record struct {
 	Inside   int    // first part that contains the point, -1 if none
 	Electric charge.Reading
 	Magnetic magnet.Reading
+	Guide    Guide
 	Status   field.Status
+	Note     string         // why values do not exist, where the status does not say so
 	Missed   []string       // names of the values that did not reach the wanted accuracy
 	ByPart   []Contribution // if asked for
 	Gradient *Gradient      // if asked for
+}
+
+// Guide is the vector potential of the circulating parts.
+type Guide struct {
+	A      r3.Vec  // T m, Coulomb gauge
+	ErrA   float64 // bound on the numerical error
+	Status field.Status
 }
 
 // Contribution is the field of one part alone.
@@ -34,6 +43,7 @@ type Contribution struct {
 	E, D r3.Vec
 	Vm   float64
 	H, B r3.Vec
+	A    r3.Vec
 }
 
 // How many points are evaluated at a time; the result does not depend on it. It is few where a part is integrated, so that all
@@ -100,6 +110,11 @@ func (s *Setup) fill(recs []Record, at *field.Points, side field.Side, q *scenef
 			recs[i].Magnetic = v
 		}
 	}
+	if s.Guiding {
+		for i, v := range s.guided(s.guides, at, side, ways) {
+			recs[i].Guide = v
+		}
+	}
 	for i := range recs {
 		rec := &recs[i]
 		var way r3.Vec
@@ -108,7 +123,8 @@ func (s *Setup) fill(recs []Record, at *field.Points, side field.Side, q *scenef
 		}
 		rec.X = s.metres(at.Vec(i))
 		rec.Inside = s.inside(at.At(i), side, way)
-		rec.Status = max(rec.Electric.Status, rec.Magnetic.Status)
+		rec.Status = max(rec.Electric.Status, rec.Magnetic.Status, rec.Guide.Status)
+		s.blank(rec, at.Vec(i))
 		s.judge(rec, at.Vec(i), side)
 		if q.ByPart {
 			rec.ByPart = s.contributions(at.Slice(i, i+1), side, ways, i)
@@ -117,6 +133,40 @@ func (s *Setup) fill(recs []Record, at *field.Points, side field.Side, q *scenef
 	if q.Gradient {
 		s.gradients(recs, at, side, ways)
 	}
+}
+
+// guided returns A of circulating parts: g of the charge M_A.n on the ends, and M_A itself in the bore.
+func (s *Setup) guided(parts bound.Assembly, at *field.Points, side field.Side, ways []r3.Vec) []Guide {
+	v := parts.Sample(at, side, ways, field.WantG|field.WantErr, r3.Vec{})
+	out := make([]Guide, at.Len())
+	for i := range out {
+		one := v.Values.At(i)
+		out[i] = Guide{A: r3.Add(one.G, v.P[i]), ErrA: one.ErrG + 0x1p-53*r3.Norm(v.P[i]), Status: one.Status}
+	}
+	return out
+}
+
+// blank takes away what a plane hides: behind it the image means nothing.
+func (s *Setup) blank(rec *Record, x r3.Vec) {
+	nan := math.NaN()
+	none := r3.Vec{X: nan, Y: nan, Z: nan}
+	if s.Electric && s.hidden(x, Charged) {
+		rec.Electric.V, rec.Electric.E, rec.Electric.D, rec.Note = nan, none, none, "behind a plane"
+	}
+	if s.Magnetic && s.hidden(x, Magnetized) {
+		rec.Magnetic.Vm, rec.Magnetic.H, rec.Magnetic.B, rec.Note = nan, none, none, "behind a plane"
+	}
+}
+
+// State says what a record's values are worth, "" where they are regular.
+func (r *Record) State() string {
+	switch {
+	case r.Note != "":
+		return r.Note
+	case r.Status == field.Regular:
+		return ""
+	}
+	return r.Status.String()
 }
 
 // metres converts a vector from the unit of the file; division by an exact number rounds once.
@@ -166,6 +216,8 @@ func (s *Setup) contributions(at *field.Points, side field.Side, ways []r3.Vec, 
 		case Magnetized:
 			v := magnet.Model{Parts: alone, Unit: s.Unit}.ReadingsTowards(at, side, ways)[0]
 			c.Vm, c.H, c.B = v.Vm, v.H, v.B
+		case Circulating:
+			c.A = s.guided(alone, at, side, ways)[0].A
 		default:
 			continue
 		}
