@@ -18,7 +18,7 @@ func (l *lab) on(c *bound.Charge, others field.Source, accuracy float64) force.R
 	if l.err != nil {
 		return force.Result{}
 	}
-	r, err := force.On(context.Background(), c, l.altered(others), &force.Settings{Accuracy: accuracy, SkipOverlap: true})
+	r, err := force.On(context.Background(), c, l.altered(others), &force.Settings{Accuracy: accuracy, Overlaps: true})
 	l.note(err)
 	return r
 }

@@ -31,7 +31,7 @@ func On(ctx context.Context, c *bound.Charge, others field.Source, s *Settings) 
 	}
 	p, ok := partOf(c)
 	all := apart(others, c)
-	if !set.SkipOverlap {
+	if !set.Overlaps {
 		if err := overlaps(c, all); err != nil {
 			return Result{}, err
 		}

@@ -128,7 +128,7 @@ func TestPairs(t *testing.T) {
 		if err != nil {
 			t.Fatal(seed, c.name, err)
 		}
-		set := Settings{Accuracy: 1e-6, About: d.vec(), MaxNodes: 60_000, SkipOverlap: true}
+		set := Settings{Accuracy: 1e-6, About: d.vec(), MaxNodes: 60_000, Overlaps: true}
 		one, err := acting(c.a, c.b, set)
 		if err != nil {
 			t.Error(seed, c.name, err)
@@ -140,7 +140,7 @@ func TestPairs(t *testing.T) {
 			continue
 		}
 		two = two.reaction()
-		free, err := On(context.Background(), c.a, c.b, &Settings{Accuracy: 1e-6, About: set.About, MaxNodes: 60_000, SkipOverlap: true})
+		free, err := On(context.Background(), c.a, c.b, &Settings{Accuracy: 1e-6, About: set.About, MaxNodes: 60_000, Overlaps: true})
 		if err != nil && !errors.Is(err, ErrNotConverged) {
 			t.Error(seed, c.name, err)
 		}

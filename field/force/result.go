@@ -43,9 +43,9 @@ type Settings struct {
 	Stiffness bool
 	// MaxNodes bounds the points at which the field is computed, for each pair. Range from 1e3; default 2e6.
 	MaxNodes int
-	// SkipOverlap leaves out the search for bodies that stand in each other, for callers that have made it: the result means nothing
+	// Overlaps leaves out the search for bodies that stand in each other, for callers that have made it: the result means nothing
 	// if they do. Default: search.
-	SkipOverlap bool
+	Overlaps bool
 }
 
 // ErrNotConverged is returned beside the best result where the accuracy asked for was not reached. Ask for less, or allow more
