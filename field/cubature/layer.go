@@ -4,6 +4,7 @@ import (
 	"errors"
 	"fmt"
 	"math"
+	"sync"
 
 	"example.com/boundpole/field"
 	"example.com/boundpole/geom"
@@ -40,7 +41,10 @@ type cloud struct {
 	loose    float64 // charge that is not resolved
 	slip     float64 // relative error of the derivatives
 	sum      pair.Float
-	far      *field.Moments
+
+	once   sync.Once
+	far    *field.Moments // see expansion
+	gather func(expand func(*nodeSet))
 }
 
 // NewLayer returns the field of a surface density on charts that meet at most in edges. The density is given the place and the
@@ -73,10 +77,11 @@ func NewLayer(charts []geom.Chart, density func(x, n r3.Vec) float64, s *Setting
 			visit(p.centre, p.radius)
 		}
 	})
-	for _, p := range panels {
-		l.expand(p.nodes(measured))
+	l.gather = func(expand func(*nodeSet)) {
+		for _, p := range panels {
+			expand(p.nodes(measured))
+		}
 	}
-	l.settle()
 	return l, nil
 }
 
