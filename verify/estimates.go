@@ -38,7 +38,7 @@ var tripleFamilies = []tripleFamily{
 	{"point", 1e-12, 1}, {"dipole", 1e-12, 1},
 	{"disc-linear", 1e-10, 1}, {"cylinder-affine", 1e-10, 4}, {"cylinder-axial", 1e-10, 4}, {"cylinder-radial", 1e-10, 4},
 	{"arc", 1e-10, 4}, {"arc-affine", 1e-10, 4}, {"arc-radial", 1e-10, 16}, {"cone", 1e-10, 1}, {"torus", 1e-10, 1},
-	{"ellipsoid-affine", 1e-12, 1}, {"box-polynomial", 1e-10, 1},
+	{"ellipsoid-affine", 1e-12, 1}, {"box-polynomial", 1e-10, 4},
 }
 
 const estimateFamily = "estimates"
