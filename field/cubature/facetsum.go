@@ -9,14 +9,13 @@ import (
 
 // powerSums gathers 4 pi times potential, its gradient and its second derivatives, in units of the body, and the magnitudes behind them.
 type powerSums struct {
-	phi, phiSize    float64
-	slope           r3.Vec
-	slopeSize       float64
-	second          [3][3]float64
-	secondSize      float64
-	local           [3]float64 // of one face, in its frame
-	localSecond     [3][3]float64
-	potential, size [3]float64
+	phi, phiSize float64
+	slope        r3.Vec
+	slopeSize    float64
+	second       [3][3]float64
+	secondSize   float64
+	local        [3]float64 // of one face, in its frame
+	localSecond  [3][3]float64
 }
 
 // rest gathers what is left of p beside its affine part at x, over all faces. With s the density of a face at height h under x,

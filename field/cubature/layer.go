@@ -21,7 +21,7 @@ import (
 // of both sides, or the side asked for; Outside is where xu x xv points.
 // Accuracy: |error| <= 1e-12 of the natural scale, sigma_max a min(1, a/R) for phi and sigma_max min(1, (a/R)^2) for g, a the
 // bounding radius and R the distance from its centre, at every distance off the faces (TestSphereDistances); beside an edge at
-// distance d add what the rounding of the chart does, u |x| sigma/d. Estimates hold in 99.9 % of points (TestEstimates).
+// distance d add what the rounding of the chart does, u |x| sigma/d, unless a body's uniform part is taken out (Less). Estimates hold in 99.9 % of points (TestEstimates).
 // Source: polar coordinates about the nearest point cancel 1/R ([Duffy1982]); the maps are those of [Johnston2005].
 type Layer struct {
 	panels []*panel

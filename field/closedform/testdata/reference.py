@@ -421,6 +421,10 @@ def gap(s, d, e, g):
     return lu_solve(matrix([[d, g], [-e, 1]]), matrix([0, s]))[1]
 many("ElectretGapField", [[0.3e-3, 12.5e-6, 2.1, 20e-6], [1.0, 2.0, 3.0, 0.5]], gap, "Gauss's law and zero voltage, linear system")
 
+# ---- currents.go
+many("LoopAxisField", [[2.0, 1.5, 0.0], [-3.0, 1.0, 0.5], [1.0, 2.0, -8.0], [1.0, 1.0, 1e6], [1.0, 1e6, 0.25]], lambda c, a, z: quad(lambda t: c*a*a/(4*pi)/(a*a + z*z)**(mpf(3)/2), [0, 2*pi]), "Biot and Savart round the loop")
+many("SegmentField", [[2.0, 1.5, 0.5], [-3.0, 1.0, 8.0], [1.0, 1e6, 0.25], [1.0, 0.125, 1e4]], lambda c, L, s: quad(lambda t: 2*c*s/(4*pi)/(s*s + t*t)**(mpf(3)/2), [0] + [L/2*mpf(4)**-k for k in range(14, -1, -1)]), "Biot and Savart along the segment")
+many("CoaxialLoopInductance", [[1.0, 1.0, 1.0], [1.0, 0.5, 0.0], [2.0, 3.0, 0.25], [1.0, 1.0, 0.0009765625], [1.0, 0.25, 50.0], [0.001, 1.0, 0.0], [1.0, 2.0, 1e5]], lambda a, b, d: quad(lambda t: a*b*cos(t)/sqrt(a*a + b*b - 2*a*b*cos(t) + d*d), [0] + [pi*mpf(2)**-k for k in range(16, -1, -1)]), "Neumann's integral")
 # ---- pairforce.go: one angle as in force/testdata/forces.py; rectangles by the difference of places, one direction closed
 def coaxialpair(p, q, a, k, b, l, g):
     knots = [mpf(0)] + [pi*mpf(2)**-i for i in range(12, -1, -1)]
@@ -461,10 +465,6 @@ def cuboids(p, q, *v):
     return F
 many("CuboidForce", [[1.0, 1.0, 20.0, 12.0, 6.0, 12.0, 20.0, 6.0, -4.0, -4.0, 8.0], [1.0, 1.0, 20.0, 12.0, 6.0, 12.0, 20.0, 6.0, 6.0, -4.0, 8.0],
      [1.0, -2.0, 1.0, 1.25, 0.75, 1.5, 0.5, 1.0, 0.25, 0.375, 0.890625], [1.0, 1.0, 1.0, 1.25, 0.75, 1.5, 0.5, 1.0, 0.25, 0.375, 1.875]], cuboids, "two rectangles by the difference of places")
-# ---- currents.go
-many("LoopAxisField", [[2.0, 1.5, 0.0], [-3.0, 1.0, 0.5], [1.0, 2.0, -8.0], [1.0, 1.0, 1e6], [1.0, 1e6, 0.25]], lambda c, a, z: quad(lambda t: c*a*a/(4*pi)/(a*a + z*z)**(mpf(3)/2), [0, 2*pi]), "Biot and Savart round the loop")
-many("SegmentField", [[2.0, 1.5, 0.5], [-3.0, 1.0, 8.0], [1.0, 1e6, 0.25], [1.0, 0.125, 1e4]], lambda c, L, s: quad(lambda t: 2*c*s/(4*pi)/(s*s + t*t)**(mpf(3)/2), [0] + [L/2*mpf(4)**-k for k in range(14, -1, -1)]), "Biot and Savart along the segment")
-many("CoaxialLoopInductance", [[1.0, 1.0, 1.0], [1.0, 0.5, 0.0], [2.0, 3.0, 0.25], [1.0, 1.0, 0.0009765625], [1.0, 0.25, 50.0], [0.001, 1.0, 0.0], [1.0, 2.0, 1e5]], lambda a, b, d: quad(lambda t: a*b*cos(t)/sqrt(a*a + b*b - 2*a*b*cos(t) + d*d), [0] + [pi*mpf(2)**-k for k in range(16, -1, -1)]), "Neumann's integral")
 
 head = {"source": "reference.py, mpmath, 40 digits (28 where said), 25 printed", "cases": None}
 print('{\n"source": %s,\n"cases": [' % json.dumps(head["source"]))
