@@ -11,6 +11,7 @@ import (
 var stages = []string{
 	"geom/pair",
 	"geom",
+	"geom/panel",
 	"field/internal/...",
 	"field",
 	"field/element",

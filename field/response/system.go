@@ -1,0 +1,321 @@
+package response
+
+import (
+	"context"
+	"errors"
+	"fmt"
+	"math"
+
+	"example.com/boundpole/geom"
+	"example.com/boundpole/geom/pair"
+	"example.com/boundpole/geom/panel"
+	"gonum.org/v1/gonum/spatial/r3"
+)
+
+// Settings says how finely to solve. The zero value and nil are the defaults.
+type Settings struct {
+	// Order is the number of nodes a direction on every panel of the finest of the three meshes; the others have 2 and 4 less.
+	// Default 8; range 6 to 14.
+	Order int
+	// Halve is how many times every panel is halved in both directions. Default 0.
+	Halve int
+	// Gap is the largest size of a panel near another body, in units of the root of distance times the size of the smaller of
+	// the two bodies. Default 1.5.
+	Gap float64
+	// MaxUnknowns is the number of unknowns of the finest mesh beyond which Prepare refuses: the matrices take 16 bytes times
+	// its square. Default 7000.
+	MaxUnknowns int
+	// Progress, if not nil, is called now and then with what is being done and the share of it that is done. Calls do not
+	// overlap.
+	Progress func(stage string, share float64)
+}
+
+func (s *Settings) filled() (Settings, error) {
+	var c Settings
+	if s != nil {
+		c = *s
+	}
+	if c.Order == 0 {
+		c.Order = 8
+	}
+	if c.Order < 6 || c.Order > maxOrder {
+		return c, fmt.Errorf("response: order %d is outside 6 to %d; choose one inside, and Halve for finer meshes", c.Order, maxOrder)
+	}
+	if c.Halve < 0 {
+		return c, fmt.Errorf("response: Halve is %d; it counts halvings, give 0 or more", c.Halve)
+	}
+	if !(c.Gap > 0) {
+		c.Gap = 1.5
+	}
+	if c.MaxUnknowns <= 0 {
+		c.MaxUnknowns = 7000
+	}
+	return c, nil
+}
+
+// The errors that Prepare and Solve wrap.
+var (
+	ErrTooLarge     = errors.New("too many unknowns")
+	ErrOverlap      = errors.New("bodies touch or overlap")
+	ErrNotConverged = errors.New("iteration did not converge")
+	ErrSourceInside = errors.New("source inside a responding body")
+	ErrMaterial     = errors.New("not a material")
+)
+
+// System is the geometry of responding bodies, made ready for any susceptibilities and any applied field: the three matrices
+// of what the charge of every panel does to every other.
+//
+// A System is immutable and safe for concurrent use.
+type System struct {
+	bodies   []geom.Body
+	locators []geom.Locator
+	bounds   []r3.Box
+	tiles    []*tile
+	parts    []part
+	levels   []level
+	inner    *rule
+	pieces   int // how many are kept
+	set      Settings
+}
+
+// part is a connected part of the boundary of a body.
+type part struct {
+	body  int
+	tiles []int
+}
+
+// level is one of the three meshes with its matrix.
+type level struct {
+	*mesh
+	root   []float64   // roots of the areas of the nodes
+	a      []float64   // K' for unknowns and equations times root: density x root on the node
+	areas  []float64   // of the parts
+	enters [][]float64 // for parts c and d: the flux of a unit charge on d out of c: 0, 1, 1/2 or -1/2
+}
+
+// Prepare cuts the boundaries of the bodies into panels and computes the matrices.
+//
+// It fails where a body's Check fails or a face has no charts (panel.ErrCharts), with ErrOverlap where bodies touch or overlap,
+// with ErrTooLarge where the finest mesh would have more than MaxUnknowns, and with the context's error.
+func Prepare(ctx context.Context, bodies []geom.Body, set *Settings) (*System, error) {
+	c, err := set.filled()
+	if err != nil {
+		return nil, err
+	}
+	if len(bodies) == 0 {
+		return nil, errors.New("response: no bodies; give at least one")
+	}
+	s := &System{bodies: append([]geom.Body(nil), bodies...), set: c, inner: newRule(points)}
+	for _, b := range bodies {
+		if err := b.Check(); err != nil {
+			return nil, fmt.Errorf("response: body %d: %w", len(s.bounds), err)
+		}
+		s.bounds = append(s.bounds, b.Bounds())
+		s.locators = append(s.locators, geom.LocatorOf(b))
+	}
+	if err := s.cut(); err != nil {
+		return nil, err
+	}
+	if err := s.apart(); err != nil {
+		return nil, err
+	}
+	for k, order := range []int{c.Order - 4, c.Order - 2, c.Order} {
+		l, err := s.level(ctx, order, k)
+		if err != nil {
+			return nil, fmt.Errorf("response: level %d of 3 not done: %w", k+1, err)
+		}
+		s.levels = append(s.levels, l)
+	}
+	return s, nil
+}
+
+// cut makes the tiles.
+func (s *System) cut() error {
+	limit := s.set.MaxUnknowns / (s.set.Order * s.set.Order)
+	for k, b := range s.bodies {
+		panels, err := panel.Of(b, panel.Settings{Halve: s.set.Halve})
+		if err != nil {
+			return fmt.Errorf("response: body %d: %w", k, err)
+		}
+		panels = s.refine(k, panels, limit)
+		first := len(s.parts)
+		for _, p := range panels {
+			for len(s.parts) <= first+p.Part {
+				s.parts = append(s.parts, part{body: k})
+			}
+			if len(s.tiles) >= limit {
+				return s.tooLarge(k)
+			}
+			q := &s.parts[first+p.Part]
+			q.tiles = append(q.tiles, len(s.tiles))
+			s.tiles = append(s.tiles, newTile(p, k, first+p.Part, s.inner, &s.pieces))
+		}
+	}
+	return nil
+}
+
+func (s *System) tooLarge(body int) error {
+	return fmt.Errorf("response: %w: body %d takes the mesh beyond %d panels of %d nodes, MaxUnknowns is %d; raise it, lower Order or Halve, or widen small gaps",
+		ErrTooLarge, body, s.set.MaxUnknowns/(s.set.Order*s.set.Order), s.set.Order*s.set.Order, s.set.MaxUnknowns)
+}
+
+// refine halves the panels of a body that are large beside their distance from another body.
+func (s *System) refine(body int, panels []*panel.Panel, limit int) []*panel.Panel {
+	var done []*panel.Panel
+	for len(panels) > 0 {
+		p := panels[len(panels)-1]
+		panels = panels[:len(panels)-1]
+		l := p.Lengths()
+		along := 0
+		if l[1] > l[0] {
+			along = 1
+		}
+		if len(done)+len(panels) > limit || !s.near(body, p, l[along]) {
+			done = append(done, p)
+			continue
+		}
+		h := p.Halves(along)
+		panels = append(panels, h[0], h[1])
+	}
+	return done
+}
+
+// near reports whether a panel is too large for its distance from some other body.
+func (s *System) near(body int, p *panel.Panel, length float64) bool {
+	for k, b := range s.bodies {
+		if k == body {
+			continue
+		}
+		size := min(halfDiagonal(s.bounds[k]), halfDiagonal(s.bounds[body]))
+		limit := length / s.set.Gap
+		limit *= limit / size // the distance below which the panel is too large
+		if boxDistance(s.bounds[k], p.Point(0.5, 0.5)) > limit+length {
+			continue
+		}
+		for i := range 9 {
+			if _, d := geom.Nearest(b, p.Point(float64(i%3)/2, float64(i/3)/2)); d < limit {
+				return true
+			}
+		}
+	}
+	return false
+}
+
+func halfDiagonal(b r3.Box) float64 { return r3.Norm(r3.Sub(b.Max, b.Min)) / 2 }
+
+// boxDistance returns the distance of x from a box, 0 inside.
+func boxDistance(b r3.Box, x r3.Vec) float64 {
+	return r3.Norm(r3.Vec{
+		X: max(b.Min.X-x.X, 0, x.X-b.Max.X),
+		Y: max(b.Min.Y-x.Y, 0, x.Y-b.Max.Y),
+		Z: max(b.Min.Z-x.Z, 0, x.Z-b.Max.Z),
+	})
+}
+
+// apart refuses bodies that touch or overlap, judged at the points of the panels.
+func (s *System) apart() error {
+	for _, t := range s.tiles {
+		for k := range s.bodies {
+			if k == t.body {
+				continue
+			}
+			slack := 1e-9 * halfDiagonal(s.bounds[k])
+			points := t.whole.samples[:]
+			if boxDistance(s.bounds[k], t.centre) <= 2*t.radius+slack {
+				points = append(append([]r3.Vec(nil), points...), t.whole.x...)
+			}
+			for _, x := range points {
+				if boxDistance(s.bounds[k], x) > slack {
+					continue
+				}
+				if s.locators[k].Locate(pair.VecOf(x), slack).Region != geom.Outside {
+					return fmt.Errorf("response: %w: body %d has the point (%v, %v, %v) in or on body %d; leave a gap, or give parts of one material as one body",
+						ErrOverlap, t.body, x.X, x.Y, x.Z, k)
+				}
+			}
+		}
+	}
+	return nil
+}
+
+// level computes one of the three meshes.
+func (s *System) level(ctx context.Context, order, which int) (level, error) {
+	l := level{mesh: newMesh(s.tiles, order, s.inner)}
+	n := len(l.x)
+	l.root = make([]float64, n)
+	for i, a := range l.area {
+		l.root[i] = math.Sqrt(a)
+	}
+	l.a = make([]float64, n*n)
+	report := func(done int) {
+		if s.set.Progress != nil {
+			s.set.Progress(fmt.Sprintf("matrix %d of 3", which+1), float64(done)/float64(n))
+		}
+	}
+	err := each(ctx, n, func() *rows { return newRows(s.tiles, l.mesh, s.inner) }, func(w *rows, i int) {
+		row := l.a[i*n : (i+1)*n]
+		w.row(row, i)
+		for j := range row {
+			row[j] *= l.root[i] * l.jac[j] / l.root[j]
+		}
+	}, report)
+	if err != nil {
+		return l, err
+	}
+	s.conserve(&l)
+	return l, nil
+}
+
+// nodesOf visits the nodes of a part.
+func (s *System) nodesOf(l *level, part int, visit func(i int)) {
+	nodes := l.order * l.order
+	for _, t := range s.parts[part].tiles {
+		for i := t * nodes; i < (t+1)*nodes; i++ {
+			visit(i)
+		}
+	}
+}
+
+// conserve makes the flux of every charge out of every part what Gauss's law says: what the mesh misses is taken off evenly
+// over the part. No charge can then leak, whatever the contrast.
+func (s *System) conserve(l *level) {
+	n := len(l.x)
+	l.areas = make([]float64, len(s.parts))
+	l.enters = make([][]float64, len(s.parts))
+	flux := make([]float64, n)
+	for c := range s.parts {
+		clear(flux)
+		s.nodesOf(l, c, func(i int) {
+			l.areas[c] += l.area[i]
+			for j, v := range l.a[i*n : (i+1)*n] {
+				flux[j] += l.root[i] * v
+			}
+		})
+		l.enters[c] = make([]float64, len(s.parts))
+		for d := range s.parts {
+			sum, all := 0.0, 0.0
+			s.nodesOf(l, d, func(j int) {
+				sum += flux[j] * l.root[j]
+				all += l.area[j]
+			})
+			l.enters[c][d] = math.Round(2*sum/all) / 2
+			s.nodesOf(l, d, func(j int) { flux[j] -= l.enters[c][d] * l.root[j] })
+		}
+		s.nodesOf(l, c, func(i int) {
+			row := l.a[i*n : (i+1)*n]
+			f := l.root[i] / l.areas[c]
+			for j := range row {
+				row[j] -= f * flux[j]
+			}
+		})
+	}
+}
+
+// Unknowns returns the numbers of unknowns of the three meshes.
+func (s *System) Unknowns() [3]int {
+	var n [3]int
+	for k := range n {
+		n[k] = len(s.levels[k].x)
+	}
+	return n
+}
