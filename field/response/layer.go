@@ -205,23 +205,16 @@ func (w *probe) value(want field.Want) field.Value {
 		v.Grad[k] = over4Pi * c.grad[k]
 	}
 	if want&field.WantErr != 0 {
-		v.ErrPhi = over4Pi * left(math.Abs(b.phi-a.phi), math.Abs(c.phi-b.phi))
-		v.ErrG = over4Pi * left(r3.Norm(r3.Sub(b.g, a.g)), r3.Norm(r3.Sub(c.g, b.g)))
-		v.ErrGrad = over4Pi * left(apartBy(&a.grad, &b.grad), apartBy(&b.grad, &c.grad))
-		v.ErrPhi += rounding * math.Abs(v.Phi)
-		v.ErrG += rounding * r3.Norm(v.G)
-		v.ErrGrad += rounding * tensorNorm(&v.Grad)
+		trend := &w.r.trend
+		v.ErrPhi = over4Pi * trend.left(math.Abs(b.phi-a.phi), math.Abs(c.phi-b.phi))
+		v.ErrG = over4Pi * trend.left(r3.Norm(r3.Sub(b.g, a.g)), r3.Norm(r3.Sub(c.g, b.g)))
+		v.ErrGrad = over4Pi * trend.left(apartBy(&a.grad, &b.grad), apartBy(&b.grad, &c.grad))
+		floor := rounding * w.r.density
+		v.ErrPhi += rounding*math.Abs(v.Phi) + floor*w.r.size
+		v.ErrG += rounding*r3.Norm(v.G) + floor
+		v.ErrGrad += rounding*tensorNorm(&v.Grad) + floor/w.r.size
 	}
 	return v
-}
-
-// rounding is the relative error of the rules on the pieces.
-const rounding = 1e-9
-
-// left returns an estimate of the error that the third of three meshes leaves, of what the second differs by from the first
-// and the third from the second.
-func left(first, second float64) float64 {
-	return second
 }
 
 func apartBy(a, b *[6]float64) float64 {

@@ -19,9 +19,9 @@ const deepest = 80
 // piece is a rectangle of parameters of a panel.
 type piece struct {
 	s, t    span
-	samples [9]r3.Vec  // points of a grid of 3 x 3
-	length  float64    // of the longer middle or outer line
-	along   int8       // which parameter to halve: that of the longer line
+	samples [9]r3.Vec // points of a grid of 3 x 3
+	length  float64   // of the longer middle or outer line
+	along   int8      // which parameter to halve: that of the longer line
 	x       []r3.Vec  // the points of the rule, nil if not kept
 	halves  *[2]piece // nil if not kept
 	number  int       // among the kept pieces of all panels

@@ -1,8 +1,6 @@
 package response
 
 import (
-	"math"
-
 	"example.com/boundpole/field"
 	"gonum.org/v1/gonum/spatial/r3"
 )
@@ -22,6 +20,9 @@ type Response struct {
 	rigid     []rigid
 	layers    []layer
 	loads     [][]float64 // for each level the charges at the points of the kept pieces
+	trend     trend
+	density   float64 // root mean square of the induced density
+	size      float64 // root of the area of all bodies
 	Report    Report
 }
 
@@ -61,34 +62,54 @@ func (r *Response) Bounds() r3.Box {
 	return b
 }
 
-// onLevels returns the three values of a sum over the nodes of a body and its estimate.
-func (r *Response) onLevels(body int, f func(l *level, i int) float64) Value {
-	var v [3]float64
-	for k := range v {
-		l := &r.system.levels[k]
-		for c, p := range r.system.parts {
-			if p.body != body {
-				continue
-			}
-			r.system.nodesOf(l, c, func(i int) { v[k] += r.layers[k].charge[i] * f(l, i) })
-		}
-	}
-	return Value{v[2], left(math.Abs(v[1]-v[0]), math.Abs(v[2]-v[1])) + rounding*math.Abs(v[2])}
-}
-
-// Moment returns the dipole moment of a body: the integral of p over it (about the origin, where it is charged).
+// Moment returns the dipole moment of a body: the integral of p over it (about the origin, where it is charged). Charge on a
+// part that two bodies share counts for the one that was given first; Total is free of that.
 func (r *Response) Moment(body int) Vector {
-	x := r.onLevels(body, func(l *level, i int) float64 { return l.x[i].X })
-	y := r.onLevels(body, func(l *level, i int) float64 { return l.x[i].Y })
-	z := r.onLevels(body, func(l *level, i int) float64 { return l.x[i].Z })
-	m := Vector{r3.Vec{X: x.Value, Y: y.Value, Z: z.Value}, math.Sqrt(x.Estimate*x.Estimate + y.Estimate*y.Estimate + z.Estimate*z.Estimate)}
+	m := r.moment(func(p part) bool { return p.body == body })
 	if c := r.rigid[body]; c.Charge != nil {
 		m.Value = r3.Add(m.Value, r3.Scale(c.factor, c.Charge.Moment))
 	}
 	return m
 }
 
+// Total returns the dipole moment of all bodies.
+func (r *Response) Total() Vector {
+	m := r.moment(func(part) bool { return true })
+	for _, c := range r.rigid {
+		if c.Charge != nil {
+			m.Value = r3.Add(m.Value, r3.Scale(c.factor, c.Charge.Moment))
+		}
+	}
+	return m
+}
+
+// moment returns that of the induced charge of some parts.
+func (r *Response) moment(of func(p part) bool) Vector {
+	var m [3][3]float64
+	for k := range m {
+		l := &r.system.levels[k]
+		for c, p := range r.system.parts {
+			if of(p) {
+				r.system.nodesOf(l, c, func(i int) {
+					for axis, x := range components(l.x[i]) {
+						m[k][axis] += r.layers[k].charge[i] * x
+					}
+				})
+			}
+		}
+	}
+	return r.vector(m)
+}
+
 // Charge returns the total charge of a body.
 func (r *Response) Charge(body int) Value {
-	return r.onLevels(body, func(*level, int) float64 { return 1 })
+	var v [3]float64
+	for k := range v {
+		for c, p := range r.system.parts {
+			if p.body == body {
+				r.system.nodesOf(&r.system.levels[k], c, func(i int) { v[k] += r.layers[k].charge[i] })
+			}
+		}
+	}
+	return r.trend.limit(v)
 }

@@ -35,13 +35,35 @@ func (m Material) check(body int) error {
 	return nil
 }
 
-// factors returns alpha and beta of the equation alpha sigma - beta K' sigma = beta n.g, the one of
-// (1/chi + 1/2) sigma - K' sigma = n.g that stays finite.
-func (m Material) factors() (alpha, beta float64) {
-	if math.Abs(m.Chi) <= 1 {
-		return 1 + m.Chi/2, m.Chi
+// factors returns alpha and beta of the equation of a part of the boundary,
+//
+//	alpha sigma - beta K' sigma = beta n.g,   alpha : beta = (e + f)/2 : (e - f),   e = 1 + chi inside, f = 1 + chi beyond,
+//
+// which says that (1 + chi) g.n is the same on both sides. Scaled so that both stay finite.
+func factors(inside, beyond float64) (alpha, beta float64) {
+	switch {
+	case inside == beyond:
+		return 1, 0
+	case math.IsInf(inside, 1):
+		return 0.5, 1
+	case math.IsInf(beyond, 1):
+		return 0.5, -1
 	}
-	return 1/m.Chi + 0.5, 1
+	alpha, beta = 1+(inside+beyond)/2, inside-beyond
+	if scale := max(math.Abs(alpha), math.Abs(beta)); scale > 1 || alpha < 0.25 {
+		alpha, beta = alpha/scale, beta/scale
+	}
+	return alpha, beta
+}
+
+// factors returns alpha and beta of a part.
+func (r *Response) factors(c int) (alpha, beta float64) {
+	p := r.system.parts[c]
+	beyond := 0.0
+	if p.beyond >= 0 {
+		beyond = r.materials[p.beyond].Chi
+	}
+	return factors(r.materials[p.body].Chi, beyond)
 }
 
 // rigid is the part of a body's charge that does not depend on the others: that of p0/(1 + chi), whose volume charge is the
@@ -94,6 +116,7 @@ func (s *System) Solve(ctx context.Context, materials []Material, applied field.
 		}
 	}
 	r.load()
+	r.follow()
 	r.report()
 	return r, nil
 }
@@ -121,8 +144,7 @@ func (r *Response) solve(ctx context.Context, l *level) (layer, error) {
 	b := make([]float64, n)
 	free := r.free(l)
 	for c := range s.parts {
-		m := r.materials[s.parts[c].body]
-		al, be := m.factors()
+		al, be := r.factors(c)
 		extra := 0.0
 		if free[c] {
 			extra = r.freeCharge(l, c, out.applied) / l.areas[c]
@@ -168,7 +190,7 @@ func (r *Response) solve(ctx context.Context, l *level) (layer, error) {
 func (r *Response) free(l *level) []bool {
 	free := make([]bool, len(r.system.parts))
 	for c := range free {
-		al, be := r.materials[r.system.parts[c].body].factors()
+		al, be := r.factors(c)
 		free[c] = al == be*l.enters[c][c]
 	}
 	return free
@@ -243,6 +265,8 @@ func (r *Response) balance(l *level, normal []float64) error {
 		if math.Abs(flux) <= through*size {
 			s.nodesOf(l, c, func(i int) { normal[i] -= flux / l.areas[c] })
 			net[p.body] -= flux
+		} else if p.beyond >= 0 {
+			net[p.beyond] -= flux
 		}
 	}
 	for k := range net {

@@ -7,8 +7,6 @@ import (
 	"math"
 
 	"example.com/boundpole/geom"
-	"example.com/boundpole/geom/pair"
-	"example.com/boundpole/geom/panel"
 	"gonum.org/v1/gonum/spatial/r3"
 )
 
@@ -20,10 +18,10 @@ type Settings struct {
 	// Halve is how many times every panel is halved in both directions. Default 0.
 	Halve int
 	// Gap is the largest size of a panel near another body, in units of the root of distance times the size of the smaller of
-	// the two bodies. Default 1.5.
+	// the two bodies. Default 2.
 	Gap float64
-	// MaxUnknowns is the number of unknowns of the finest mesh beyond which Prepare refuses: the matrices take 16 bytes times
-	// its square. Default 7000.
+	// MaxUnknowns is the number of unknowns of the finest mesh beyond which Prepare refuses: the matrices take 12 bytes times
+	// its square. Default 8000.
 	MaxUnknowns int
 	// Progress, if not nil, is called now and then with what is being done and the share of it that is done. Calls do not
 	// overlap.
@@ -45,10 +43,10 @@ func (s *Settings) filled() (Settings, error) {
 		return c, fmt.Errorf("response: Halve is %d; it counts halvings, give 0 or more", c.Halve)
 	}
 	if !(c.Gap > 0) {
-		c.Gap = 1.5
+		c.Gap = 2
 	}
 	if c.MaxUnknowns <= 0 {
-		c.MaxUnknowns = 7000
+		c.MaxUnknowns = 8000
 	}
 	return c, nil
 }
@@ -70,18 +68,21 @@ type System struct {
 	bodies   []geom.Body
 	locators []geom.Locator
 	bounds   []r3.Box
+	joined   map[[2]int]bool // pairs of bodies, lower first, that share a part of their boundaries
 	tiles    []*tile
 	parts    []part
 	levels   []level
 	inner    *rule
-	pieces   int // how many are kept
+	pieces   int  // how many are kept
+	rough    bool // there are edges, or gaps for which panels were halved
 	set      Settings
 }
 
 // part is a connected part of the boundary of a body.
 type part struct {
-	body  int
-	tiles []int
+	body   int
+	beyond int // the body whose cavity the part fills, or whose surface it is; -1: none
+	tiles  []int
 }
 
 // level is one of the three meshes with its matrix.
@@ -105,7 +106,7 @@ func Prepare(ctx context.Context, bodies []geom.Body, set *Settings) (*System, e
 	if len(bodies) == 0 {
 		return nil, errors.New("response: no bodies; give at least one")
 	}
-	s := &System{bodies: append([]geom.Body(nil), bodies...), set: c, inner: newRule(points)}
+	s := &System{bodies: append([]geom.Body(nil), bodies...), set: c, inner: newRule(points), joined: map[[2]int]bool{}}
 	for _, b := range bodies {
 		if err := b.Check(); err != nil {
 			return nil, fmt.Errorf("response: body %d: %w", len(s.bounds), err)
@@ -132,24 +133,23 @@ func Prepare(ctx context.Context, bodies []geom.Body, set *Settings) (*System, e
 // cut makes the tiles.
 func (s *System) cut() error {
 	limit := s.set.MaxUnknowns / (s.set.Order * s.set.Order)
-	for k, b := range s.bodies {
-		panels, err := panel.Of(b, panel.Settings{Halve: s.set.Halve})
-		if err != nil {
-			return fmt.Errorf("response: body %d: %w", k, err)
-		}
-		panels = s.refine(k, panels, limit)
-		first := len(s.parts)
-		for _, p := range panels {
-			for len(s.parts) <= first+p.Part {
-				s.parts = append(s.parts, part{body: k})
-			}
+	sheets, err := s.sheets()
+	if err != nil {
+		return err
+	}
+	for _, sh := range sheets {
+		p := part{body: sh.body, beyond: sh.beyond}
+		panels := s.refine(sh, limit)
+		s.rough = s.rough || len(panels) != len(sh.panels)
+		for _, q := range panels {
+			s.rough = s.rough || q.Edged()
 			if len(s.tiles) >= limit {
-				return s.tooLarge(k)
+				return s.tooLarge(sh.body)
 			}
-			q := &s.parts[first+p.Part]
-			q.tiles = append(q.tiles, len(s.tiles))
-			s.tiles = append(s.tiles, newTile(p, k, first+p.Part, s.inner, &s.pieces))
+			p.tiles = append(p.tiles, len(s.tiles))
+			s.tiles = append(s.tiles, newTile(q, sh.body, len(s.parts), s.inner, &s.pieces))
 		}
+		s.parts = append(s.parts, p)
 	}
 	return nil
 }
@@ -157,85 +157,6 @@ func (s *System) cut() error {
 func (s *System) tooLarge(body int) error {
 	return fmt.Errorf("response: %w: body %d takes the mesh beyond %d panels of %d nodes, MaxUnknowns is %d; raise it, lower Order or Halve, or widen small gaps",
 		ErrTooLarge, body, s.set.MaxUnknowns/(s.set.Order*s.set.Order), s.set.Order*s.set.Order, s.set.MaxUnknowns)
-}
-
-// refine halves the panels of a body that are large beside their distance from another body.
-func (s *System) refine(body int, panels []*panel.Panel, limit int) []*panel.Panel {
-	var done []*panel.Panel
-	for len(panels) > 0 {
-		p := panels[len(panels)-1]
-		panels = panels[:len(panels)-1]
-		l := p.Lengths()
-		along := 0
-		if l[1] > l[0] {
-			along = 1
-		}
-		if len(done)+len(panels) > limit || !s.near(body, p, l[along]) {
-			done = append(done, p)
-			continue
-		}
-		h := p.Halves(along)
-		panels = append(panels, h[0], h[1])
-	}
-	return done
-}
-
-// near reports whether a panel is too large for its distance from some other body.
-func (s *System) near(body int, p *panel.Panel, length float64) bool {
-	for k, b := range s.bodies {
-		if k == body {
-			continue
-		}
-		size := min(halfDiagonal(s.bounds[k]), halfDiagonal(s.bounds[body]))
-		limit := length / s.set.Gap
-		limit *= limit / size // the distance below which the panel is too large
-		if boxDistance(s.bounds[k], p.Point(0.5, 0.5)) > limit+length {
-			continue
-		}
-		for i := range 9 {
-			if _, d := geom.Nearest(b, p.Point(float64(i%3)/2, float64(i/3)/2)); d < limit {
-				return true
-			}
-		}
-	}
-	return false
-}
-
-func halfDiagonal(b r3.Box) float64 { return r3.Norm(r3.Sub(b.Max, b.Min)) / 2 }
-
-// boxDistance returns the distance of x from a box, 0 inside.
-func boxDistance(b r3.Box, x r3.Vec) float64 {
-	return r3.Norm(r3.Vec{
-		X: max(b.Min.X-x.X, 0, x.X-b.Max.X),
-		Y: max(b.Min.Y-x.Y, 0, x.Y-b.Max.Y),
-		Z: max(b.Min.Z-x.Z, 0, x.Z-b.Max.Z),
-	})
-}
-
-// apart refuses bodies that touch or overlap, judged at the points of the panels.
-func (s *System) apart() error {
-	for _, t := range s.tiles {
-		for k := range s.bodies {
-			if k == t.body {
-				continue
-			}
-			slack := 1e-9 * halfDiagonal(s.bounds[k])
-			points := t.whole.samples[:]
-			if boxDistance(s.bounds[k], t.centre) <= 2*t.radius+slack {
-				points = append(append([]r3.Vec(nil), points...), t.whole.x...)
-			}
-			for _, x := range points {
-				if boxDistance(s.bounds[k], x) > slack {
-					continue
-				}
-				if s.locators[k].Locate(pair.VecOf(x), slack).Region != geom.Outside {
-					return fmt.Errorf("response: %w: body %d has the point (%v, %v, %v) in or on body %d; leave a gap, or give parts of one material as one body",
-						ErrOverlap, t.body, x.X, x.Y, x.Z, k)
-				}
-			}
-		}
-	}
-	return nil
 }
 
 // level computes one of the three meshes.

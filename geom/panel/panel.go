@@ -49,6 +49,9 @@ func (p *Panel) Point(s, t float64) r3.Vec {
 	return x
 }
 
+// Edged reports whether the panel is graded towards an edge, whether or not it reaches the edge.
+func (p *Panel) Edged() bool { return p.axes[0].graded != 0 || p.axes[1].graded != 0 }
+
 // Halves cuts the panel in the middle of a parameter: 0 for s, 1 for t.
 func (p *Panel) Halves(along int) [2]*Panel {
 	low, high := *p, *p
