@@ -145,7 +145,7 @@ func (s *System) Hold(ctx context.Context, materials []Material, potentials []fl
 	if err != nil {
 		return nil, err
 	}
-	rise := make([]float64, len(which))
+	rise := make([]Value, len(which))
 	for i, body := range which {
 		v, err := r.Potential(body)
 		if err != nil {
@@ -154,14 +154,21 @@ func (s *System) Hold(ctx context.Context, materials []Material, potentials []fl
 		if math.IsNaN(v.Value) {
 			return nil, fmt.Errorf("response: conductor %d (body %d) cannot be held at a potential: the applied field has none there; use a source with a potential", i, body)
 		}
-		rise[i] = potentials[i] - v.Value
+		rise[i] = Value{potentials[i] - v.Value, v.Estimate}
 	}
+	doubt := make([]float64, len(materials))
 	for i, body := range which {
-		for j := range rise {
-			floating[body].Charge += c[i][j].Value * rise[j]
+		for j, v := range rise {
+			floating[body].Charge += c[i][j].Value * v.Value
+			doubt[body] += c[i][j].Estimate*math.Abs(v.Value) + math.Abs(c[i][j].Value)*v.Estimate
 		}
 	}
-	return s.Solve(ctx, floating, applied)
+	held, err := s.Solve(ctx, floating, applied)
+	if err != nil {
+		return nil, err
+	}
+	held.doubt = doubt
+	return held, nil
 }
 
 // conductors returns the indices of the materials that are conductors.

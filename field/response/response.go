@@ -19,6 +19,8 @@ type Response struct {
 	applied   field.Source
 	rigid     []rigid
 	layers    []layer
+	passed    []bool      // which parts the applied field has a flux through
+	doubt     []float64   // what the charge of each held conductor may be off by
 	loads     [][]float64 // for each level the charges at the points of the kept pieces
 	trend     trend
 	density   float64 // root mean square of the induced density
@@ -111,5 +113,9 @@ func (r *Response) Charge(body int) Value {
 			}
 		}
 	}
-	return r.trend.limit(v)
+	q := r.trend.limit(v)
+	if r.doubt != nil {
+		q.Estimate += r.doubt[body]
+	}
+	return q
 }

@@ -95,7 +95,7 @@ func (s *System) refine(sh sheet, limit int) []*panel.Panel {
 		if l[1] > l[0] {
 			along = 1
 		}
-		if len(done)+len(panels) > limit || !s.near(sh, p, l[along]) {
+		if len(done)+len(panels) > limit || !s.near(sh, p, l[along]) && !s.pointed(p, l[along]) {
 			done = append(done, p)
 			continue
 		}
@@ -103,6 +103,18 @@ func (s *System) refine(sh sheet, limit int) []*panel.Panel {
 		panels = append(panels, h[0], h[1])
 	}
 	return done
+}
+
+// pointed reports whether a panel is longer than its distance from one of the points of the settings.
+func (s *System) pointed(p *panel.Panel, length float64) bool {
+	for _, x := range s.set.Near {
+		for i := range 25 {
+			if distance(x, p.Point(float64(i%5)/4, float64(i/5)/4)) < length {
+				return true
+			}
+		}
+	}
+	return false
 }
 
 // near reports whether a panel is too large for its distance from some other body.
@@ -138,25 +150,19 @@ func boxDistance(b r3.Box, x r3.Vec) float64 {
 	})
 }
 
-// apart refuses bodies that touch or overlap, judged at the points of the panels.
-func (s *System) apart() error {
-	for _, t := range s.tiles {
-		for k := range s.bodies {
-			if k == t.body || k == s.parts[t.part].beyond {
-				continue
-			}
-			slack := 1e-9 * halfDiagonal(s.bounds[k])
-			points := t.whole.samples[:]
-			if boxDistance(s.bounds[k], t.centre) <= 2*t.radius+slack {
-				points = append(append([]r3.Vec(nil), points...), t.whole.x...)
-			}
-			for _, x := range points {
-				if boxDistance(s.bounds[k], x) > slack {
-					continue
-				}
-				if s.locators[k].Locate(pair.VecOf(x), slack).Region != geom.Outside {
+// apart refuses bodies that touch or overlap, judged at the points of a grid of 9 x 9 on every panel.
+func (s *System) apart(sh sheet) error {
+	for k := range s.bodies {
+		if k == sh.body || k == sh.beyond {
+			continue
+		}
+		slack := 1e-9 * halfDiagonal(s.bounds[k])
+		for _, p := range sh.panels {
+			for i := range 81 {
+				x := p.Point(float64(i%9)/8, float64(i/9)/8)
+				if boxDistance(s.bounds[k], x) <= slack && s.locators[k].Locate(pair.VecOf(x), slack).Region != geom.Outside {
 					return fmt.Errorf("response: %w: body %d has the point (%v, %v, %v) in or on body %d; leave a gap, or give parts of one material as one body",
-						ErrOverlap, t.body, x.X, x.Y, x.Z, k)
+						ErrOverlap, sh.body, x.X, x.Y, x.Z, k)
 				}
 			}
 		}

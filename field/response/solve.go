@@ -94,9 +94,11 @@ func (s *System) Solve(ctx context.Context, materials []Material, applied field.
 	if len(materials) != len(s.bodies) {
 		return nil, fmt.Errorf("response: %w: %d materials for %d bodies; give one for each", ErrMaterial, len(materials), len(s.bodies))
 	}
-	r := &Response{system: s, materials: append([]Material(nil), materials...), applied: applied}
+	r := &Response{system: s, materials: append([]Material(nil), materials...), applied: applied,
+		layers: make([]layer, len(s.levels))}
+	var err error
 	for k, m := range materials {
-		if err := m.check(k); err != nil {
+		if err = m.check(k); err != nil {
 			return nil, err
 		}
 		c, err := s.rigid(k, m)
@@ -105,14 +107,12 @@ func (s *System) Solve(ctx context.Context, materials []Material, applied field.
 		}
 		r.rigid = append(r.rigid, c)
 	}
-	for k := range s.levels {
-		l, err := r.solve(ctx, &s.levels[k])
-		if err != nil {
+	for k := len(s.levels) - 1; k >= 0; k-- { // the finest mesh decides which flux of the applied field is real
+		if r.layers[k], err = r.solve(ctx, &s.levels[k]); err != nil {
 			return nil, err
 		}
-		r.layers = append(r.layers, l)
 		if s.set.Progress != nil {
-			s.set.Progress("solution", float64(k+1)/float64(len(s.levels)))
+			s.set.Progress("solution", 1-float64(k)/float64(len(s.levels)))
 		}
 	}
 	r.load()
@@ -250,28 +250,50 @@ const through = 0.02
 // inside, and refuses sources in the bodies.
 func (r *Response) balance(l *level, normal []float64) error {
 	s := r.system
-	net, all := make([]float64, len(s.bodies)), make([]float64, len(s.bodies))
+	fluxes, sizes := make([]float64, len(s.parts)), make([]float64, len(s.parts))
 	for c, p := range s.parts {
-		flux, size := 0.0, 0.0
 		s.nodesOf(l, c, func(i int) {
-			flux += l.area[i] * normal[i]
-			size += l.area[i] * math.Abs(normal[i])
+			fluxes[c] += l.area[i] * normal[i]
+			sizes[c] += l.area[i] * math.Abs(normal[i])
 		})
-		if math.IsNaN(flux) || math.IsInf(flux, 0) {
+		if math.IsNaN(fluxes[c]) || math.IsInf(fluxes[c], 0) {
 			return fmt.Errorf("response: %w: the applied field does not exist on body %d; move the source off it", ErrSourceInside, p.body)
 		}
-		net[p.body] += flux
-		all[p.body] += size
-		if math.Abs(flux) <= through*size {
-			s.nodesOf(l, c, func(i int) { normal[i] -= flux / l.areas[c] })
-			net[p.body] -= flux
-		} else if p.beyond >= 0 {
-			net[p.beyond] -= flux
+	}
+	if r.passed == nil {
+		if err := r.judge(fluxes, sizes); err != nil {
+			return err
+		}
+	}
+	for c := range s.parts {
+		if !r.passed[c] {
+			s.nodesOf(l, c, func(i int) { normal[i] -= fluxes[c] / l.areas[c] })
+		}
+	}
+	return nil
+}
+
+// judge decides for each part whether the applied field passes through it, from sources in a cavity, and refuses sources in the
+// bodies.
+func (r *Response) judge(fluxes, sizes []float64) error {
+	s := r.system
+	r.passed = make([]bool, len(s.parts))
+	net, all := make([]float64, len(s.bodies)), make([]float64, len(s.bodies))
+	for c, p := range s.parts {
+		if math.Abs(fluxes[c]) <= through*sizes[c] {
+			continue
+		}
+		r.passed[c] = true
+		net[p.body] += fluxes[c]
+		all[p.body] += sizes[c]
+		if p.beyond >= 0 {
+			net[p.beyond] -= fluxes[c]
+			all[p.beyond] += sizes[c]
 		}
 	}
 	for k := range net {
 		if math.Abs(net[k]) > through*all[k] {
-			return fmt.Errorf("response: %w: the applied field has the flux %.3g out of body %d, of %.3g in all; put its charges outside the body, or if they are, farther off or use a finer mesh",
+			return fmt.Errorf("response: %w: the applied field has the flux %.3g out of body %d, of %.3g in all; put its charges outside the body, or if they are, farther off or among Settings.Near",
 				ErrSourceInside, net[k], k, all[k])
 		}
 	}

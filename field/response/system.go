@@ -20,6 +20,9 @@ type Settings struct {
 	// Gap is the largest size of a panel near another body, in units of the root of distance times the size of the smaller of
 	// the two bodies. Default 2.
 	Gap float64
+	// Near are points of sources that vary over a distance less than the size of the bodies: point charges, dipoles, edges of
+	// magnets. Panels are halved until none is longer than its distance from such a point. Default none.
+	Near []r3.Vec
 	// MaxUnknowns is the number of unknowns of the finest mesh beyond which Prepare refuses: the matrices take 12 bytes times
 	// its square. Default 8000.
 	MaxUnknowns int
@@ -117,9 +120,6 @@ func Prepare(ctx context.Context, bodies []geom.Body, set *Settings) (*System, e
 	if err := s.cut(); err != nil {
 		return nil, err
 	}
-	if err := s.apart(); err != nil {
-		return nil, err
-	}
 	for k, order := range []int{c.Order - 4, c.Order - 2, c.Order} {
 		l, err := s.level(ctx, order, k)
 		if err != nil {
@@ -136,6 +136,11 @@ func (s *System) cut() error {
 	sheets, err := s.sheets()
 	if err != nil {
 		return err
+	}
+	for _, sh := range sheets {
+		if err := s.apart(sh); err != nil {
+			return err
+		}
 	}
 	for _, sh := range sheets {
 		p := part{body: sh.body, beyond: sh.beyond}

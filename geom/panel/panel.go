@@ -121,7 +121,7 @@ func (a axis) at(s float64) (u, du float64) {
 // Settings says how finely to cut.
 type Settings struct {
 	Turn   float64 // largest angle that a panel may turn through, in radians; 0: 0.9
-	Aspect float64 // largest ratio of its lengths; 0: 6
+	Aspect float64 // largest ratio of the lengths of a panel longer than half the size of the body; 0: 6. Others: five times that
 	Halve  int     // how many times to halve every panel in both directions beside; 0: not
 }
 
@@ -163,7 +163,7 @@ func Of(body geom.Body, set Settings) ([]*Panel, error) {
 	var cut []*Panel
 	for _, p := range whole {
 		for _, q := range p.grade(body, size) {
-			cut = q.refine(cut, set, set.Halve)
+			cut = q.refine(cut, set, size, set.Halve)
 		}
 	}
 	return cut, nil
@@ -206,22 +206,26 @@ func (p *Panel) graded(along int, edge [2]bool) []*Panel {
 }
 
 // refine appends the panel, cut until it is as the settings want it.
-func (p *Panel) refine(list []*Panel, set Settings, halve int) []*Panel {
+func (p *Panel) refine(list []*Panel, set Settings, size float64, halve int) []*Panel {
 	l := p.Lengths()
+	aspect := set.Aspect
+	if max(l[0], l[1]) < size/2 {
+		aspect *= 5
+	}
 	along := -1
 	switch {
 	case p.turning(0) > set.Turn:
 		along = 0
 	case p.turning(1) > set.Turn:
 		along = 1
-	case l[0] > set.Aspect*l[1]:
+	case l[0] > aspect*l[1]:
 		along = 0
-	case l[1] > set.Aspect*l[0]:
+	case l[1] > aspect*l[0]:
 		along = 1
 	}
 	if along >= 0 {
 		for _, q := range p.Halves(along) {
-			list = q.refine(list, set, halve)
+			list = q.refine(list, set, size, halve)
 		}
 		return list
 	}
@@ -230,7 +234,7 @@ func (p *Panel) refine(list []*Panel, set Settings, halve int) []*Panel {
 	}
 	for _, q := range p.Halves(0) {
 		for _, r := range q.Halves(1) {
-			list = r.refine(list, set, halve-1)
+			list = r.refine(list, set, size, halve-1)
 		}
 	}
 	return list
