@@ -191,6 +191,27 @@ func TestForce(t *testing.T) {
 	}
 }
 
+// TestAxis holds an anisotropic ellipsoid with a fixed part, turned, against p_i = (p0 + chi_i g)_i/(1 + n_i chi_i).
+func TestAxis(t *testing.T) {
+	e := geom.Ellipsoid{SemiAxes: r3.Vec{X: 1, Y: 1.5, Z: 0.8}}
+	pose, err := geom.Turn(r3.Vec{X: 1, Y: 2, Z: -1}, 40)
+	if err != nil {
+		t.Fatal(err)
+	}
+	s := prepare(t, &response.Settings{Order: 6}, geom.At(e, pose))
+	n := closedform.EllipsoidFactors(e.SemiAxes)
+	for _, along := range []float64{0.02, 5} {
+		m := response.Material{Chi: 0.1, Axis: r3.Vec{Z: 2}, Along: along, Fixed: field.Uniform{P: r3.Vec{Y: 1, Z: 1}}}
+		g := r3.Vec{X: 1, Y: -0.5, Z: 2} // in the frame of the body
+		r := solve(t, s, response.Uniform{G: pose.VectorToOuter(g)}, m)
+		want := r3.Vec{X: m.Chi * g.X / (1 + n.X*m.Chi), Y: (1 + m.Chi*g.Y) / (1 + n.Y*m.Chi), Z: (1 + along*g.Z) / (1 + n.Z*along)}
+		got := r.Moment(0)
+		if d := r3.Norm(r3.Sub(pose.VectorToLocal(got.Value), r3.Scale(e.Volume(), want))); d > 1e-5*r3.Norm(got.Value) || d > got.Estimate { // order 6
+			t.Errorf("along %g: moment off by %.1e, estimate %.1e", along, d, got.Estimate)
+		}
+	}
+}
+
 // TestRigid demands that a body without susceptibility is its bound charge.
 func TestRigid(t *testing.T) {
 	box := geom.Box{Size: r3.Vec{X: 1, Y: 1, Z: 1}}
@@ -240,7 +261,7 @@ func TestErrors(t *testing.T) {
 		{"overlapping", []geom.Body{ball, geom.Box{Size: r3.Vec{X: 1, Y: 1, Z: 1}}}, small, response.ErrOverlap},
 		{"open", []geom.Body{geom.Sphere{Radius: -1}}, nil, nil},
 		{"large", []geom.Body{ball}, &response.Settings{Halve: 3}, response.ErrTooLarge},
-		{"order", []geom.Body{ball}, &response.Settings{Order: 5}, nil},
+		{"order", []geom.Body{ball}, &response.Settings{Order: 2}, nil},
 	} {
 		_, err := response.Prepare(ctx, c.bodies, c.set)
 		if err == nil || c.want != nil && !errors.Is(err, c.want) {

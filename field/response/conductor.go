@@ -68,11 +68,7 @@ func (r *Response) knownPotential(x r3.Vec) field.Value {
 	if r.applied != nil {
 		sum = append(sum, r.applied)
 	}
-	for _, c := range r.rigid {
-		if c.Charge != nil {
-			sum = append(sum, field.Scaled{Source: c.Charge, Factor: c.factor})
-		}
-	}
+	sum = append(sum, r.whole[1:]...)
 	return field.At(sum, x, field.Mean, field.WantPhi|field.WantErr)
 }
 

@@ -51,7 +51,10 @@ func (r *Response) Force(body int, about r3.Vec) (force, torque Vector, err erro
 				})
 			}
 		}
-		if c := r.rigid[body]; c.Charge != nil {
+		for _, c := range r.rigid {
+			if c.body != body {
+				continue
+			}
 			for _, v := range c.Volumes {
 				v.Cell.Nodes(l.order, func(x r3.Vec, w float64) {
 					if rho := c.VolumeDensity(x); rho != 0 {
@@ -70,11 +73,13 @@ func (r *Response) Force(body int, about r3.Vec) (force, torque Vector, err erro
 
 // fixedOn returns the density of the fixed charge on a face.
 func (r *Response) fixedOn(body int, x, n r3.Vec) float64 {
-	c := r.rigid[body]
-	if c.Charge == nil {
-		return 0
+	sigma := 0.0
+	for _, c := range r.rigid {
+		if c.body == body {
+			sigma += c.factor * c.Density(x, n)
+		}
 	}
-	return c.factor * c.Density(x, n)
+	return sigma
 }
 
 // outer returns g at points of a body on one mesh, of all but the body itself.
@@ -91,8 +96,8 @@ func (r *Response) outer(at []r3.Vec, body, k int) []r3.Vec {
 	if r.applied != nil {
 		add(r.applied, 1)
 	}
-	for b, c := range r.rigid {
-		if b != body && c.Charge != nil {
+	for _, c := range r.rigid {
+		if c.body != body {
 			add(c.Charge, c.factor)
 		}
 	}
@@ -130,8 +135,8 @@ func (r *Response) vector(v [3][3]float64) Vector {
 // Domain: bodies without a fixed part and without charge of their own, in an applied field with a potential; NaN otherwise.
 func (r *Response) Energy() Value {
 	nan := Value{math.NaN(), math.Inf(1)}
-	for k, m := range r.materials {
-		if m.Charge != 0 || r.rigid[k].Charge != nil {
+	for _, m := range r.materials {
+		if m.Charge != 0 || m.Fixed != nil {
 			return nan
 		}
 	}
@@ -146,9 +151,32 @@ func (r *Response) Energy() Value {
 		for i, q := range r.layers[k].charge {
 			w[k] += 0.5 * q * v.Phi[i]
 		}
+		for _, c := range r.rigid { // of what is anisotropic
+			w[k] += r.fixedEnergy(c, k)
+		}
 	}
 	if math.IsNaN(w[2]) {
 		return nan
 	}
 	return r.trend.limit(w)
+}
+
+// fixedEnergy returns (1/2) int sigma phi_applied dA + (1/2) int rho phi_applied dV of fixed charge, on the nodes of a mesh.
+func (r *Response) fixedEnergy(c rigid, k int) float64 {
+	l := &r.system.levels[k]
+	sum := 0.0
+	phi := func(x r3.Vec) float64 { return field.At(r.applied, x, field.Mean, field.WantPhi).Phi }
+	for p, part := range r.system.parts {
+		if part.body == c.body {
+			r.system.nodesOf(l, p, func(i int) { sum += l.area[i] * c.Density(l.x[i], l.n[i]) * phi(l.x[i]) })
+		}
+	}
+	for _, v := range c.Volumes {
+		v.Cell.Nodes(l.order, func(x r3.Vec, w float64) {
+			if rho := c.VolumeDensity(x); rho != 0 {
+				sum += w * rho * phi(x)
+			}
+		})
+	}
+	return 0.5 * c.factor * sum
 }

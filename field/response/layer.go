@@ -165,13 +165,10 @@ func (w *probe) add(s *sum, y []r3.Vec, charge []float64) {
 	s.g = r3.Add(s.g, r3.Vec{X: gx, Y: gy, Z: gz})
 }
 
-// induced returns the value of the induced charge of one body, or of all for -1.
-func (r *Response) induced(p field.Point, side field.Side, want field.Want, only int) field.Value {
+// induced returns the value of the induced charge at a point.
+func (r *Response) induced(p field.Point, side field.Side, want field.Want) field.Value {
 	x := p.X.Value()
 	for k := range r.system.bodies {
-		if only >= 0 && k != only {
-			continue
-		}
 		size := halfDiagonal(r.system.bounds[k])
 		close := 1e-6 * size
 		if boxDistance(r.system.bounds[k], x) > close {
@@ -179,21 +176,21 @@ func (r *Response) induced(p field.Point, side field.Side, want field.Want, only
 		}
 		at := r.system.locators[k].Locate(pair.VecOf(x), close)
 		if at.Region == geom.On && !(at.Edge && r.system.locators[k].Locate(p.X, p.Slack).Region != geom.On) {
-			return r.hugging(k, p, side, want, only, at, close)
+			return r.hugging(k, p, side, want, at, close)
 		}
 	}
-	return r.plain(x, want, only)
+	return r.plain(x, want)
 }
 
 // plain returns the value off all faces.
-func (r *Response) plain(x r3.Vec, want field.Want, only int) field.Value {
+func (r *Response) plain(x r3.Vec, want field.Want) field.Value {
 	w := probes.Get().(*probe)
 	defer probes.Put(w)
 	first := 2
 	if want&field.WantErr != 0 {
 		first = 0
 	}
-	w.at(r, x, only, first, want&field.WantGrad != 0)
+	w.at(r, x, -1, first, want&field.WantGrad != 0)
 	return w.value(want)
 }
 
@@ -232,10 +229,10 @@ func tensorNorm(t *[6]float64) float64 {
 
 // hugging returns the value at a point within close of a face, or on an edge: that of the same side on the line through the
 // point along the normal, from the values at close and twice close.
-func (r *Response) hugging(body int, p field.Point, side field.Side, want field.Want, only int, at geom.Place, close float64) field.Value {
+func (r *Response) hugging(body int, p field.Point, side field.Side, want field.Want, at geom.Place, close float64) field.Value {
 	exact := r.system.locators[body].Locate(p.X, p.Slack)
 	if exact.Region == geom.On && exact.Edge {
-		v := r.plain(r3.Add(p.X.Value(), r3.Scale(close, outwards(r.system.bodies[body], p.X.Value()))), want, only)
+		v := r.plain(r3.Add(p.X.Value(), r3.Scale(close, outwards(r.system.bodies[body], p.X.Value()))), want)
 		nowhere := field.Nowhere(field.OnEdge)
 		nowhere.Phi, nowhere.ErrPhi = v.Phi, v.ErrPhi+close*r3.Norm(v.G)
 		return nowhere
@@ -244,8 +241,8 @@ func (r *Response) hugging(body int, p field.Point, side field.Side, want field.
 	_, depth := geom.Nearest(r.system.bodies[body], x)
 	one := func(sign, depth float64) field.Value {
 		foot := r3.Sub(x, r3.Scale(sign*depth, at.Normal))
-		near := r.plain(r3.Add(foot, r3.Scale(sign*close, at.Normal)), want, only)
-		next := r.plain(r3.Add(foot, r3.Scale(2*sign*close, at.Normal)), want, only)
+		near := r.plain(r3.Add(foot, r3.Scale(sign*close, at.Normal)), want)
+		next := r.plain(r3.Add(foot, r3.Scale(2*sign*close, at.Normal)), want)
 		return towards(near, next, (close-depth)/close)
 	}
 	switch {

@@ -62,8 +62,13 @@ func newMesh(tiles []*tile, order int, inner *rule) *mesh {
 func (m *mesh) tileOf(node int) int { return node / (m.order * m.order) }
 
 // far returns the distance from the centre of a tile, in units of its radius, from which the nodes alone are a good rule
-// for the field of the tile: where an ellipse about it with the sum 10^(5/n) of its semi-axes ends, 1e-10 being left out.
+// for the field of the tile: where an ellipse about it with the sum 10^(5/n) of its semi-axes ends, 1e-10 being left out, or
+// 10^(3/n) and 1e-6 for the low orders, whose own error is larger by far.
 func far(order int) float64 {
-	rb := math.Pow(10, 5/float64(order))
+	digits := 5.0
+	if order < 4 {
+		digits = 3
+	}
+	rb := math.Pow(10, digits/float64(order))
 	return max(2, (rb+1/rb)/2)
 }

@@ -18,6 +18,7 @@ type Response struct {
 	materials []Material
 	applied   field.Source
 	rigid     []rigid
+	whole     field.Sum // the induced and the fixed charge
 	layers    []layer
 	passed    []bool      // which parts the applied field has a flux through
 	doubt     []float64   // what the charge of each held conductor may be off by
@@ -26,6 +27,17 @@ type Response struct {
 	density   float64 // root mean square of the induced density
 	size      float64 // root of the area of all bodies
 	Report    Report
+}
+
+// induced is the source of the induced charge alone.
+type induced struct{ r *Response }
+
+// Field returns g at x.
+func (s induced) Field(x r3.Vec) r3.Vec { return field.At(s, x, field.Mean, field.WantG).G }
+
+// Evaluate computes the arrays of dst; see field.Evaluator.
+func (s induced) Evaluate(dst *field.Values, at *field.Points, side field.Side) {
+	field.Fill(dst, at, func(p field.Point, want field.Want) field.Value { return s.r.induced(p, side, want) })
 }
 
 // Value is a number and an estimate of its error.
@@ -42,16 +54,7 @@ func (r *Response) Field(x r3.Vec) r3.Vec { return field.At(r, x, field.Mean, fi
 
 // Evaluate computes the arrays of dst; see field.Evaluator.
 func (r *Response) Evaluate(dst *field.Values, at *field.Points, side field.Side) {
-	field.Fill(dst, at, func(p field.Point, want field.Want) field.Value {
-		return r.induced(p, side, want, -1)
-	})
-	for _, c := range r.rigid {
-		if c.Charge != nil {
-			v := field.NewValues(at.Len(), dst.Want())
-			field.Evaluate(field.Scaled{Source: c.Charge, Factor: c.factor}, v, at, side)
-			dst.Add(v)
-		}
-	}
+	r.whole.Evaluate(dst, at, side)
 }
 
 // Bounds returns a box that holds all charge.
@@ -68,8 +71,10 @@ func (r *Response) Bounds() r3.Box {
 // part that two bodies share counts for the one that was given first; Total is free of that.
 func (r *Response) Moment(body int) Vector {
 	m := r.moment(func(p part) bool { return p.body == body })
-	if c := r.rigid[body]; c.Charge != nil {
-		m.Value = r3.Add(m.Value, r3.Scale(c.factor, c.Charge.Moment))
+	for _, c := range r.rigid {
+		if c.body == body {
+			m.Value = r3.Add(m.Value, r3.Scale(c.factor, c.Moment))
+		}
 	}
 	return m
 }
@@ -78,9 +83,7 @@ func (r *Response) Moment(body int) Vector {
 func (r *Response) Total() Vector {
 	m := r.moment(func(part) bool { return true })
 	for _, c := range r.rigid {
-		if c.Charge != nil {
-			m.Value = r3.Add(m.Value, r3.Scale(c.factor, c.Charge.Moment))
-		}
+		m.Value = r3.Add(m.Value, r3.Scale(c.factor, c.Moment))
 	}
 	return m
 }

@@ -19,7 +19,7 @@ type sheet struct {
 func (s *System) sheets() ([]sheet, error) {
 	var all []sheet
 	for k, b := range s.bodies {
-		panels, err := panel.Of(b, panel.Settings{Halve: s.set.Halve})
+		panels, err := panel.Of(b, panel.Settings{Halve: s.set.Halve, Plain: s.set.Plain})
 		if err != nil {
 			return nil, fmt.Errorf("response: body %d: %w", k, err)
 		}

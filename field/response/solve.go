@@ -14,6 +14,12 @@ import (
 type Material struct {
 	// Chi is the susceptibility, from -1 (no field of g + p enters) to +Inf (conductor; iron without limit). Default 0: rigid.
 	Chi float64
+	// Axis, if not zero, makes the body anisotropic: Along is its susceptibility along Axis, in the frame of the body, and Chi
+	// that across. What Along adds is taken as an affine polarization along the axis, the one nearest to (Along - Chi) g.Axis in
+	// the mean over the body: exact for ellipsoids in affine fields whatever Along, and for the moment of every body to
+	// first order in Along - Chi, as for the recoil of a magnet. Both are finite and above -1.
+	Axis  r3.Vec
+	Along float64
 	// Fixed is p0 in the frame of the body, nil for none. It needs Chi above -1; in a conductor it has no effect.
 	Fixed field.Polarization
 	// Charge is the total charge of a conductor (Chi = +Inf) that is not connected. It is zero for every other body.
@@ -28,6 +34,9 @@ func (m Material) check(body int) error {
 		return fmt.Errorf("response: %w: body %d has the susceptibility -1 and a fixed part, which no finite charge can screen; leave Fixed nil or Chi above -1", ErrMaterial, body)
 	case math.IsNaN(m.Charge) || math.IsInf(m.Charge, 0):
 		return fmt.Errorf("response: %w: body %d has the charge %v; give a finite one", ErrMaterial, body, m.Charge)
+	case m.Axis != r3.Vec{} && !(m.Along > -1 && m.Chi > -1 && !math.IsInf(m.Along, 1) && !math.IsInf(m.Chi, 1)):
+		return fmt.Errorf("response: %w: body %d has the susceptibilities %v along its axis and %v across; give finite ones above -1, or no axis",
+			ErrMaterial, body, m.Along, m.Chi)
 	case m.Charge != 0 && !math.IsInf(m.Chi, 1):
 		return fmt.Errorf("response: %w: body %d has the charge %v and the susceptibility %v; only conductors (+Inf) carry charge, add that of an insulator to the applied field",
 			ErrMaterial, body, m.Charge, m.Chi)
@@ -66,48 +75,57 @@ func (r *Response) factors(c int) (alpha, beta float64) {
 	return factors(r.materials[p.body].Chi, beyond)
 }
 
-// rigid is the part of a body's charge that does not depend on the others: that of p0/(1 + chi), whose volume charge is the
+// rigid is a part of a body's charge that does not depend on the others: that of p0/(1 + chi), whose volume charge is the
 // whole volume charge of the body, since div p = div p0 + chi div g = div p0 - chi div p.
 type rigid struct {
 	*bound.Charge
 	factor float64
+	body   int
 }
 
-func (s *System) rigid(body int, m Material) (rigid, error) {
-	if m.Fixed == nil || math.IsInf(m.Chi, 1) {
-		return rigid{}, nil
-	}
-	c, err := bound.Of(s.bodies[body], m.Fixed)
+// fix returns the charge of a fixed part of a body.
+func (s *System) fix(body int, chi float64, p field.Polarization) (rigid, error) {
+	c, err := bound.Of(s.bodies[body], p)
 	if err != nil {
 		return rigid{}, fmt.Errorf("response: body %d: %w", body, err)
 	}
-	return rigid{c, 1 / (1 + m.Chi)}, nil
+	return rigid{c, 1 / (1 + chi), body}, nil
 }
 
 // Solve returns the response to the applied field, which may be nil for none: what the bodies carry, each of its material,
 // in that field and in each other's.
 //
-// Domain: all sources of the applied field lie outside the bodies, and not nearer to them than the size of a panel over 20.
+// Domain: all sources of the applied field lie outside the bodies, and not nearer to them than the size of a panel over 20
+// (see Settings.Near).
 // It fails with ErrMaterial for a material that cannot be, with ErrSourceInside where the applied field carries a charge inside
 // a body, with ErrNotConverged, and with the context's error.
 func (s *System) Solve(ctx context.Context, materials []Material, applied field.Source) (*Response, error) {
 	if len(materials) != len(s.bodies) {
 		return nil, fmt.Errorf("response: %w: %d materials for %d bodies; give one for each", ErrMaterial, len(materials), len(s.bodies))
 	}
-	r := &Response{system: s, materials: append([]Material(nil), materials...), applied: applied,
-		layers: make([]layer, len(s.levels))}
-	var err error
+	var fixed []rigid
 	for k, m := range materials {
-		if err = m.check(k); err != nil {
+		if err := m.check(k); err != nil {
 			return nil, err
 		}
-		c, err := s.rigid(k, m)
+		if m.Fixed == nil || math.IsInf(m.Chi, 1) {
+			continue
+		}
+		c, err := s.fix(k, m.Chi, m.Fixed)
 		if err != nil {
 			return nil, err
 		}
-		r.rigid = append(r.rigid, c)
+		fixed = append(fixed, c)
 	}
+	return s.settle(ctx, materials, applied, fixed)
+}
+
+// once solves with given fixed charge.
+func (s *System) once(ctx context.Context, materials []Material, applied field.Source, fixed []rigid) (*Response, error) {
+	r := &Response{system: s, materials: append([]Material(nil), materials...), applied: applied, rigid: fixed,
+		layers: make([]layer, len(s.levels))}
 	for k := len(s.levels) - 1; k >= 0; k-- { // the finest mesh decides which flux of the applied field is real
+		var err error
 		if r.layers[k], err = r.solve(ctx, &s.levels[k]); err != nil {
 			return nil, err
 		}
@@ -116,6 +134,10 @@ func (s *System) Solve(ctx context.Context, materials []Material, applied field.
 		}
 	}
 	r.load()
+	r.whole = field.Sum{induced{r}}
+	for _, c := range fixed {
+		r.whole = append(r.whole, field.Scaled{Source: c.Charge, Factor: c.factor})
+	}
 	r.follow()
 	r.report()
 	return r, nil
@@ -230,12 +252,9 @@ func (r *Response) normals(l *level) []float64 {
 	if r.applied != nil {
 		add(r.applied, 1)
 	}
-	for k, c := range r.rigid {
-		if c.Charge == nil {
-			continue
-		}
+	for _, c := range r.rigid {
 		for i := range at.Slack {
-			at.Slack[i] = 1e-13 * halfDiagonal(r.system.bounds[k])
+			at.Slack[i] = 1e-13 * halfDiagonal(r.system.bounds[c.body])
 		}
 		add(c.Charge, c.factor)
 		clear(at.Slack)

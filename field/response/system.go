@@ -12,9 +12,11 @@ import (
 
 // Settings says how finely to solve. The zero value and nil are the defaults.
 type Settings struct {
-	// Order is the number of nodes a direction on every panel of the finest of the three meshes; the others have 2 and 4 less.
-	// Default 8; range 6 to 14.
+	// Order is the number of nodes a direction on every panel of the finest of the three meshes; the others have 2 and 4 less,
+	// or 1 and 2 less below 6. Default 8; range 3 to 14.
 	Order int
+	// Plain leaves panels ungraded at edges: for meshes of many facets that stand for a smooth surface, with Order 3 or 4.
+	Plain bool
 	// Halve is how many times every panel is halved in both directions. Default 0.
 	Halve int
 	// Gap is the largest size of a panel near another body, in units of the root of distance times the size of the smaller of
@@ -39,8 +41,8 @@ func (s *Settings) filled() (Settings, error) {
 	if c.Order == 0 {
 		c.Order = 8
 	}
-	if c.Order < 6 || c.Order > maxOrder {
-		return c, fmt.Errorf("response: order %d is outside 6 to %d; choose one inside, and Halve for finer meshes", c.Order, maxOrder)
+	if c.Order < 3 || c.Order > maxOrder {
+		return c, fmt.Errorf("response: order %d is outside 3 to %d; choose one inside, and Halve for finer meshes", c.Order, maxOrder)
 	}
 	if c.Halve < 0 {
 		return c, fmt.Errorf("response: Halve is %d; it counts halvings, give 0 or more", c.Halve)
@@ -52,6 +54,14 @@ func (s *Settings) filled() (Settings, error) {
 		c.MaxUnknowns = 8000
 	}
 	return c, nil
+}
+
+// orders returns the orders of the three meshes.
+func orders(finest int) [3]int {
+	if finest < 6 {
+		return [3]int{finest - 2, finest - 1, finest}
+	}
+	return [3]int{finest - 4, finest - 2, finest}
 }
 
 // The errors that Prepare and Solve wrap.
@@ -120,7 +130,7 @@ func Prepare(ctx context.Context, bodies []geom.Body, set *Settings) (*System, e
 	if err := s.cut(); err != nil {
 		return nil, err
 	}
-	for k, order := range []int{c.Order - 4, c.Order - 2, c.Order} {
+	for k, order := range orders(c.Order) {
 		l, err := s.level(ctx, order, k)
 		if err != nil {
 			return nil, fmt.Errorf("response: level %d of 3 not done: %w", k+1, err)
@@ -147,7 +157,7 @@ func (s *System) cut() error {
 		panels := s.refine(sh, limit)
 		s.rough = s.rough || len(panels) != len(sh.panels)
 		for _, q := range panels {
-			s.rough = s.rough || q.Edged()
+			s.rough = s.rough || q.Edged() || s.set.Plain
 			if len(s.tiles) >= limit {
 				return s.tooLarge(sh.body)
 			}

@@ -22,16 +22,17 @@ const rounding = 2e-11
 // safety is what estimates are multiplied with: powers do not describe three meshes exactly.
 const safety = 3
 
-// rough is the least that the third mesh is taken to leave where there are edges or small gaps: what the power 6 leaves of the
+// rough is the least that the third mesh is taken to leave where there are edges or small gaps: what the power 5 leaves of the
 // orders 6 and 8. The density near an edge goes like a power between -1/3 and 0 of the distance, and smooth parts that converge
 // faster can hide that on three meshes, as a gap that the first mesh does not resolve hides how the second does.
-const rough = 0.2
+const rough = 0.3
 
 func newTrend(order int) trend {
 	var t trend
 	for k := 0.5; k < 40; k *= 1.05 {
-		e := func(n int) float64 { return math.Pow(float64(n)/float64(order), -k) }
-		first, second := e(order-4)-e(order-2), e(order-2)-1
+		n := orders(order)
+		e := func(level int) float64 { return math.Pow(float64(n[level])/float64(order), -k) }
+		first, second := e(0)-e(1), e(1)-1
 		t.ratio = append(t.ratio, second/first)
 		t.rest = append(t.rest, 1/second)
 	}

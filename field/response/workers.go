@@ -13,6 +13,7 @@ func each[W any](ctx context.Context, n int, fresh func() W, do func(w W, k int)
 	var next, finished atomic.Int64
 	var group sync.WaitGroup
 	var report sync.Mutex
+	reported := 0
 	for range min(runtime.GOMAXPROCS(0), max(n, 1)) {
 		group.Add(1)
 		go func() {
@@ -26,7 +27,10 @@ func each[W any](ctx context.Context, n int, fresh func() W, do func(w W, k int)
 				do(w, k)
 				if c := int(finished.Add(1)); done != nil && c%64 == 0 {
 					report.Lock()
-					done(c)
+					if c > reported { // another worker may have been quicker
+						reported = c
+						done(c)
+					}
 					report.Unlock()
 				}
 			}

@@ -122,6 +122,7 @@ func (a axis) at(s float64) (u, du float64) {
 type Settings struct {
 	Turn   float64 // largest angle that a panel may turn through, in radians; 0: 0.9
 	Aspect float64 // largest ratio of the lengths of a panel longer than half the size of the body; 0: 6. Others: five times that
+	Plain  bool    // not graded towards edges
 	Halve  int     // how many times to halve every panel in both directions beside; 0: not
 }
 
@@ -162,7 +163,11 @@ func Of(body geom.Body, set Settings) ([]*Panel, error) {
 	join(whole, size)
 	var cut []*Panel
 	for _, p := range whole {
-		for _, q := range p.grade(body, size) {
+		parts := []*Panel{p}
+		if !set.Plain {
+			parts = p.grade(body, size)
+		}
+		for _, q := range parts {
 			cut = q.refine(cut, set, size, set.Halve)
 		}
 	}
