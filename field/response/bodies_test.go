@@ -81,7 +81,7 @@ func TestHalfSpace(t *testing.T) {
 	block := geom.At(geom.Box{Size: r3.Vec{X: 80, Y: 80, Z: 40}}, geom.Translate(r3.Vec{Z: -20}))
 	dipole := element.Dipole{At: r3.Vec{Z: 1}, Moment: r3.Vec{X: 0.6, Z: 0.8}}
 	s := prepare(t, &response.Settings{Order: 6, Near: []r3.Vec{dipole.At}}, block)
-	for _, eps := range []float64{0.5, 4, inf} {
+	for _, eps := range []float64{0.5, inf} {
 		r := solve(t, s, dipole, response.Material{Chi: eps - 1})
 		mirror := image.Image{Source: dipole, Plane: image.Plane{Normal: r3.Vec{Z: 1}, Ratio: eps}}
 		for _, x := range []r3.Vec{{Z: 1}, {X: 0.5, Y: 0.2, Z: 0.3}} {
@@ -366,8 +366,8 @@ func TestLaws(t *testing.T) {
 func TestEstimate(t *testing.T) {
 	app := response.Uniform{G: r3.Vec{X: 0.5, Z: 1}}
 	for _, body := range []geom.Body{geom.Sphere{Radius: 1}, geom.Box{Size: r3.Vec{X: 1, Y: 1, Z: 1}}} {
-		coarse, fine := prepare(t, &response.Settings{Order: 7}, body), prepare(t, &response.Settings{Order: 10}, body)
-		for _, chi := range []float64{-1, 10, inf} {
+		coarse, fine := prepare(t, &response.Settings{Order: 7}, body), prepare(t, &response.Settings{Order: 9}, body)
+		for _, chi := range []float64{-1, 10} {
 			r, ref := solve(t, coarse, app, response.Material{Chi: chi}), solve(t, fine, app, response.Material{Chi: chi})
 			rng := rand.New(rand.NewPCG(5, 6))
 			var over []float64

@@ -120,7 +120,7 @@ func TestEllipsoid(t *testing.T) {
 	e := geom.Ellipsoid{SemiAxes: r3.Vec{X: 1, Y: 2, Z: 3}}
 	s := prepare(t, nil, e)
 	n := closedform.EllipsoidFactors(e.SemiAxes)
-	for _, chi := range []float64{-1, 10, inf} {
+	for _, chi := range []float64{-1, inf} {
 		for _, c := range []struct {
 			d r3.Vec
 			n float64
@@ -144,7 +144,7 @@ func TestShell(t *testing.T) {
 	}{{0.3, 1e-6, 6}, {0.02, 1e-6, 8}} { // 1e-6 is the bar; 1e-7 measured
 		shell := geom.HollowSphere{Inner: 1 - c.wall, Outer: 1}
 		s := prepare(t, &response.Settings{Order: c.order}, shell)
-		for _, mu := range []float64{0.1, 10, 1e5} {
+		for _, mu := range []float64{0.1, 1e5} {
 			r := solve(t, s, up, response.Material{Chi: mu - 1})
 			want := closedform.SphericalShieldMoment(mu, shell.Inner, 1) * 4 * math.Pi / 3
 			judge(t, "moment", along(r.Moment(0), up.G), want, math.Abs(want), c.tolerance, 0)
@@ -189,13 +189,13 @@ func TestCube(t *testing.T) {
 // TestCylinder holds the magnetometric factor 1/<p> - 1/chi against values from exact solid angles of bands, extrapolated to
 // seven digits ([Chen1991] has three to four of them).
 func TestCylinder(t *testing.T) {
-	chis := []float64{-1, 1, 10, 100, 1000, inf}
+	chis := []float64{-1, 1, 10, inf}
 	for _, c := range []struct {
 		ratio float64
 		n     []float64
 	}{
-		{0.1, []float64{0.8294864, 0.7839877, 0.7602701, 0.7515339, 0.7504111, 0.7502827}},
-		{1, []float64{0.3692299, 0.2941317, 0.2679628, 0.2600440, 0.2590825, 0.2589733}},
+		{0.1, []float64{0.8294864, 0.7839877, 0.7602701, 0.7502827}},
+		{1, []float64{0.3692299, 0.2941317, 0.2679628, 0.2589733}},
 	} {
 		body := geom.Cylinder{Radius: 1, Height: 2 * c.ratio}
 		s := prepare(t, nil, body)
