@@ -24,7 +24,7 @@ type rows struct {
 	kernel [points * points]float64
 	half   [points * maxOrder]float64
 	room   [2]table
-	base   [2][maxOrder]float64
+	base   [3][maxOrder]float64
 }
 
 func newRows(tiles []*tile, m *mesh, inner *rule) *rows {
@@ -89,19 +89,13 @@ func (w *rows) take(q *piece, x []r3.Vec) {
 		row := w.half[b*n : b*n+n]
 		clear(row)
 		for a := range points {
-			k := w.kernel[b*points+a]
-			for i, v := range ts[a*n : a*n+n] {
-				row[i] += k * v
-			}
+			add(row, w.kernel[b*points+a], ts[a*n:a*n+n])
 		}
 	}
 	for b := range points {
 		row := w.half[b*n : b*n+n]
 		for j, v := range tt[b*n : b*n+n] {
-			dst := w.dst[j*n : j*n+n]
-			for i, h := range row {
-				dst[i] += v * h
-			}
+			add(w.dst[j*n:j*n+n], v, row)
 		}
 	}
 }
@@ -141,28 +135,41 @@ func (w *rows) rectangle(p *panel.Panel, s1, s2, t1, t2 float64) {
 	w.walk(p, &q, w.x, 0)
 }
 
-// corner adds the rectangle from (s, t) to (s + hs, t + ht), as two triangles with their tip at the node.
+// corner adds the rectangle from (s, t) to (s + hs, t + ht), as two triangles with their tip at the node: on the first t runs
+// from 0 to the share of s, on the second s to that of t.
 func (w *rows) corner(p *panel.Panel, s, t, hs, ht float64) {
 	n := w.mesh.order
-	g := w.inner
+	g, r := w.inner, w.mesh.tables.rule
 	area := math.Abs(hs * ht)
+	one, two, sum := w.base[0][:n], w.base[1][:n], w.base[2][:n]
 	for a, rho := range g.x {
+		f := area * rho * g.w[a]
+		r.basis(one, s+rho*hs)
+		clear(sum)
 		for b, tau := range g.x {
-			for k := range 2 {
-				us, ut := rho, rho*tau
-				if k == 1 {
-					us, ut = ut, us
-				}
-				ss, tt := s+us*hs, t+ut*ht
-				c := area * rho * g.w[a] * g.w[b] * w.normal(p.Point(ss, tt))
-				w.mesh.tables.rule.basis(w.base[0][:n], ss)
-				w.mesh.tables.rule.basis(w.base[1][:n], tt)
-				for j, v := range w.base[1][:n] {
-					for i, u := range w.base[0][:n] {
-						w.dst[j*n+i] += c * v * u
-					}
-				}
-			}
+			at := t + rho*tau*ht
+			r.basis(two, at)
+			add(sum, f*g.w[b]*w.normal(p.Point(s+rho*hs, at)), two)
 		}
+		for j, v := range sum {
+			add(w.dst[j*n:j*n+n], v, one)
+		}
+		r.basis(one, t+rho*ht)
+		clear(sum)
+		for b, tau := range g.x {
+			at := s + rho*tau*hs
+			r.basis(two, at)
+			add(sum, f*g.w[b]*w.normal(p.Point(at, t+rho*ht)), two)
+		}
+		for j, v := range one {
+			add(w.dst[j*n:j*n+n], v, sum)
+		}
+	}
+}
+
+// add adds f b to a.
+func add(a []float64, f float64, b []float64) {
+	for i, v := range b {
+		a[i] += f * v
 	}
 }

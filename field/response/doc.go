@@ -29,9 +29,10 @@
 // estimate is what the three let expect, times 3. With the default settings, measured by the tests: sphere 1e-10; ellipsoid
 // 1:2:3 1e-9; spherical shell with a wall of 0.02, mu_r = 1e5, 1e-7, its inside included; cube 1e-5 from chi = -1 to +Inf;
 // cylinders of length 0.1 to 10 diameters 1e-5 of the magnetometric factor; two spheres of metal 0.001 radii apart 3e-7. The field
-// of the result is as good as that off the faces; on a face, and within a panel over 10 of an edge, the density counts
-// directly: 1e-7 on a sphere, 1e-2 beside the edges of a cube. Estimates held in 7198 of 7200 points around and inside a sphere,
-// an ellipsoid, a cube, a cylinder and a cone, the two others fell short by 1.4.
+// of the result is as good as that off the faces; on a face and near an edge the density counts directly: 1e-7 on a sphere; on
+// the faces of a cube 1e-4, 1e-3 at 0.001 of the side from an edge, 5e-3 at 0.0001. The median of estimate over error is between
+// 3 and 150. Where the first of the three meshes is far from the truth (order 6: 2 nodes a direction) estimates are wide.
+// A job of 3200 unknowns takes 4 s on two processors, its field at 10000 points 0.3 s, with estimates 1 s.
 //
 // # Not covered
 //

@@ -92,9 +92,7 @@ func scaled(a []float64, f float64) []float64 {
 
 // subtract takes f b off a.
 func subtract(a []float64, f float64, b []float64) {
-	for i, v := range b {
-		a[i] -= f * v
-	}
+	add(a, -f, b)
 }
 
 // multiply sets dst to the square matrix a times v. Every row has one owner and a fixed order.

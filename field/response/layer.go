@@ -237,6 +237,9 @@ func (r *Response) hugging(body int, p field.Point, side field.Side, want field.
 		nowhere.Phi, nowhere.ErrPhi = v.Phi, v.ErrPhi+close*r3.Norm(v.G)
 		return nowhere
 	}
+	if at.Edge { // on the face, within close of its edge
+		at, close = exact, 1e-3*close
+	}
 	x := p.X.Value()
 	_, depth := geom.Nearest(r.system.bodies[body], x)
 	one := func(sign, depth float64) field.Value {

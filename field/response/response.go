@@ -67,6 +67,28 @@ func (r *Response) Bounds() r3.Box {
 	return b
 }
 
+// Node is a point of the finest mesh.
+type Node struct {
+	X, Normal r3.Vec  // Normal points out of the body
+	Area      float64 // weight of the rule: sums to the area of the faces
+	Charge    float64 // induced: density times Area
+}
+
+// Layer returns the induced charge on a body as the nodes of the finest mesh: what other programs import. A rule of order n on
+// each panel, it is good for the field at distances of more than a panel.
+func (r *Response) Layer(body int) []Node {
+	var nodes []Node
+	l := &r.system.levels[2]
+	for c, p := range r.system.parts {
+		if p.body == body {
+			r.system.nodesOf(l, c, func(i int) {
+				nodes = append(nodes, Node{l.x[i], l.n[i], l.area[i], r.layers[2].charge[i]})
+			})
+		}
+	}
+	return nodes
+}
+
 // Moment returns the dipole moment of a body: the integral of p over it (about the origin, where it is charged). Charge on a
 // part that two bodies share counts for the one that was given first; Total is free of that.
 func (r *Response) Moment(body int) Vector {
