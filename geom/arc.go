@@ -162,7 +162,7 @@ func (a Arc) Nodes(n int, visit func(x r3.Vec, weight float64)) {
 		visitTube(n, a.Inner, a.Outer, a.Height, visit)
 		return
 	}
-	axial := gauss(n, -a.Height/2, a.Height/2)
+	axial := legendre(n, -a.Height/2, a.Height/2)
 	visitSector(n, a.Inner, a.Outer, a.span(), func(x r3.Vec, weight float64) {
 		for _, z := range axial {
 			visit(r3.Vec{X: x.X, Y: x.Y, Z: z.x}, weight*z.w)

@@ -119,7 +119,7 @@ func (b Box) Cells() []Cell { return []Cell{b} }
 // Nodes visits the points of the product Gauss rule, exact for degree 2n-1 in each coordinate.
 func (b Box) Nodes(n int, visit func(x r3.Vec, weight float64)) {
 	half := r3.Scale(0.5, b.Size)
-	xs, ys, zs := gauss(n, -half.X, half.X), gauss(n, -half.Y, half.Y), gauss(n, -half.Z, half.Z)
+	xs, ys, zs := legendre(n, -half.X, half.X), legendre(n, -half.Y, half.Y), legendre(n, -half.Z, half.Z)
 	for _, x := range xs {
 		for _, y := range ys {
 			for _, z := range zs {

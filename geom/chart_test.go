@@ -10,7 +10,7 @@ import (
 
 // overCharts integrates f over charts by product Gauss rules, and returns the integral of |f| with it.
 func overCharts(charts []Chart, n int, f func(x, normal r3.Vec) float64) (sum, size float64) {
-	rule := gauss(n, 0, 1)
+	rule := legendre(n, 0, 1)
 	for _, c := range charts {
 		for _, u := range rule {
 			for _, v := range rule {
@@ -28,7 +28,7 @@ func overCharts(charts []Chart, n int, f func(x, normal r3.Vec) float64) (sum, s
 
 // overBlocks integrates f over blocks by product Gauss rules, and returns the integral of |f| with it.
 func overBlocks(blocks []Block, n int, f func(x r3.Vec) float64) (sum, size float64) {
-	rule := gauss(n, 0, 1)
+	rule := legendre(n, 0, 1)
 	for _, b := range blocks {
 		for _, u := range rule {
 			for _, v := range rule {

@@ -146,7 +146,7 @@ func (c Cone) Cells() []Cell { return []Cell{c} }
 // Nodes visits the points of the rule that is Gauss along radius and axis and equally spaced in azimuth. The area across
 // the axis takes two degrees, hence one point more along it.
 func (c Cone) Nodes(n int, visit func(x r3.Vec, weight float64)) {
-	rule := gauss(max(n, 1)+1, -0.5, 0.5)
+	rule := legendre(max(n, 1)+1, -0.5, 0.5)
 	visitRing(n, 0, 1, func(x r3.Vec, weight float64) {
 		for _, z := range rule {
 			r := c.radius(z.x)

@@ -27,7 +27,7 @@ func (w ConeWall) Bounds() r3.Box {
 
 // Nodes visits the points of the rule that is equally spaced in azimuth and Gauss along the slant.
 func (w ConeWall) Nodes(n int, visit func(x, normal r3.Vec, weight float64)) {
-	ring, rule := circle(2*max(n, 1)), gauss(n, 0, 1)
+	ring, rule := circle(2*max(n, 1)), legendre(n, 0, 1)
 	l := w.Slant()
 	out, up := (w.Z2-w.Z1)/l, (w.R1-w.R2)/l
 	step := 2 * math.Pi / float64(len(ring)) * l

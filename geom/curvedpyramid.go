@@ -20,7 +20,7 @@ func (p CurvedPyramid) Volume() float64 {
 // in that direction; the height over the apex takes one on the face, hence one point more there.
 func (p CurvedPyramid) Nodes(n int, visit func(x r3.Vec, weight float64)) {
 	n = max(n, 1) + 1
-	rule := gauss(n, 0, 1)
+	rule := legendre(n, 0, 1)
 	p.Base.Surface.Nodes(n, func(b, normal r3.Vec, weight float64) {
 		ray := r3.Sub(b, p.Apex)
 		h := r3.Dot(ray, normal) * p.Base.Sign()

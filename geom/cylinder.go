@@ -89,7 +89,7 @@ func (c Cylinder) Nodes(n int, visit func(x r3.Vec, weight float64)) {
 
 // visitTube visits the points of the product rule on a tube, exact for polynomials of degree 2n-2.
 func visitTube(n int, inner, outer, height float64, visit func(x r3.Vec, weight float64)) {
-	axial := gauss(n, -height/2, height/2)
+	axial := legendre(n, -height/2, height/2)
 	visitRing(n, inner, outer, func(x r3.Vec, weight float64) {
 		for _, z := range axial {
 			visit(r3.Vec{X: x.X, Y: x.Y, Z: z.x}, weight*z.w)
@@ -101,7 +101,7 @@ func visitTube(n int, inner, outer, height float64, visit func(x r3.Vec, weight 
 func visitRing(n int, inner, outer float64, visit func(x r3.Vec, weight float64)) {
 	ring := circle(2 * max(n, 1))
 	step := 2 * math.Pi / float64(len(ring))
-	for _, s := range gauss(n, inner, outer) {
+	for _, s := range legendre(n, inner, outer) {
 		for _, d := range ring {
 			visit(r3.Vec{X: s.x * d.cos, Y: s.x * d.sin}, step*s.x*s.w)
 		}

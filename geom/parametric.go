@@ -90,7 +90,7 @@ type fluxes struct {
 
 // flux integrates with n points a direction on each chart.
 func (p *Parametric) flux(n int) (s fluxes) {
-	rule := gauss(n, 0, 1)
+	rule := legendre(n, 0, 1)
 	middle := r3.Scale(0.5, r3.Add(p.bounds.Min, p.bounds.Max))
 	for _, part := range p.sampled {
 		for _, u := range rule {

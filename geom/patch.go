@@ -180,7 +180,7 @@ func (p Patch) Bounds() r3.Box {
 // Nodes visits the points of product Gauss rules on the charts, with ten points more than n a direction: there quarter
 // turns are exact to rounding.
 func (p Patch) Nodes(n int, visit func(x, normal r3.Vec, weight float64)) {
-	rule := gauss(max(n, 1)+10, 0, 1)
+	rule := legendre(max(n, 1)+10, 0, 1)
 	for _, c := range p.Charts() {
 		for _, u := range rule {
 			for _, v := range rule {

@@ -118,7 +118,7 @@ func (l loop) visitQuadrilateral(n int, normal pair.Vec, visit func(x, normal r3
 	d := l.at(2).Sub(v0).Sub(a).Sub(b)
 	area, areaS, areaT := normal.Dot(a.Cross(b)).Value(), normal.Dot(a.Cross(d)).Value(), normal.Dot(d.Cross(b)).Value()
 	out, origin, p, q, r := normal.Value(), v0.Value(), a.Value(), b.Value(), d.Value()
-	rule := gauss(n, 0, 1)
+	rule := legendre(n, 0, 1)
 	for _, s := range rule {
 		for _, t := range rule {
 			x := r3.Add(r3.Scale(s.x, p), r3.Add(r3.Scale(t.x, q), r3.Scale(s.x*t.x, r)))

@@ -29,7 +29,7 @@ func (p Prism) triangles() [][3]int {
 // The height of the prism over a point of the base is linear and takes one degree.
 func (p Prism) Nodes(n int, visit func(x r3.Vec, weight float64)) {
 	n = max(n, 1)
-	upright := gauss(n, 0, 1)
+	upright := legendre(n, 0, 1)
 	for _, t := range p.triangles() {
 		a, b, c := p.Base[t[0]], p.Base[t[1]], p.Base[t[2]]
 		double := (b[0]-a[0])*(c[1]-a[1]) - (b[1]-a[1])*(c[0]-a[0])

@@ -25,7 +25,7 @@ func (p Pyramid) Volume() float64 { return p.height() * p.Base.Area() / 3 }
 // more in that direction.
 func (p Pyramid) Nodes(n int, visit func(x r3.Vec, weight float64)) {
 	h := p.height()
-	rule := gauss(max(n, 1)+1, 0, 1)
+	rule := legendre(max(n, 1)+1, 0, 1)
 	p.Base.Nodes(n, func(b, _ r3.Vec, weight float64) {
 		ray := r3.Sub(b, p.Apex)
 		for _, s := range rule {

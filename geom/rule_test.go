@@ -10,9 +10,9 @@ import (
 
 func TestGaussExact(t *testing.T) {
 	for n := 1; n <= 64; n++ {
-		rule := gauss(n, 0, 1)
+		rule := legendre(n, 0, 1)
 		if len(rule) != n {
-			t.Fatalf("gauss(%d) has %d points", n, len(rule))
+			t.Fatalf("legendre(%d) has %d points", n, len(rule))
 		}
 		for d := 0; d <= 2*n-1; d++ {
 			sum := 0.0
@@ -28,8 +28,8 @@ func TestGaussExact(t *testing.T) {
 				t.Errorf("n = %d: points %d and %d are not ascending", n, k-1, k)
 			}
 		}
-		for k, p := range gauss(n, -3, 3) {
-			if q := gauss(n, -3, 3)[n-1-k]; q.x != -p.x || q.w != p.w {
+		for k, p := range legendre(n, -3, 3) {
+			if q := legendre(n, -3, 3)[n-1-k]; q.x != -p.x || q.w != p.w {
 				t.Errorf("n = %d: point %d %v has no mirror image, found %v", n, k, p, q)
 			}
 		}

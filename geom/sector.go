@@ -40,7 +40,7 @@ func (s Sector) Nodes(n int, visit func(x, normal r3.Vec, weight float64)) {
 // visitSector visits the points of the product rule on a sector in the plane z = 0, exact for degree 2n-2.
 func visitSector(n int, inner, outer float64, s span, visit func(x r3.Vec, weight float64)) {
 	arc := s.rule(2*max(n, 1) - 2)
-	for _, r := range gauss(n, inner, outer) {
+	for _, r := range legendre(n, inner, outer) {
 		for _, d := range arc {
 			visit(r3.Vec{X: r.x * d.cos, Y: r.x * d.sin}, d.w*r.x*r.w)
 		}
@@ -73,7 +73,7 @@ func (w WallSector) Bounds() r3.Box { return w.span().bounds(w.Radius, w.Radius,
 
 // Nodes visits the points of the rule that is Gauss along azimuth and axis.
 func (w WallSector) Nodes(n int, visit func(x, normal r3.Vec, weight float64)) {
-	axial := gauss(n, w.Z1, w.Z2)
+	axial := legendre(n, w.Z1, w.Z2)
 	for _, d := range w.span().rule(2*max(n, 1) - 1) { // the normal takes one degree
 		for _, z := range axial {
 			visit(r3.Vec{X: w.Radius * d.cos, Y: w.Radius * d.sin, Z: z.x}, d.normal(), d.w*w.Radius*z.w)

@@ -239,7 +239,7 @@ func (s span) rule(degree int) []arcNode {
 	half := s.angle() / 2
 	middle := s.middle()
 	rule := make([]arcNode, n)
-	for i, p := range gauss(n, -half, half) {
+	for i, p := range legendre(n, -half, half) {
 		rule[i] = arcNode{middle.turned(p.x), p.w}
 	}
 	return rule

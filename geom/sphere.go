@@ -65,7 +65,7 @@ func (s Sphere) Nodes(n int, visit func(x r3.Vec, weight float64)) { visitBall(n
 // visitBall visits the points of the product rule between two spheres, exact for polynomials of degree 2n-2. The
 // Jacobian r^2 takes two degrees, hence one point more along the radius.
 func visitBall(n int, inner, outer float64, visit func(x r3.Vec, weight float64)) {
-	radial := gauss(max(n, 1)+1, inner, outer)
+	radial := legendre(max(n, 1)+1, inner, outer)
 	visitSphere(n, func(e r3.Vec, weight float64) {
 		for _, r := range radial {
 			visit(r3.Scale(r.x, e), weight*r.w*r.x*r.x)

@@ -84,7 +84,7 @@ func (t Torus) Nodes(n int, visit func(x r3.Vec, weight float64)) {
 	n = max(n, 1)
 	ring, section := circle(2*n), circle(2*n)
 	step := 2 * math.Pi / float64(len(ring)) * 2 * math.Pi / float64(len(section))
-	for _, rho := range gauss(n, 0, t.Minor) {
+	for _, rho := range legendre(n, 0, t.Minor) {
 		for _, c := range section {
 			s := t.Major + rho.x*c.cos
 			for _, d := range ring {

@@ -24,7 +24,7 @@ func (w Wall) Bounds() r3.Box {
 
 // Nodes visits the points of the rule that is equally spaced in angle and Gauss along the axis.
 func (w Wall) Nodes(n int, visit func(x, normal r3.Vec, weight float64)) {
-	ring, axial := circle(2*max(n, 1)), gauss(n, w.Z1, w.Z2)
+	ring, axial := circle(2*max(n, 1)), legendre(n, w.Z1, w.Z2)
 	step := 2 * math.Pi / float64(len(ring)) * w.Radius
 	for _, d := range ring {
 		for _, z := range axial {

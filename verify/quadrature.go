@@ -4,7 +4,7 @@ import (
 	"math"
 	"sync"
 
-	"gonum.org/v1/gonum/integrate/quad"
+	rules "example.com/boundpole/geom/gauss"
 )
 
 // node is a point and weight of a rule on [0, 1]. Near 1 the distance to it is kept, so that nothing is lost there.
@@ -32,8 +32,7 @@ var graded = sync.OnceValue(func() []node {
 
 // gauss returns the Gauss-Legendre rule with n points on [0, 1].
 func gauss(n int) []node {
-	x, w := make([]float64, n), make([]float64, n)
-	quad.Legendre{}.FixedLocations(x, w, 0, 1)
+	x, w := rules.On(n, 0, 1)
 	all := make([]node, n)
 	for i := range all {
 		all[i] = node{x[i], 1 - x[i], w[i]}

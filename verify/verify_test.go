@@ -219,9 +219,9 @@ func TestWrongEstimatesFail(t *testing.T) {
 			}
 		}
 	}
-	for _, column := range []string{"phi true", "g over", "worst"} {
-		if found[column] < 24 {
-			t.Errorf("%d cases named %s, want at least 24", found[column], column)
+	for column, least := range map[string]int{"phi true": 24, "g over": 21, "worst": 24} { // three samples are too small for a median
+		if found[column] < least {
+			t.Errorf("%d cases named %s, want at least %d", found[column], column, least)
 		}
 	}
 }

@@ -309,7 +309,7 @@ func TestCheck(t *testing.T) {
 	dir := t.TempDir()
 	out := filepath.Join(dir, "out")
 	status, stdout, stderr := start(t, "-check", "-out", out)
-	if status != done || stderr != "" || !strings.HasPrefix(stdout, "The scene is right: 3 parts, 9 requests") {
+	if status != done || stderr != "" || !strings.HasPrefix(stdout, "The scene is right: 3 parts, 11 requests") {
 		t.Errorf("status %d, stdout %q, stderr %q", status, stdout, stderr)
 	}
 	if _, err := os.Stat(out); err == nil {

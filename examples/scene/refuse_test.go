@@ -63,7 +63,6 @@ var refusals = []struct {
 	{"negative power in the poles of a shell", powered(`"shape": "hollow_sphere", "inner": 1, "outer": 2`, "radial_power", "-1"), "/parts/0/polarized/radial_power/power", []string{"axis"}},
 	{"negative power at the centre", powered(`"shape": "sphere", "radius": 1`, "central_power", "-1"), "/parts/0/polarized/central_power/power", []string{"negative", "centre"}},
 	{"negative power at a corner", powered(`"shape": "polyhedron", "vertices": [`+corners+`], "faces": [[0,3,2,1],[4,5,6,7],`+sides+`]`, "central_power", "-2"), "/parts/0/polarized/central_power/power", []string{"centre"}},
-	{"infinite charge in a box", powered(`"shape": "box", "size": [1,1,1]`, "radial_power", "0.5"), "/parts/0/polarized/radial_power/power", []string{"infinite at the axis", "box", "at least 1"}},
 	{"polynomial overflows", `{"parts": [{"name": "a", "shape": "box", "size": [1e30,1,1], "polarized": {"polynomial": [{"component": "x", "coefficient": 1, "powers": [64,0,0]}]}}]}`, "/parts/0/polarized", []string{"overflows"}},
 	{"power overflows", powered(`"shape": "sphere", "radius": 1e10`, "central_power", "64"), "/parts/0/polarized", []string{"overflows"}},
 	{"arc beyond a turn", part(`"shape": "arc", "inner": 1, "outer": 2, "height": 1, "from": 0, "to": 400`), "/parts/0/to", []string{"more than one turn", "360"}},

@@ -2,6 +2,7 @@ package bound
 
 import (
 	"math"
+	"sync"
 
 	"example.com/boundpole/field"
 	"example.com/boundpole/geom"
@@ -57,14 +58,41 @@ func (s *integrated) hugging(p field.Point, side field.Side, want field.Want) fi
 
 func finiteVec(v r3.Vec) bool { return v.X-v.X+(v.Y-v.Y)+(v.Z-v.Z) == 0 }
 
+// single is a batch of one point, reused between calls.
+type single struct {
+	x, y, z, xLo, yLo, zLo, slack [1]float64
+	at                            field.Points
+	all                           *field.Values
+	part                          field.Values // what is wanted of all
+}
+
+var singles = sync.Pool{New: func() any {
+	s := &single{all: field.NewValues(1, field.WantPhi|field.WantG|field.WantGrad|field.WantErr)}
+	s.at = field.Points{X: s.x[:], Y: s.y[:], Z: s.z[:], XLo: s.xLo[:], YLo: s.yLo[:], ZLo: s.zLo[:], Slack: s.slack[:]}
+	return s
+}}
+
 // atPoint evaluates a source at one point.
 func atPoint(src field.Source, p field.Point, side field.Side, want field.Want) field.Value {
-	at := field.Points{
-		X: []float64{p.X.X.Hi}, Y: []float64{p.X.Y.Hi}, Z: []float64{p.X.Z.Hi},
-		XLo: []float64{p.X.X.Lo}, YLo: []float64{p.X.Y.Lo}, ZLo: []float64{p.X.Z.Lo}, Slack: []float64{p.Slack},
+	s := singles.Get().(*single)
+	defer singles.Put(s)
+	s.x[0], s.y[0], s.z[0] = p.X.X.Hi, p.X.Y.Hi, p.X.Z.Hi
+	s.xLo[0], s.yLo[0], s.zLo[0], s.slack[0] = p.X.X.Lo, p.X.Y.Lo, p.X.Z.Lo, p.Slack
+	dst := &s.part
+	*dst = field.Values{Status: s.all.Status}
+	if want&field.WantPhi != 0 {
+		dst.Phi = s.all.Phi
 	}
-	dst := field.NewValues(1, want)
-	field.Evaluate(src, dst, &at, side)
+	if want&field.WantG != 0 {
+		dst.GX, dst.GY, dst.GZ = s.all.GX, s.all.GY, s.all.GZ
+	}
+	if want&field.WantGrad != 0 {
+		dst.Grad = s.all.Grad
+	}
+	if want&field.WantErr != 0 {
+		dst.ErrPhi, dst.ErrG, dst.ErrGrad = s.all.ErrPhi, s.all.ErrG, s.all.ErrGrad
+	}
+	field.Evaluate(src, dst, &s.at, side)
 	return dst.At(0)
 }
 

@@ -58,9 +58,15 @@ func (c *Charge) integrated() (field.Source, error) {
 				s.builds = append(s.builds, func() (field.Evaluator, error) { return l, nil })
 			}
 		}
-		for _, v := range r.volumes {
-			s.builds = append(s.builds, func() (field.Evaluator, error) { return v, nil })
-		}
+		s.builds = append(s.builds, func() (field.Evaluator, error) {
+			sum, err := c.aroundOrigin()
+			if sum == nil && err == nil {
+				for _, v := range r.volumes {
+					sum = append(sum, v)
+				}
+			}
+			return sum, err
+		})
 		return s, nil
 	}
 	for _, f := range c.local.Faces() {
@@ -113,6 +119,8 @@ func (s *integrated) prepare() {
 			s.layers = append(s.layers, src)
 		case *cubature.Volume:
 			s.volumes = append(s.volumes, src)
+		case field.Sum:
+			s.volumes = append(s.volumes, src...)
 		}
 	}
 	if len(s.layers) > 0 {
@@ -171,10 +179,16 @@ func (s *integrated) points() int {
 	return int(math.Ceil(8/math.Log10(t+math.Sqrt(t*t-1)))) + 1
 }
 
-// carries reports whether a face has any charge.
+// carries reports whether a face has any charge: more than what the rounding of its normals makes of p along it.
 func (c *Charge) carries(f geom.Face) bool {
 	lo, hi := c.extremes(f)
-	return lo != 0 || hi != 0
+	most := 0.0
+	f.Surface.Nodes(4, func(x, _ r3.Vec, _ float64) {
+		if p := r3.Norm(c.p.At(x)); p > most {
+			most = p
+		}
+	})
+	return max(math.Abs(lo), math.Abs(hi)) > 8*0x1p-53*most
 }
 
 // free reports whether a cell has no charge.

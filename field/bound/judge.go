@@ -9,10 +9,10 @@ import (
 )
 
 // Accuracies below which a value counts as converged, relative to the natural scale of the body or the value itself. Gradients are
-// differences of large terms: a digit less.
+// differences of large terms: two digits less, as in package cubature.
 const (
 	converged     = 1e-10
-	gradConverged = 1e-9
+	gradConverged = 1e-8
 )
 
 // peak returns the greatest |p| at inner nodes.

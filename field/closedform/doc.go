@@ -76,6 +76,9 @@
 //     Sci. Imp. Univ. Tokyo 27 (1909) art. 6
 //   - [Osborn1945] J. A. Osborn, Demagnetizing factors of the general ellipsoid,
 //     Phys. Rev. 67 (1945) 351, doi:10.1103/PhysRev.67.351
+//   - [Robertson2012] W. Robertson, B. Cazzolato, A. Zander, Axial force between a
+//     thick coil and a cylindrical permanent magnet: optimizing the geometry of an
+//     electromagnetic actuator, IEEE Trans. Magn. 48 (2012) 2479
 //   - [Sessler1987] G. M. Sessler (ed.), Electrets, 2nd ed. (1987)
 //   - [Sihvola1999] A. Sihvola, Electromagnetic Mixing Formulas and Applications (1999)
 //   - [Stoner1945] E. C. Stoner, The demagnetizing factors for ellipsoids, Phil.

@@ -15,6 +15,7 @@ var lengths = map[string][]int{
 	"AxialPowerCharge": {4}, "RingAxisPotential": {1}, "RingAxisField": {1}, "DiscAxisPotential": {1}, "DiscAxisField": {1},
 	"AnnulusAxisPotential": {1, 2}, "AnnulusAxisField": {1, 2}, "DiscRimPotential": {1}, "DiscSelfEnergy": {1},
 	"DiscPairForce": {2, 3}, "DiscPairEnergy": {2, 3}, "CoaxialCylinderForce": {2, 3, 4, 5},
+	"CoaxialPairForce": {2, 3, 4, 5, 6}, "CuboidForce": {2, 3, 4, 5, 6, 7},
 	"CylinderAxisPotential": {1, 2}, "CylinderAxisField": {1, 2}, "CylinderAxisInduction": {1, 2}, "TwoDiscAxisField": {1, 2},
 	"ChargedCylinderAxisField": {1, 2}, "LinearCylinderAxisField": {1, 2}, "FaceCentreInduction": {1, 2},
 	"TubeAxisPotential": {1, 2, 3}, "TubeAxisField": {1, 2, 3}, "RadialTubeAxisField": {1, 2, 3},

@@ -19,6 +19,7 @@ func TestScale(t *testing.T) {
 		"ChargedShellPotential": {1, 1}, "ChargedShellField": {1, 0}, "ChargedSpherePotential": {1, 2}, "ChargedSphereField": {1, 1},
 		"RingAxisField": {1, -1}, "DiscAxisPotential": {1, 1}, "DiscAxisField": {1, 0}, "AnnulusAxisPotential": {1, 1}, "AnnulusAxisField": {1, 0},
 		"DiscSelfEnergy": {1, 3}, "DiscPairForce": {2, 2}, "DiscPairEnergy": {2, 3}, "CoaxialCylinderForce": {2, 2},
+		"CoaxialPairForce": {2, 2}, "CuboidForce": {2, 2},
 		"CylinderAxisPotential": {1, 1}, "CylinderAxisField": {1, 0}, "CylinderAxisInduction": {1, 0}, "TubeAxisField": {1, 0}, "RadialTubeAxisField": {1, 0},
 		"CylinderMagnetometricFactor": {0, 0}, "CylinderFluxmetricFactor": {0, 0}, "EndlessCylinderPotential": {3, 1}, "EndlessCylinderField": {3, 0},
 		"SegmentPotential": {1, 0}, "EllipsoidFactors": {0, 0}, "EllipsoidSelfEnergy": {3, 3}, "EllipsoidAxisField": {1, 0}, "EllipticCylinderFactors": {0, 0},

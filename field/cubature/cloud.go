@@ -34,7 +34,16 @@ func (c *cloud) finish(each func(visit func(x r3.Vec, radius float64))) {
 	c.centre = r3.Scale(0.5, r3.Add(c.bounds.Min, c.bounds.Max))
 	c.radius = 0
 	each(func(x r3.Vec, radius float64) { c.radius = max(c.radius, r3.Norm(r3.Sub(x, c.centre))+radius) })
-	c.far = field.NewMoments(c.centre, c.radius, farOrder)
+}
+
+// expansion returns the multipole expansion, made when it is first asked for from the charges that gather hands on.
+func (c *cloud) expansion() *field.Moments {
+	c.once.Do(func() {
+		c.far = field.NewMoments(c.centre, c.radius, farOrder)
+		c.gather(c.expand)
+		c.settle()
+	})
+	return c.far
 }
 
 // expand adds charges to the expansion.
@@ -57,14 +66,14 @@ func (c *cloud) settle() {
 
 // total returns the charge and the bound on its error.
 func (c *cloud) total() (charge, estimate float64) {
-	return c.far.Charge(), 8*u*c.charge + c.loose
+	return c.expansion().Charge(), 8*u*c.charge + c.loose
 }
 
 func (c *cloud) isFar(x r3.Vec) bool { return r3.Norm(r3.Sub(x, c.centre)) > farReach*c.radius }
 
 // farValue evaluates the expansion.
 func (c *cloud) farValue(p field.Point, want field.Want) field.Value {
-	v := c.far.Value(p, want)
+	v := c.expansion().Value(p, want)
 	r := r3.Norm(r3.Sub(p.X.Value(), c.centre)) - c.radius
 	unknown := over4Pi * (c.loose + c.slip*c.charge)
 	if !c.settings.Neutral {

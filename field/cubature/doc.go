@@ -17,5 +17,7 @@
 // coordinates, and near a side at parameter 1 a chart has steps of u where near 0 it has none. A chart with a tip does best
 // with the tip at parameter 0.
 //
-// The package does not know which charge a body has, and it has no closed forms.
+// Facets is the exception to all this: the polynomial charge of a body with plane faces, whose integrals are known.
+//
+// The package does not know which charge a body has.
 package cubature

@@ -4,6 +4,7 @@ import (
 	"errors"
 	"fmt"
 	"math"
+	"sync"
 
 	"example.com/boundpole/field"
 	"example.com/boundpole/geom"
@@ -21,7 +22,7 @@ import (
 // of both sides, or the side asked for; Outside is where xu x xv points.
 // Accuracy: |error| <= 1e-12 of the natural scale, sigma_max a min(1, a/R) for phi and sigma_max min(1, (a/R)^2) for g, a the
 // bounding radius and R the distance from its centre, at every distance off the faces (TestSphereDistances); beside an edge at
-// distance d add what the rounding of the chart does, u |x| sigma/d. Estimates hold in 99.9 % of points (TestEstimates).
+// distance d add what the rounding of the chart does, u |x| sigma/d, unless a body's uniform part is taken out (Less). Estimates hold in 99.9 % of points (TestEstimates).
 // Source: polar coordinates about the nearest point cancel 1/R ([Duffy1982]); the maps are those of [Johnston2005].
 type Layer struct {
 	panels []*panel
@@ -40,7 +41,10 @@ type cloud struct {
 	loose    float64 // charge that is not resolved
 	slip     float64 // relative error of the derivatives
 	sum      pair.Float
-	far      *field.Moments
+
+	once   sync.Once
+	far    *field.Moments // see expansion
+	gather func(expand func(*nodeSet))
 }
 
 // NewLayer returns the field of a surface density on charts that meet at most in edges. The density is given the place and the
@@ -73,10 +77,11 @@ func NewLayer(charts []geom.Chart, density func(x, n r3.Vec) float64, s *Setting
 			visit(p.centre, p.radius)
 		}
 	})
-	for _, p := range panels {
-		l.expand(p.nodes(measured))
+	l.gather = func(expand func(*nodeSet)) {
+		for _, p := range panels {
+			expand(p.nodes(measured))
+		}
 	}
-	l.settle()
 	return l, nil
 }
 

@@ -1,10 +1,9 @@
 package cubature
 
 import (
-	"math"
 	"sync"
 
-	"example.com/boundpole/geom/pair"
+	rules "example.com/boundpole/geom/gauss"
 )
 
 // MostPoints is the greatest number of points of a Gauss-Legendre rule that is kept.
@@ -44,35 +43,10 @@ func legendre(n int) *gauss {
 }
 
 func makeGauss(n int) gauss {
-	g := gauss{Rule: Rule{X: make([]float64, n), W: make([]float64, n)}, upTo: make([]float64, n*n)}
-	for k := 0; 2*k < n; k++ {
-		x, w := legendreRoot(n, k)
-		g.X[k], g.X[n-1-k] = -x, x
-		g.W[k], g.W[n-1-k] = w, w
-	}
+	r := rules.Legendre(n)
+	g := gauss{Rule: Rule{X: r.X, W: r.W}, upTo: make([]float64, n*n)}
 	g.integrate()
 	return g
-}
-
-// legendreRoot returns the root number k of P_n from above and its weight, rounded once: Newton's method in pairs, from the guess
-// cos(pi (k + 3/4)/(n + 1/2)).
-func legendreRoot(n, k int) (x, w float64) {
-	r := pair.Of(math.Cos(math.Pi * (float64(k) + 0.75) / (float64(n) + 0.5)))
-	if 2*k+1 == n {
-		r = pair.Float{}
-	}
-	var slope pair.Float
-	one := pair.Of(1)
-	for range 8 {
-		p0, p1 := one, r
-		for j := 1; j < n; j++ {
-			next := r.Mul(p1).Scale(float64(2*j + 1)).Sub(p0.Scale(float64(j))).Div(pair.Of(float64(j + 1)))
-			p0, p1 = p1, next
-		}
-		slope = p0.Sub(r.Mul(p1)).Scale(float64(n)).Div(one.Sub(r.Mul(r)))
-		r = r.Sub(p1.Div(slope))
-	}
-	return r.Value(), pair.Of(2).Div(one.Sub(r.Mul(r)).Mul(slope.Mul(slope))).Value()
 }
 
 // integrate fills upTo. The Lagrange polynomial of node j is w_j sum_k (2k+1)/2 P_k(x_j) P_k(x), and (2k+1) P_k is the derivative

@@ -58,10 +58,11 @@ func NewVolume(blocks []geom.Block, density func(x r3.Vec) float64, s *Settings)
 	if !(v.radius > 1e-60) {
 		return nil, fmt.Errorf("cubature: blocks of size %v; scale to above 1e-60", v.radius)
 	}
-	for _, c := range cells {
-		v.expand(c.nodes(solidMeasured))
+	v.gather = func(expand func(*nodeSet)) {
+		for _, c := range cells {
+			expand(c.nodes(solidMeasured))
+		}
 	}
-	v.settle()
 	return v, nil
 }
 

@@ -143,10 +143,10 @@ func (v *Value) join(e r3.Vec, p field.Value) {
 }
 
 // finish ends a sum of components. In join the 4 u of the magnitudes cover the unit vectors, rounded by at most 2 u each, and the
-// products. The error of b is the antisymmetric part of the matrix of the errors of the components of g, twice: at most sqrt 2 times
-// its Frobenius norm.
+// products. Each component of b is the difference of two errors that have nothing in common, of which the bounds are dozens of times too
+// large each: the root of the squares stands for both, and of each error the two of three parts that e x g takes.
 func (v *Value) finish() {
-	v.ErrB *= math.Sqrt2
+	v.ErrB *= math.Sqrt(2.0 / 3)
 	v.errGrad += 16 * u * norm(v.grad[:]...)
 	if v.Status == field.OnEdge {
 		n := nowhere(field.OnEdge)

@@ -19,7 +19,7 @@ import (
 // carry no charge the point is regular.
 // Accuracy: |error| <= 3e-12 max(|g|, 1e-3 g0) for g, 3e-12 max(|phi|, 1e-3 phi0) for phi, with g0 = |P| min(1, (a/R)^3),
 // phi0 = |P| a min(1, (a/R)^2), a the bounding radius (worst 6.6e-13 and 2.3e-12, both on a cone 1e-3 radii high; else 3.8e-14
-// and 6.6e-14, TestRingReference). The gradient to 1e-9 max(|grad g|, 1e-3 |P|/size) (worst 6.2e-11, TestGradientReference in
+// and 6.6e-14, TestRingReference). The gradient to 1e-9 max(|grad g|, 1e-3 |P|/size) (worst 6.2e-11 of the gradient references in
 // field/bound), but inside next to the tip of a needle, of radius s times the distance from it, to about 5e-15/s^3 of |grad g|
 // (measured down to s = 1e-3): the charge all round nearly cancels there. The estimate holds.
 // Source: ends as discs (see Disc); the wall as rings of charge and of charge cos(phi) by Gauss-Legendre in panels graded

@@ -151,7 +151,7 @@ func (f *facets) edgeLog(i int, w *facetRoom, sum *facetSums, want field.Want) {
 			sum.shaky += (mag + f.dense) * min(ra, rb) / math.Sqrt(p2)
 		}
 		if !f.linear {
-			sum.behind += (mag + vague*f.dense) * w.reach(e, i, el, p2)
+			sum.behind += (mag + 2.5*vague*f.dense) * w.reach(e, i, el, p2) // w is a sum over faces
 		}
 	}
 	if !f.linear {
@@ -168,7 +168,7 @@ func (f *facets) edgeLog(i int, w *facetRoom, sum *facetSums, want field.Want) {
 const vague = 0.2
 
 // linearShare is what is counted of the magnitudes of linear charge, which are many and of which each bound is wide.
-const linearShare = 0.4
+const linearShare = 0.3
 
 // reach returns the magnitude behind d L of edge i with the logarithm el, d the distance of x from its line: el times that of the
 // vector to a vertex, or the distance itself where it is taken in pairs. Beside an edge the logarithm too feels the

@@ -131,3 +131,16 @@ func TestFlatReference(t *testing.T) {
 func frobenius(g [6]float64) float64 {
 	return math.Sqrt(g[0]*g[0] + g[1]*g[1] + g[2]*g[2] + 2*(g[3]*g[3]+g[4]*g[4]+g[5]*g[5]))
 }
+
+// TestPolyhedronAbout: the place about which an affine polarization is given is a way of writing it.
+func TestPolyhedronAbout(t *testing.T) {
+	body := geom.Box{Size: r3.Vec{X: 1, Y: 2, Z: 3}}.Polyhedron()
+	p := field.Affine{Value: r3.Vec{X: 1, Y: -2, Z: 0.5}, Gradient: [3][3]float64{{0.5, 1, 0}, {0, -1, 2}, {0.25, 0, 1}}, About: r3.Vec{X: 0.5, Y: -1, Z: 2}}
+	q := field.Affine{Value: p.At(r3.Vec{}), Gradient: p.Gradient}
+	for _, x := range []r3.Vec{{X: 0.25, Y: 0.5, Z: 1}, {X: 2, Y: 1, Z: -1}, {X: 40, Y: 3, Z: 5}} {
+		got, want := element.NewPolyhedron(body, p).Field(x), element.NewPolyhedron(body, q).Field(x)
+		if d := r3.Norm(r3.Sub(got, want)); d > 1e-13*r3.Norm(want) { // roundings of the densities
+			t.Errorf("at %v: %v about %v, %v about the origin", x, got, p.About, want)
+		}
+	}
+}

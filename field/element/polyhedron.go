@@ -163,10 +163,10 @@ type farField struct {
 	gross   float64 // sum of the magnitudes of the charge
 }
 
-// loosen adds what rounding of the densities may leave of charge where its parts cancel: 4 u of their magnitudes.
+// loosen adds what rounding of the densities may leave of charge where its parts cancel: 6 u of their magnitudes.
 func (f *farField) loosen(v *field.Value, p field.Point) {
 	r := r3.Norm(r3.Sub(p.X.Value(), f.m.Centre()))
-	e := 4 * u * over4P * f.gross / r
+	e := 6 * u * over4P * f.gross / r
 	v.ErrPhi += e
 	v.ErrG += e / r
 	v.ErrGrad += 3 * e / r / r
@@ -222,7 +222,7 @@ func (f *farField) build() {
 
 // affineAt returns p at x, summed in pairs: far from the origin the terms may cancel.
 func affineAt(p *field.Affine, x r3.Vec) r3.Vec {
-	at := pair.VecOf(x)
+	at := pair.VecOf(x).Sub(pair.VecOf(p.About))
 	row := func(c float64, g *[3]float64) float64 {
 		return pair.VecOf(r3.Vec{X: g[0], Y: g[1], Z: g[2]}).Dot(at).AddFloat(c).Value()
 	}

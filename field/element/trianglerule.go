@@ -1,6 +1,6 @@
 package element
 
-import "gonum.org/v1/gonum/integrate/quad"
+import "example.com/boundpole/geom/gauss"
 
 // triangleNode is a point (1-s-t) v0 + s v1 + t v2 of a triangle and its weight per double area.
 type triangleNode struct{ s, t, w float64 }
@@ -8,10 +8,8 @@ type triangleNode struct{ s, t, w float64 }
 // triangleRule returns the collapsed product rule with n+1 times n Gauss-Legendre points, exact for polynomials of degree
 // 2n-1.
 func triangleRule(n int) []triangleNode {
-	xs, ws := make([]float64, n+1), make([]float64, n+1)
-	quad.Legendre{}.FixedLocations(xs, ws, 0, 1)
-	xt, wt := make([]float64, n), make([]float64, n)
-	quad.Legendre{}.FixedLocations(xt, wt, 0, 1)
+	xs, ws := gauss.On(n+1, 0, 1)
+	xt, wt := gauss.On(n, 0, 1)
 	var nodes []triangleNode
 	for i, u := range xs {
 		for j, v := range xt {

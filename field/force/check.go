@@ -143,8 +143,8 @@ func centreOf(c *bound.Charge) r3.Vec {
 	return x
 }
 
-// slope returns the derivative at 0 of a function that comes with an error, and a bound on its error: the last step of the
-// extrapolation, and what the errors of the function make of it.
+// slope returns the derivative at 0 of a function that comes with an error, and a bound on its error: a quarter of what the
+// smallest of the four steps has changed, and what the errors of the function make of it.
 func slope(h float64, f func(h float64) (v, e float64, err error)) (d, e float64, err error) {
 	var s [4]float64
 	noise := 0.0
@@ -162,12 +162,12 @@ func slope(h float64, f func(h float64) (v, e float64, err error)) (d, e float64
 		h /= 2
 	}
 	for order := 1; order < len(s); order++ {
-		last := s[len(s)-1]
+		before := s[len(s)-2] // the best that three of four steps give, when order is the last
 		f := math.Ldexp(1, 2*order) - 1
 		for k := len(s) - 1; k >= order; k-- {
 			s[k] += (s[k] - s[k-1]) / f
 		}
-		e = math.Abs(s[len(s)-1] - last)
+		e = math.Abs(s[len(s)-1]-before) / 4
 	}
 	return s[len(s)-1], e + 2*noise, nil
 }

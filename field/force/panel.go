@@ -22,6 +22,7 @@ type panel struct {
 	near  bool // the field may be singular closer to it than its own size
 	value sums
 	step  quad // difference of the last two rules
+	older quad // of the two before
 	miss  quad // bound on the error
 	axis  int  // along which the integrand is least resolved
 }
@@ -78,7 +79,7 @@ func newWork(src field.Source, about r3.Vec, p *part, stiff bool) *work {
 // measure integrates over a new panel by the rule of its level, at least the third, and the two before.
 func (w *work) measure(p *panel, rho float64) {
 	p.level = max(p.level, 2) - 2
-	p.step = quad{}
+	p.step, p.older = quad{}, quad{}
 	p.value = sums{}
 	w.rule(p, p.points(p.level), rho, &p.value)
 	w.climb(p, rho)
@@ -86,26 +87,42 @@ func (w *work) measure(p *panel, rho float64) {
 	w.climb(p, rho)
 }
 
-// climb integrates by the next rule and bounds its error. Away from edges of the other part rules converge like a power of their
-// number of points, so that the next difference is smaller than the last by their ratio, of which the root is taken. Near edges
-// two rules may agree by chance, so that the difference before counts too.
+// climb integrates by the next rule and bounds its error.
 func (w *work) climb(p *panel, rho float64) {
-	coarse, last := p.value, p.step
+	coarse, last, older := p.value, p.step, p.older
 	p.level++
 	n := p.points(p.level)
 	p.value = sums{}
 	w.rule(p, n, rho, &p.value)
 	p.axis = w.roughest(p, n)
-	p.step = p.value.distance(&coarse, w.reach, w.stiff)
-	p.miss = p.step
+	p.step, p.older = p.value.distance(&coarse, w.reach, w.stiff), last
+	size := p.value.size.quad()
 	for k, d := range p.step {
-		switch fall := d / last[k]; {
-		case p.near:
-			p.miss[k] = max(2*d, 0.2*last[k])
-		case fall < 0.1: // false for the first two rules
-			p.miss[k] = d * max(math.Sqrt(fall), 0.03)
+		if older[k] == 0 {
+			older[k] = size[k]
 		}
+		p.miss[k] = remains(d, last[k], older[k], p.near)
 	}
+}
+
+// remains returns a bound on the error of the last rule from the differences d, last, older of four, d the latest.
+//
+// Away from edges of the other part the differences fall like a power of the number of points, so that the next one is smaller by their
+// ratio; twice the root of it is taken. Two rules may agree by chance: then what the fall before lets expect counts. Near edges nothing
+// is expected, and a part of the difference before counts too.
+func remains(d, last, older float64, near bool) float64 {
+	switch {
+	case last == 0: // the first two rules
+		return d
+	case near:
+		return max(2*d, 0.2*last)
+	case last < older:
+		d = max(d, last*(last/older))
+	}
+	if fall := d / last; fall < 0.1 {
+		return d * max(2*math.Sqrt(fall), 0.05)
+	}
+	return d
 }
 
 // close reports whether edges of the other part are, or may be, closer than a sixth of its radius to the first m points.

@@ -43,8 +43,8 @@ type Settings struct {
 	Stiffness bool
 	// MaxNodes bounds the points at which the field is computed, for each pair. Range from 1e3; default 2e6.
 	MaxNodes int
-	// Overlaps leaves out the search for bodies that stand in each other, for callers that have made it: the result then means
-	// nothing if they do.
+	// Overlaps leaves out the search for bodies that stand in each other, for callers that have made it: the result means nothing
+	// if they do. Default: search.
 	Overlaps bool
 }
 

@@ -3,7 +3,7 @@ package law
 import (
 	"math"
 
-	"gonum.org/v1/gonum/integrate/quad"
+	rules "example.com/boundpole/geom/gauss"
 	"gonum.org/v1/gonum/spatial/r3"
 )
 
@@ -50,9 +50,7 @@ func circle(n int, axes [3]r3.Vec) []node {
 
 // gauss returns points and weights of Gauss-Legendre on an interval.
 func gauss(n int, lo, hi float64) (x, w []float64) {
-	x, w = make([]float64, n), make([]float64, n)
-	quad.Legendre{}.FixedLocations(x, w, lo, hi)
-	return x, w
+	return rules.On(n, lo, hi)
 }
 
 // toEnd returns points on (0, length] and the weights that extrapolate a function on them to 0.

@@ -8,10 +8,14 @@
 package refcase
 
 import (
+	"bytes"
+	"compress/gzip"
 	"encoding/json"
 	"fmt"
+	"io"
 	"math"
 	"math/big"
+	"strings"
 
 	"example.com/boundpole/geom"
 	"example.com/boundpole/geom/pair"
@@ -87,8 +91,17 @@ func (t *Term) UnmarshalJSON(raw []byte) error {
 	return json.Unmarshal(raw, &[]any{&t.Component, &t.Coefficient, &t.Powers})
 }
 
-// Parse reads the cases of a file from its content; name is used in errors.
+// Parse reads the cases of a file from its content, which is unpacked if the name ends with .gz; name is used in errors.
 func Parse(name string, content []byte) ([]Case, error) {
+	if strings.HasSuffix(name, ".gz") {
+		reader, err := gzip.NewReader(bytes.NewReader(content))
+		if err == nil {
+			content, err = io.ReadAll(reader)
+		}
+		if err != nil {
+			return nil, fmt.Errorf("refcase: %s: %w", name, err)
+		}
+	}
 	var cases []Case
 	if err := json.Unmarshal(content, &cases); err != nil {
 		return nil, fmt.Errorf("refcase: %s: %w", name, err)

@@ -193,9 +193,9 @@ func composed(p field.Polynomial, pose geom.Pose) field.Polynomial {
 		for i, n := range t.Powers {
 			for range n {
 				next := map[[3]int]float64{}
-				for a, u := range f {
-					for b, v := range linear[i] {
-						next[[3]int{a[0] + b[0], a[1] + b[1], a[2] + b[2]}] += u * v
+				for _, a := range ordered(f) { // the same sums, to the bit, every time
+					for _, b := range ordered(linear[i]) {
+						next[[3]int{a[0] + b[0], a[1] + b[1], a[2] + b[2]}] += f[a] * linear[i][b]
 					}
 				}
 				f = next
@@ -203,19 +203,24 @@ func composed(p field.Polynomial, pose geom.Pose) field.Polynomial {
 		}
 		for powers, v := range f {
 			for i := range 3 { // components turn back
-				all[i][powers] += m[t.Component][i] * v
+				all[i][powers] += m[t.Component][i] * v // once a term: the order of powers does not matter
 			}
 		}
 	}
 	var q field.Polynomial
 	for i := range all {
-		for _, powers := range slices.SortedFunc(maps.Keys(all[i]), func(a, b [3]int) int { return slices.Compare(a[:], b[:]) }) {
+		for _, powers := range ordered(all[i]) {
 			if c := all[i][powers]; c != 0 {
 				q = append(q, field.Term{Component: i, Coefficient: c, Powers: powers})
 			}
 		}
 	}
 	return q
+}
+
+// ordered returns the keys of a polynomial in a fixed order.
+func ordered(p map[[3]int]float64) [][3]int {
+	return slices.SortedFunc(maps.Keys(p), func(a, b [3]int) int { return slices.Compare(a[:], b[:]) })
 }
 
 func vectors(list [][3]float64) []r3.Vec {

@@ -425,6 +425,46 @@ many("ElectretGapField", [[0.3e-3, 12.5e-6, 2.1, 20e-6], [1.0, 2.0, 3.0, 0.5]], 
 many("LoopAxisField", [[2.0, 1.5, 0.0], [-3.0, 1.0, 0.5], [1.0, 2.0, -8.0], [1.0, 1.0, 1e6], [1.0, 1e6, 0.25]], lambda c, a, z: quad(lambda t: c*a*a/(4*pi)/(a*a + z*z)**(mpf(3)/2), [0, 2*pi]), "Biot and Savart round the loop")
 many("SegmentField", [[2.0, 1.5, 0.5], [-3.0, 1.0, 8.0], [1.0, 1e6, 0.25], [1.0, 0.125, 1e4]], lambda c, L, s: quad(lambda t: 2*c*s/(4*pi)/(s*s + t*t)**(mpf(3)/2), [0] + [L/2*mpf(4)**-k for k in range(14, -1, -1)]), "Biot and Savart along the segment")
 many("CoaxialLoopInductance", [[1.0, 1.0, 1.0], [1.0, 0.5, 0.0], [2.0, 3.0, 0.25], [1.0, 1.0, 0.0009765625], [1.0, 0.25, 50.0], [0.001, 1.0, 0.0], [1.0, 2.0, 1e5]], lambda a, b, d: quad(lambda t: a*b*cos(t)/sqrt(a*a + b*b - 2*a*b*cos(t) + d*d), [0] + [pi*mpf(2)**-k for k in range(16, -1, -1)]), "Neumann's integral")
+# ---- pairforce.go: one angle as in force/testdata/forces.py; rectangles by the difference of places, one direction closed
+def coaxialpair(p, q, a, k, b, l, g):
+    knots = [mpf(0)] + [pi*mpf(2)**-i for i in range(12, -1, -1)]
+    r = lambda t, z: sqrt((a - b)**2 + 4*a*b*sin(t/2)**2 + z*z)
+    one = lambda z: a*b*quad(lambda t: -log(z + r(t, z))*cos(t), knots)
+    return p*q*(-one(g) + one(g + k) + one(g + l) - one(g + k + l))
+many("CoaxialPairForce", [[1.0, 1.0, 1.0, 1.0, 0.5, 1.0, 0.25], [1.0, 1.0, 1.0, 1.0, 0.75, 1.5, 0.01], [0.7, -1.1, 5.0, 5.0, 3.0, 8.0, 1.0],
+     [1.0, 2.0, 0.5, 0.25, 1.5, 3.0, 0.125], [1.0, 1.0, 1.0, 1.0, 0.75, 1.5, 1.0], [1.0, 1.0, 2.0, 0.5, 1.0, 0.5, 2.0]], coaxialpair, "one angle, from a product of Bessel functions")
+def overlap(a, b, c):
+    m = 2*min(a, b)
+    k = [(c - a - b, mpf(0)), (c - abs(a - b), m), (c + abs(a - b), m), (c + a + b, mpf(0))]
+    return [(x, y, v - (w - v)/(y - x)*x, (w - v)/(y - x)) for (x, v), (y, w) in zip(k, k[1:]) if y > x]
+def across(t, r2, cube):
+    s = mpf(0)
+    for lo, hi, c, e in t:
+        for v, g in ((hi, 1), (lo, -1)):
+            r, L = sqrt(v*v + r2), asinh(v/sqrt(r2))
+            s += g*(c*v/(r2*r) - e/r if cube else c*L + e*r)
+    return s
+def along(t, f):
+    s = mpf(0)
+    for lo, hi, c, e in t:
+        knots = sorted({lo, hi, (lo + hi)/2, lo + (hi - lo)/16, hi - (hi - lo)/16} | ({mpf(0)} if lo < 0 < hi else set()))
+        s += quad(lambda u: (c + e*u)*f(u), knots)
+    return s
+def cuboids(p, q, *v):
+    a, b, d = v[0:3], v[3:6], v[6:9]
+    x, y = overlap(a[0]/2, b[0]/2, d[0]), overlap(a[1]/2, b[1]/2, d[1])
+    slope = lambda t: [(lo, hi, e, mpf(0)) for lo, hi, _, e in t]
+    F = [mpf(0)]*3
+    for i in (-1, 1):
+        for j in (-1, 1):
+            w = d[2] + j*b[2]/2 - i*a[2]/2
+            k = i*j*p*q*Q
+            F[0] += k*along(slope(x), lambda u: across(y, u*u + w*w, False))
+            F[1] += k*along(x, lambda u: across(slope(y), u*u + w*w, False))
+            F[2] += k*w*along(x, lambda u: across(y, u*u + w*w, True))
+    return F
+many("CuboidForce", [[1.0, 1.0, 20.0, 12.0, 6.0, 12.0, 20.0, 6.0, -4.0, -4.0, 8.0], [1.0, 1.0, 20.0, 12.0, 6.0, 12.0, 20.0, 6.0, 6.0, -4.0, 8.0],
+     [1.0, -2.0, 1.0, 1.25, 0.75, 1.5, 0.5, 1.0, 0.25, 0.375, 0.890625], [1.0, 1.0, 1.0, 1.25, 0.75, 1.5, 0.5, 1.0, 0.25, 0.375, 1.875]], cuboids, "two rectangles by the difference of places")
 
 head = {"source": "reference.py, mpmath, 40 digits (28 where said), 25 printed", "cases": None}
 print('{\n"source": %s,\n"cases": [' % json.dumps(head["source"]))

@@ -1,7 +1,7 @@
 #!/usr/bin/env python3
 """Gradients of g at points of the reference cases, by differences of the multiprecision field.
 
-gradient.py make [OUT.json] [SEED]   choose points of all cases of dev, hard, more and of the triples, and write their gradients
+gradient.py make [OUT.json] [SEED]   choose points of all cases of dev, hard and more, add those of triples.json, and write their gradients
                                       (what the file has is kept)
 gradient.py verify IN.json [COUNT SEED]   recompute the file, or COUNT points of it, with another step and more digits
 
@@ -16,6 +16,7 @@ result; it is accepted if
 and else tried again with 130 and 220 digits. The norm is never taken below 1e-6 of p_max/size times (size/R)^4. Points and dipoles:
 exact derivatives in multiprecision, held against the same differences.
 """
+import gzip
 import json
 import math
 import os
@@ -29,6 +30,7 @@ sys.path[:0] = [os.path.join(HERE, "../more"), os.path.join(HERE, "../hard")]
 import gen2  # noqa: F401  (completes gen.VALUE)
 import check2
 import gen
+import sampler
 from gen import add, dot, fr, mul, sub, vec
 from num import Fr, mp, mpf
 
@@ -37,7 +39,8 @@ ORDER = ((0, 0), (1, 1), (2, 2), (0, 1), (0, 2), (1, 2))    # xx yy zz xy xz yz
 
 
 def data(name):
-    with open(os.path.join(HERE, "..", name)) as f:
+    path = os.path.join(HERE, "..", name)
+    with gzip.open(path + ".gz") if name.startswith("triples/") else open(path) as f:
         return json.load(f)
 
 
@@ -137,18 +140,14 @@ def chosen(case, r, count):
 
 
 def rows(seed):
-    """(file, case, indices): four points of every case, and 10 triples of every family."""
+    """(file, case, indices): four points of every case, and all of triples.json, random bodies and points of ../more/sampler.py."""
     r = random.Random(seed)
     for name in FILES:
         for case in data(name):
             if case["polarization"]["kind"] != "flux_tube":
                 yield name, case, chosen(case, r, 4)
-    r = random.Random(seed)
-    for name in sorted(os.listdir(os.path.join(HERE, "../triples"))):
-        cases = data("triples/" + name)
-        keep = {i: r.random() ** (1 / max(weight(c["tags"][0]), 1)) for i, c in enumerate(cases) if c["region"][0] != "on-sheet"}
-        for i in sorted(sorted(keep, key=keep.get)[-10:]):
-            yield "triples/" + name, cases[i], [0]
+    for case in data("gradient/triples.json"):
+        yield "gradient/triples.json", case, [0]
 
 
 def singles(seed):

@@ -178,7 +178,7 @@ func axialPower() Object {
 func power() Object {
 	return Object{
 		Name: "power", Title: "A power of a distance",
-		Doc: "Where the body reaches the axis or the origin, the volume density of a power below 1 is infinite there, and a negative power is refused.",
+		Doc: "Where the body reaches the axis or the origin, the volume density of a power below 1 is infinite there (and null in results.json), and a negative power is refused.",
 		Keys: []Key{
 			key("coefficient", number(), `2`, "c, for distances in the file's unit.").required(),
 			key("power", between(-64, 64), `1`, "n.").required(),

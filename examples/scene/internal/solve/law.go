@@ -3,7 +3,6 @@ package solve
 import (
 	"fmt"
 	"math"
-	"strings"
 
 	"example.com/boundpole/examples/scene/internal/scenefile"
 	"example.com/boundpole/field"
@@ -108,13 +107,6 @@ func (s *singular) fault() error {
 	return &fault{"/" + s.key + "/power",
 		fmt.Sprintf("the power is negative and the body reaches the %s, where the law is infinite (got %v)", s.place, s.power),
 		"give a power of at least 0, or a body that keeps off the " + s.place}
-}
-
-// unsupported is the refusal of a charge that is infinite at the place, on a shape that is integrated.
-func (s *singular) unsupported(shape string) error {
-	return &fault{"/" + s.key + "/power",
-		fmt.Sprintf("a power below 1 makes the volume charge infinite at the %s, inside a body of shape %s (got %v)", s.place, strings.ReplaceAll(shape, "_", " "), s.power),
-		"give a power of at least 1, or a body that keeps off the " + s.place}
 }
 
 // singularOf returns what is singular about a law on a body; the zero value for nothing.

@@ -124,9 +124,6 @@ func (m *made) bind(part *scenefile.Part, law field.Polarization) error {
 		}
 		var err error
 		m.charge[k], err = bound.Of(m.body, field.Times{Polarization: m.law, Factor: sign})
-		if m.singular.met && errors.Is(err, bound.ErrUnsupported) {
-			return m.singular.unsupported(part.Kind)
-		}
 		if err != nil {
 			return err
 		}
