@@ -23,6 +23,10 @@ type Response struct {
 	passed    []bool      // which parts the applied field has a flux through
 	doubt     []float64   // what the charge of each held conductor may be off by
 	loads     [][]float64 // for each level the charges at the points of the kept pieces
+	remote    [3]*field.Moments
+	centre    r3.Vec // of all bodies, with the radius reach
+	reach     float64
+	charge    float64 // of all conductors
 	trend     trend
 	density   float64 // root mean square of the induced density
 	size      float64 // root of the area of all bodies
@@ -54,6 +58,10 @@ func (r *Response) Field(x r3.Vec) r3.Vec { return field.At(r, x, field.Mean, fi
 
 // Evaluate computes the arrays of dst; see field.Evaluator.
 func (r *Response) Evaluate(dst *field.Values, at *field.Points, side field.Side) {
+	if len(r.rigid) == 0 {
+		induced{r}.Evaluate(dst, at, side)
+		return
+	}
 	r.whole.Evaluate(dst, at, side)
 }
 

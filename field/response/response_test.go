@@ -72,7 +72,7 @@ func TestSphere(t *testing.T) {
 		judge(t, "moment", along(r.Moment(0), up.G), want, math.Abs(want), 1e-9, 1e-15) // 1e-10 measured
 		energy := -want / 2
 		judge(t, "energy", r.Energy(), energy, math.Abs(want), 1e-9, 1e-15) // as the moment
-		for _, x := range []r3.Vec{{}, {X: 0.5, Y: 0.3, Z: -0.6}, {X: 0.999}, {Z: 1 - 1e-12}, {Y: 1.2}, {X: 1 + 1e-9}, {X: 30, Z: 40}} {
+		for _, x := range []r3.Vec{{}, {X: 0.5, Y: 0.3, Z: -0.6}, {X: 0.999}, {Z: 1 - 1e-12}, {Y: 1.2}, {X: 1 + 1e-9}, {X: 30, Z: 40}, {X: 3e5, Y: 1e6}} {
 			v := field.At(r, x, field.Mean, field.WantG|field.WantErr|field.WantPhi)
 			p := r3.Vec{Z: polarizability(1.0/3, chi)}
 			ref := closedform.SphereField(p, 1, x)

@@ -85,7 +85,7 @@ func (r *Response) follow() {
 	}
 	r.density, r.size = math.Sqrt(square/area), math.Sqrt(area)
 	w := probes.Get().(*probe)
-	defer probes.Put(w)
+	defer w.release()
 	var first, second float64
 	for k := range s.bodies {
 		centre := r3.Scale(0.5, r3.Add(s.bounds[k].Min, s.bounds[k].Max))
