@@ -11,7 +11,7 @@ import (
 // Frame: that in which the bodies were given.
 // Domain: all finite x. NaN in, NaN out.
 // Singular: on edges of the bodies. On faces the side asked for, the mean by default.
-// Accuracy: see the package comment; the estimate is what the finest two of three meshes differ by.
+// Accuracy: see the package comment; the estimate is what three meshes let expect, safe by a factor of 3.
 // Source: [Kress2014] chapter 6, [Bremer2012]; images, spheres and shells in the tests.
 type Response struct {
 	system    *System
@@ -28,7 +28,7 @@ type Response struct {
 	reach     float64
 	charge    float64 // of all conductors
 	trend     trend
-	density   float64 // root mean square of the induced density
+	density   float64 // mean of |sigma| of the induced charge
 	size      float64 // root of the area of all bodies
 	Report    Report
 }
