@@ -320,6 +320,9 @@ func TestErrors(t *testing.T) {
 // TestCylindricalShield holds the middle of a long tube across the field against the endless one: with 12 diameters the ends change
 // the ratio by 1e-3 of the applied field at most.
 func TestCylindricalShield(t *testing.T) {
+	if testing.Short() {
+		t.Skip("a large mesh")
+	}
 	tube := geom.Tube{Inner: 0.9, Outer: 1, Height: 24}
 	s := prepare(t, &response.Settings{Order: 4}, tube)
 	r := solve(t, s, response.Uniform{G: r3.Vec{X: 1}}, response.Material{Chi: 49})

@@ -54,7 +54,7 @@ func (r *Response) Potential(body int) (Value, error) {
 // potentials returns those of the induced charge on the three meshes.
 func (r *Response) potentials(x r3.Vec) (v [3]float64) {
 	w := probes.Get().(*probe)
-	defer probes.Put(w)
+	defer w.release()
 	w.at(r, x, -1, 0, false)
 	for k := range v {
 		v[k] = over4Pi * w.sums[k].phi

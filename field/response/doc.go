@@ -30,8 +30,9 @@
 // 1:2:3 1e-9; spherical shell with a wall of 0.02, mu_r = 1e5, 1e-7, its inside included; cube 1e-5 from chi = -1 to +Inf;
 // cylinders of length 0.1 to 10 diameters 1e-5 of the magnetometric factor; two spheres of metal 0.001 radii apart 3e-7. The field
 // of the result is as good as that off the faces; on a face and near an edge the density counts directly: 1e-7 on a sphere; on
-// the faces of a cube 1e-4, 1e-3 at 0.001 of the side from an edge, 5e-3 at 0.0001. The median of estimate over error is between
-// 3 and 150. Where the first of the three meshes is far from the truth (order 6: 2 nodes a direction) estimates are wide.
+// the faces of a cube 1e-4, 1e-3 at 0.001 of the side from an edge, 5e-3 at 0.0001. Estimates held at all of 14400 points in and
+// around a sphere, an ellipsoid, a cube, a cylinder, a cone and a prism with a reentrant edge, with medians of estimate over error
+// from 3 to 150; with order 6, whose first mesh has 2 nodes a direction, up to 1300.
 // A job of 3200 unknowns takes 4 s on two processors, its field at 10000 points 0.3 s, with estimates 1 s.
 //
 // # Not covered

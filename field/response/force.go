@@ -102,7 +102,7 @@ func (r *Response) outer(at []r3.Vec, body, k int) []r3.Vec {
 		}
 	}
 	w := probes.Get().(*probe)
-	defer probes.Put(w)
+	defer w.release()
 	for b := range r.system.bodies {
 		if b == body {
 			continue

@@ -185,13 +185,67 @@ func (r *Response) induced(p field.Point, side field.Side, want field.Want) fiel
 // plain returns the value off all faces.
 func (r *Response) plain(x r3.Vec, want field.Want) field.Value {
 	w := probes.Get().(*probe)
-	defer probes.Put(w)
+	defer w.release()
 	first := 2
 	if want&field.WantErr != 0 {
 		first = 0
 	}
-	w.at(r, x, -1, first, want&field.WantGrad != 0)
+	if distance(x, r.centre) > remote*r.reach {
+		w.remote(r, x, first, want)
+	} else {
+		w.at(r, x, -1, first, want&field.WantGrad != 0)
+	}
 	return w.value(want)
+}
+
+// release puts the working memory back.
+func (w *probe) release() {
+	w.r = nil
+	probes.Put(w)
+}
+
+// remote is the distance, in units of the radius of all bodies, from which they are expanded as a whole, to the order distant:
+// (1/3)^31 = 2e-15 is left out.
+const (
+	remote  = 3
+	distant = 30
+)
+
+// expand makes the expansions of the three meshes. A charge in the centre makes up for what rounding leaves of the sum.
+func (r *Response) expand() {
+	b := r.Bounds()
+	r.centre = r3.Scale(0.5, r3.Add(b.Min, b.Max))
+	r.reach = halfDiagonal(b)
+	r.charge = 0
+	for _, m := range r.materials {
+		r.charge += m.Charge
+	}
+	for k := range r.layers {
+		e := field.NewMoments(r.centre, r.reach, distant)
+		net := -r.charge
+		for i, q := range r.layers[k].charge {
+			e.AddCharge(r.system.levels[k].x[i], q)
+			net += q
+		}
+		e.AddCharge(r.centre, -net)
+		if r.charge == 0 {
+			e.Neutral()
+		}
+		r.remote[k] = e
+	}
+}
+
+// remote evaluates the expansions.
+func (w *probe) remote(r *Response, x r3.Vec, first int, want field.Want) {
+	w.r, w.x = r, x
+	for k := first; k < len(w.sums); k++ {
+		v := r.remote[k].Value(field.Point{X: pair.VecOf(x)}, want&^field.WantErr)
+		s := &w.sums[k]
+		s.phi, s.g = 4*math.Pi*v.Phi, r3.Scale(4*math.Pi, v.G)
+		for i, t := range v.Grad {
+			s.grad[i] = 4 * math.Pi * t
+		}
+	}
 }
 
 // value makes a value of the sums, with what the meshes differ by as estimate.
@@ -207,6 +261,13 @@ func (w *probe) value(want field.Want) field.Value {
 		v.ErrG = over4Pi * trend.left(r3.Norm(r3.Sub(b.g, a.g)), r3.Norm(r3.Sub(c.g, b.g)))
 		v.ErrGrad = over4Pi * trend.left(apartBy(&a.grad, &b.grad), apartBy(&b.grad, &c.grad))
 		floor := rounding * w.r.density
+		if d := distance(w.x, w.r.centre); d > w.r.reach {
+			fall := w.r.reach / d
+			if w.r.charge == 0 {
+				fall *= fall
+			}
+			floor *= fall * w.r.reach / d
+		}
 		v.ErrPhi += rounding*math.Abs(v.Phi) + floor*w.r.size
 		v.ErrG += rounding*r3.Norm(v.G) + floor
 		v.ErrGrad += rounding*tensorNorm(&v.Grad) + floor/w.r.size

@@ -14,7 +14,7 @@ type Report struct {
 	Steps    [3]int     // of the iteration
 	Residual [3]float64 // relative
 	Trend    float64    // how much less the finest two meshes differ than the coarser two, in field and density together
-	Density  float64    // what the density of the finest two differs by, relative, both in the root mean square
+	Density  float64    // what the densities of the finest two differ by: the integral of |difference| over that of |sigma|
 	Leak     float64    // largest |charge - the charge it is to have| of a body over the integral of |sigma| over it
 }
 
@@ -25,7 +25,7 @@ func (r *Response) report() {
 	}
 	r.Report.Trend = r.trend.observed
 	if r.density > 0 {
-		r.Report.Density = r.differ(2) / r.density
+		r.Report.Density = r.differ(2) / (r.density * r.size * r.size)
 	}
 	for body, m := range r.materials {
 		net, all := -m.Charge, 0.0

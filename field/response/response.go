@@ -11,7 +11,7 @@ import (
 // Frame: that in which the bodies were given.
 // Domain: all finite x. NaN in, NaN out.
 // Singular: on edges of the bodies. On faces the side asked for, the mean by default.
-// Accuracy: see the package comment; the estimate is what the finest two of three meshes differ by.
+// Accuracy: see the package comment; the estimate is what three meshes let expect, safe by a factor of 3.
 // Source: [Kress2014] chapter 6, [Bremer2012]; images, spheres and shells in the tests.
 type Response struct {
 	system    *System
@@ -23,8 +23,12 @@ type Response struct {
 	passed    []bool      // which parts the applied field has a flux through
 	doubt     []float64   // what the charge of each held conductor may be off by
 	loads     [][]float64 // for each level the charges at the points of the kept pieces
+	remote    [3]*field.Moments
+	centre    r3.Vec // of all bodies, with the radius reach
+	reach     float64
+	charge    float64 // of all conductors
 	trend     trend
-	density   float64 // root mean square of the induced density
+	density   float64 // mean of |sigma| of the induced charge
 	size      float64 // root of the area of all bodies
 	Report    Report
 }
@@ -54,6 +58,10 @@ func (r *Response) Field(x r3.Vec) r3.Vec { return field.At(r, x, field.Mean, fi
 
 // Evaluate computes the arrays of dst; see field.Evaluator.
 func (r *Response) Evaluate(dst *field.Values, at *field.Points, side field.Side) {
+	if len(r.rigid) == 0 {
+		induced{r}.Evaluate(dst, at, side)
+		return
+	}
 	r.whole.Evaluate(dst, at, side)
 }
 

@@ -72,7 +72,7 @@ func TestSphere(t *testing.T) {
 		judge(t, "moment", along(r.Moment(0), up.G), want, math.Abs(want), 1e-9, 1e-15) // 1e-10 measured
 		energy := -want / 2
 		judge(t, "energy", r.Energy(), energy, math.Abs(want), 1e-9, 1e-15) // as the moment
-		for _, x := range []r3.Vec{{}, {X: 0.5, Y: 0.3, Z: -0.6}, {X: 0.999}, {Z: 1 - 1e-12}, {Y: 1.2}, {X: 1 + 1e-9}, {X: 30, Z: 40}} {
+		for _, x := range []r3.Vec{{}, {X: 0.5, Y: 0.3, Z: -0.6}, {X: 0.999}, {Z: 1 - 1e-12}, {Y: 1.2}, {X: 1 + 1e-9}, {X: 30, Z: 40}, {X: 3e5, Y: 1e6}} {
 			v := field.At(r, x, field.Mean, field.WantG|field.WantErr|field.WantPhi)
 			p := r3.Vec{Z: polarizability(1.0/3, chi)}
 			ref := closedform.SphereField(p, 1, x)
@@ -118,7 +118,7 @@ func TestRim(t *testing.T) {
 
 func TestEllipsoid(t *testing.T) {
 	e := geom.Ellipsoid{SemiAxes: r3.Vec{X: 1, Y: 2, Z: 3}}
-	s := prepare(t, nil, e)
+	s := prepare(t, &response.Settings{Order: 7}, e)
 	n := closedform.EllipsoidFactors(e.SemiAxes)
 	for _, chi := range []float64{-1, inf} {
 		for _, c := range []struct {
@@ -127,10 +127,10 @@ func TestEllipsoid(t *testing.T) {
 		}{{r3.Vec{X: 1}, n.X}, {r3.Vec{Z: 1}, n.Z}} {
 			r := solve(t, s, response.Uniform{G: c.d}, response.Material{Chi: chi})
 			want := polarizability(c.n, chi) * e.Volume()
-			judge(t, "moment", along(r.Moment(0), c.d), want, math.Abs(want), 1e-8, 0) // 8e-10 measured
+			judge(t, "moment", along(r.Moment(0), c.d), want, math.Abs(want), 1e-6, 0) // 1e-6 is the bar; 8e-10 measured with the default order
 			v := field.At(r, r3.Vec{X: 0.2, Y: -0.5, Z: 1}, field.Mean, field.WantG|field.WantErr)
 			p := want / e.Volume()
-			if d := r3.Norm(r3.Add(v.G, r3.Scale(c.n*p, c.d))); d > v.ErrG || d > 1e-6*math.Abs(p) { // 1e-4 is the bar
+			if d := r3.Norm(r3.Add(v.G, r3.Scale(c.n*p, c.d))); d > v.ErrG || d > 1e-5*math.Abs(p) { // 1e-4 is the bar
 				t.Errorf("chi %g: inner field off by %.1e, estimate %.1e", chi, d, v.ErrG)
 			}
 		}
@@ -197,6 +197,9 @@ func TestCylinder(t *testing.T) {
 		{0.1, []float64{0.8294864, 0.7839877, 0.7602701, 0.7502827}},
 		{1, []float64{0.3692299, 0.2941317, 0.2679628, 0.2589733}},
 	} {
+		if testing.Short() && c.ratio != 1 {
+			continue
+		}
 		body := geom.Cylinder{Radius: 1, Height: 2 * c.ratio}
 		s := prepare(t, nil, body)
 		for k, chi := range chis {

@@ -134,6 +134,7 @@ func (s *System) once(ctx context.Context, materials []Material, applied field.S
 		}
 	}
 	r.load()
+	r.expand()
 	r.whole = field.Sum{induced{r}}
 	for _, c := range fixed {
 		r.whole = append(r.whole, field.Scaled{Source: c.Charge, Factor: c.factor})

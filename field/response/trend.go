@@ -78,25 +78,27 @@ func (r *Response) follow() {
 		r.trend.least = rough
 	}
 	l := &s.levels[2]
-	var square, area float64
+	var all, area float64
 	for i, q := range r.layers[2].charge {
-		square += q * q / l.area[i]
+		all += math.Abs(q)
 		area += l.area[i]
 	}
-	r.density, r.size = math.Sqrt(square/area), math.Sqrt(area)
+	r.density, r.size = all/area, math.Sqrt(area)
 	w := probes.Get().(*probe)
-	defer probes.Put(w)
+	defer w.release()
 	var first, second float64
 	for k := range s.bodies {
 		centre := r3.Scale(0.5, r3.Add(s.bounds[k].Min, s.bounds[k].Max))
 		half := r3.Sub(s.bounds[k].Max, centre)
 		for i := range 26 {
-			d := [3]float64{float64(i%3) - 1, float64(i/3%3) - 1, float64(i/9) - 1}
+			d := [3]float64{float64(i%3) - 0.983, float64(i/3%3) - 1.019, float64(i/9) - 0.971} // off planes of symmetry
 			for _, f := range [2]float64{0.37, 1.3} {
 				x := r3.Add(centre, r3.Vec{X: f * d[0] * half.X, Y: f * d[1] * half.Y, Z: f * d[2] * half.Z})
 				w.at(r, x, -1, 0, false)
-				first = math.Hypot(first, r3.Norm(r3.Sub(w.sums[1].g, w.sums[0].g)))
-				second = math.Hypot(second, r3.Norm(r3.Sub(w.sums[2].g, w.sums[1].g)))
+				a, b := r3.Norm(r3.Sub(w.sums[1].g, w.sums[0].g)), r3.Norm(r3.Sub(w.sums[2].g, w.sums[1].g))
+				if sum := a + b; sum-sum == 0 { // else on a node or an edge
+					first, second = math.Hypot(first, a), math.Hypot(second, b)
+				}
 			}
 		}
 	}
@@ -106,7 +108,8 @@ func (r *Response) follow() {
 	}
 }
 
-// differ returns the root mean square of what the density of mesh k differs by from that of mesh k - 1.
+// differ returns the integral of |difference| of the densities of mesh k and mesh k - 1 over all bodies. It is taken of the
+// charge per parameter, which exists everywhere, at the nodes of mesh k.
 func (r *Response) differ(k int) float64 {
 	s := r.system
 	coarse, fine := &s.levels[k-1], &s.levels[k]
@@ -115,7 +118,7 @@ func (r *Response) differ(k int) float64 {
 	for a, x := range fine.tables.rule.x {
 		coarse.tables.rule.basis(at[a*n:a*n+n], x)
 	}
-	sum, area := 0.0, 0.0
+	sum := 0.0
 	for t := range s.tiles {
 		for b := range m {
 			for a := range m {
@@ -127,11 +130,9 @@ func (r *Response) differ(k int) float64 {
 					}
 				}
 				c := t*m*m + b*m + a
-				d := f - r.layers[k].charge[c]/fine.weight[c]
-				sum += d * d / fine.jac[c] * fine.weight[c]
-				area += fine.area[c]
+				sum += math.Abs(f*fine.weight[c] - r.layers[k].charge[c])
 			}
 		}
 	}
-	return math.Sqrt(sum / area)
+	return sum
 }
