@@ -30,6 +30,7 @@ type PolynomialEllipsoid struct {
 	excess   [3]float64 // a_i^2 less the square of the shortest semi-axis, in units
 	outer    polyTable  // the integrand of phi
 	inner    polyTable  // phi inside, in x_i/a_i
+	round    polyTable  // phi outside if this is a sphere
 	dipole   r3.Vec     // the mean polarization
 	rounding float64    // bound on the relative error of a term
 	nodes    []float64  // of the rule of one panel, on 0..1
@@ -63,7 +64,10 @@ func NewPolynomialEllipsoid(shape geom.Ellipsoid, p field.Polynomial) (*Polynomi
 	e.outer = integrandOf(scaled, &base.axes)
 	e.dipole = meanOf(scaled)
 	e.inner = e.interior()
-	if s := e.outer.total() + e.inner.total(); s-s != 0 {
+	if e.excess == [3]float64{} {
+		e.round = e.series()
+	}
+	if s := e.outer.total() + e.inner.total() + e.round.total(); s-s != 0 {
 		return nil, fmt.Errorf("element: polarization of the ellipsoid overflows; give coefficients that times powers of the semi-axes %v "+
 			"are finite", shape.SemiAxes)
 	}
@@ -132,7 +136,7 @@ func (e *PolynomialEllipsoid) value(p field.Point, want field.Want, side field.S
 func (e *PolynomialEllipsoid) inside(x pair.Vec, want field.Want) field.Value {
 	var n polyNode
 	for i, c := range [3]float64{x.X.Hi, x.Y.Hi, x.Z.Hi} {
-		n.alpha[i], n.beta[i], n.eta[i] = 1, 1, c/e.base.axes[i]
+		n.alpha[i], n.eta[i] = 1, c/e.base.axes[i]
 	}
 	var s polySum
 	s.add(&e.inner, &n, &e.base.axes, 1, want)
@@ -145,21 +149,27 @@ const polyFar = 0x1p60
 // outside returns the value outside, or from the outside on the surface; x in units, the value not.
 func (e *PolynomialEllipsoid) outside(x pair.Vec, surface bool, want field.Want) field.Value {
 	b := e.base
-	if n, r := direction(x.Value()); r > polyFar {
+	n, r := direction(x.Value())
+	if r > polyFar {
 		v := dipolar(e.dipole, along(e.dipole, x, r), b.axes[0]*b.axes[1]*b.axes[2]/3/r/r, n, r)
 		scaleLength(&v, b.unit)
 		return v
+	}
+	var s polySum
+	var place polyNode
+	if len(e.round.groups) > 0 && r < seriesReach*b.axes[0] {
+		e.seriesNode(&[3]float64{x.X.Value(), x.Y.Value(), x.Z.Value()}, &place)
+		s.add(&e.round, &place, &b.axes, 1, want)
+		return e.finish(&s, want)
 	}
 	lambda := 0.0
 	if !surface {
 		lambda = b.root(x)
 	}
 	o := e.confocalAt(x, lambda)
-	var s polySum
-	n := polyNode{}
 	e.each(&o, func(t, w float64) {
-		o.node(t, &n)
-		s.add(&e.outer, &n, &b.axes, w, want)
+		o.node(t, &place)
+		s.add(&e.outer, &place, &b.axes, w, want)
 	})
 	e.addSurface(&s, &o, want)
 	return e.finish(&s, want)

@@ -44,7 +44,7 @@ func (e *PolynomialEllipsoid) confocalAt(x pair.Vec, lambda float64) confocalPol
 func (o *confocalPoly) node(t float64, n *polyNode) {
 	least := o.base.squares[o.base.least].Hi
 	rest := (1 - t) * (1 + t)
-	n.over = 0
+	n.over, n.slope = 0, 1
 	for i, a := range o.base.axes {
 		f := 1 / (o.from + o.excess[i]*t*t)
 		n.alpha[i] = a * a * t * t * f

@@ -6,24 +6,39 @@ import (
 	"example.com/boundpole/field"
 )
 
-// polySizes is the length of tables of powers: those of e_i up to PolynomialDegree+1, of U up to PolynomialDegree/2+1.
-const polySizes = PolynomialDegree + 3
+// polySizes is the length of tables of powers: one more than any reaches. polyFactors is the number of factors there can be: l of
+// four kinds, q with a sum up to half the degree.
+const (
+	polySizes   = PolynomialDegree + 2
+	polyHalf    = PolynomialDegree / 2
+	polyFactors = 4 * (polyHalf + 1) * (polyHalf + 2) * (polyHalf + 3) / 6
+)
 
-// polyNode is a place of the integrand.
+// polyNode is a place of a table. Its fourth variable z has the derivatives -2 slope e_i by x_i/a_i, and second ones
+// -2 slope al_i delta_ij + bend e_i e_j, and stands with powers higher by half than those of the table: for U in the integrand 1, 0, 0.
 type polyNode struct {
-	alpha, beta, eta [3]float64
-	over             float64 // U
-	powers           [3][PolynomialDegree/2 + 1]float64
+	alpha, beta, eta  [3]float64
+	over              float64 // z
+	slope, bend, half float64
+	factors           [polyFactors]float64
 }
 
-// fill fills the powers of beta.
-func (n *polyNode) fill() {
+// fill fills in the factors of a table.
+func (n *polyNode) fill(t *polyTable) {
+	var powers [3][polyHalf + 1]float64
 	for i, b := range n.beta {
 		p := 1.0
-		for k := range n.powers[i] {
-			n.powers[i][k] = p
+		for k := range powers[i] {
+			powers[i][k] = p
 			p *= b
 		}
+	}
+	for k, f := range t.factors {
+		v := powers[0][f.q[0]] * powers[1][f.q[1]] * powers[2][f.q[2]]
+		if f.l >= 0 {
+			v *= n.alpha[f.l]
+		}
+		n.factors[k] = v
 	}
 }
 
@@ -31,10 +46,7 @@ func (n *polyNode) fill() {
 func (n *polyNode) weight(g *polyGroup) (w, size float64) {
 	for k := range g.parts {
 		p := &g.parts[k]
-		f := n.powers[0][p.q[0]] * n.powers[1][p.q[1]] * n.powers[2][p.q[2]]
-		if p.l >= 0 {
-			f *= n.alpha[p.l]
-		}
+		f := n.factors[p.factor]
 		w += p.c * f
 		size += p.size * f
 	}
@@ -52,14 +64,25 @@ type polyJet struct {
 	twice  bool // dd and du too
 }
 
-// polyPowers holds z^k, k z^(k-1), k (k-1) z^(k-2).
+// polyPowers holds z^k, k z^(k-1), k (k-1) z^(k-2), k whole, or half more than whole.
 type polyPowers [polySizes][3]float64
 
-func (p *polyPowers) fill(z float64, top int) {
+func (p *polyPowers) fill(z, half float64, top int) {
 	p[0] = [3]float64{1}
+	if half != 0 {
+		root := math.Sqrt(z)
+		p[0] = [3]float64{root, 0.5 / root, -0.25 / (root * z)}
+	}
 	for k := 1; k <= top; k++ {
-		l := &p[k-1]
-		p[k] = [3]float64{l[0] * z, float64(k) * l[0], float64(k) * l[1]}
+		l, m := &p[k-1], float64(k)+half
+		p[k] = [3]float64{l[0] * z, m * l[0], m * l[1]}
+	}
+}
+
+// sizes fills in the magnitudes of others.
+func (p *polyPowers) sizes(o *polyPowers, top int) {
+	for k := range top + 1 {
+		p[k] = [3]float64{math.Abs(o[k][0]), math.Abs(o[k][1]), math.Abs(o[k][2])}
 	}
 }
 
@@ -93,19 +116,22 @@ func (j *polyJet) add(w float64, n *[4]uint8, p *[4]polyPowers) {
 }
 
 // jets returns the table at a node and the sizes of its terms, those only if estimates are wanted.
-func (t polyTable) jets(n *polyNode, want field.Want) (value, size polyJet) {
-	n.fill()
+func (t *polyTable) jets(n *polyNode, want field.Want) (value, size polyJet) {
+	n.fill(t)
 	var p, q [4]polyPowers
-	top := t.top()
 	for i, z := range [4]float64{n.eta[0], n.eta[1], n.eta[2], n.over} {
-		p[i].fill(z, top[i])
-		q[i].fill(math.Abs(z), top[i])
+		half := 0.0
+		if i == 3 {
+			half = n.half
+		}
+		p[i].fill(z, half, t.top[i])
+		q[i].sizes(&p[i], t.top[i])
 	}
 	value.slopes = want&(field.WantG|field.WantGrad) != 0
 	value.twice = want&field.WantGrad != 0
 	size.slopes, size.twice = value.slopes, value.twice
-	for k := range t {
-		g := &t[k]
+	for k := range t.groups {
+		g := &t.groups[k]
 		w, s := n.weight(g)
 		value.add(w, &g.n, &p)
 		if want&field.WantErr != 0 {
@@ -113,16 +139,6 @@ func (t polyTable) jets(n *polyNode, want field.Want) (value, size polyJet) {
 		}
 	}
 	return value, size
-}
-
-// top returns the highest powers of a table.
-func (t polyTable) top() (top [4]int) {
-	for k := range t {
-		for i, n := range t[k].n {
-			top[i] = max(top[i], int(n))
-		}
-	}
-	return top
 }
 
 // polySum adds up phi, g and its gradient, with the sizes of the terms; lengths in units.
@@ -133,7 +149,7 @@ type polySum struct {
 	gradSize     float64
 }
 
-// add adds w times the table at a node as phi, with d/dx_i = (al_i d/de_i - 2 e_i d/dU)/a_i.
+// add adds w times the table at a node as phi, with d/dx_i = (al_i d/de_i - 2 slope e_i d/dz)/a_i.
 func (s *polySum) add(t *polyTable, n *polyNode, axes *[3]float64, w float64, want field.Want) {
 	v, size := t.jets(n, want)
 	s.phi += w * v.v
@@ -142,21 +158,22 @@ func (s *polySum) add(t *polyTable, n *polyNode, axes *[3]float64, w float64, wa
 		return
 	}
 	for i, a := range axes {
-		s.g[i] -= w / a * (n.alpha[i]*v.d[i] - 2*n.eta[i]*v.d[3])
-		s.gSize[i] += w / a * (n.alpha[i]*size.d[i] + 2*math.Abs(n.eta[i])*size.d[3])
+		s.g[i] -= w / a * (n.alpha[i]*v.d[i] - 2*n.slope*n.eta[i]*v.d[3])
+		s.gSize[i] += w / a * (n.alpha[i]*size.d[i] + 2*n.slope*math.Abs(n.eta[i])*size.d[3])
 	}
 	if want&field.WantGrad == 0 {
 		return
 	}
+	down := 2 * n.slope
 	for k, ij := range tensorOrder {
 		i, j := ij[0], ij[1]
 		ai, aj, ei, ej := n.alpha[i], n.alpha[j], n.eta[i], n.eta[j]
-		d := ai*aj*v.dd[k] - 2*(ai*ej*v.du[i]+aj*ei*v.du[j]) + 4*ei*ej*v.du[3]
+		d := ai*aj*v.dd[k] - down*(ai*ej*v.du[i]+aj*ei*v.du[j]) + ei*ej*(down*down*v.du[3]+n.bend*v.d[3])
 		ei, ej = math.Abs(ei), math.Abs(ej)
-		b := ai*aj*size.dd[k] + 2*(ai*ej*size.du[i]+aj*ei*size.du[j]) + 4*ei*ej*size.du[3]
+		b := ai*aj*size.dd[k] + down*(ai*ej*size.du[i]+aj*ei*size.du[j]) + ei*ej*(down*down*size.du[3]+n.bend*size.d[3])
 		if i == j {
-			d -= 2 * ai * v.d[3]
-			b += 2 * ai * size.d[3]
+			d -= down * ai * v.d[3]
+			b += down * ai * size.d[3]
 		} else {
 			b *= 2 // twice in the norm
 		}

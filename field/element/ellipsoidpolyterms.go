@@ -8,11 +8,16 @@ import (
 	"example.com/boundpole/field"
 )
 
-// polyPart is c b_1^q1 b_2^q2 b_3^q3 al_l, b_i = s/A_i; no al for l = -1. size is the size of the terms of c.
+// polyFactor is b_1^q1 b_2^q2 b_3^q3 al_l, b_i = s/A_i; no al for l = -1.
+type polyFactor struct {
+	q [3]uint8
+	l int8
+}
+
+// polyPart is c times a factor; size is the size of the terms of c.
 type polyPart struct {
 	c, size float64
-	q       [3]uint8
-	l       int8
+	factor  uint16
 }
 
 // polyGroup is e_1^n1 e_2^n2 e_3^n3 U^n4 times the sum of its parts, e_i = al_i x_i/a_i.
@@ -22,12 +27,16 @@ type polyGroup struct {
 }
 
 // polyTable is a sum of groups.
-type polyTable []polyGroup
+type polyTable struct {
+	groups  []polyGroup
+	factors []polyFactor
+	top     [4]int // the highest powers
+}
 
 // total returns the sum of the sizes of all coefficients.
-func (t polyTable) total() float64 {
+func (t *polyTable) total() float64 {
 	s := 0.0
-	for _, g := range t {
+	for _, g := range t.groups {
 		for _, p := range g.parts {
 			s += p.size
 		}
@@ -38,9 +47,11 @@ func (t polyTable) total() float64 {
 // polyKey names a term.
 type polyKey struct {
 	n [4]uint8
-	q [3]uint8
-	l int8
+	polyFactor
 }
+
+// plainKey is that of x^n without factors.
+func plainKey(n [4]uint8) polyKey { return polyKey{n, polyFactor{l: -1}} }
 
 // compare orders keys, those of one group beside each other.
 func (k polyKey) compare(o polyKey) int {
@@ -62,12 +73,22 @@ func (m polyTerms) table() (t polyTable) {
 		keys = append(keys, k)
 	}
 	slices.SortFunc(keys, polyKey.compare)
+	index := map[polyFactor]uint16{}
 	for _, k := range keys {
-		if len(t) == 0 || t[len(t)-1].n != k.n {
-			t = append(t, polyGroup{n: k.n})
+		if last := len(t.groups) - 1; last < 0 || t.groups[last].n != k.n {
+			t.groups = append(t.groups, polyGroup{n: k.n})
+			for i, n := range k.n {
+				t.top[i] = max(t.top[i], int(n))
+			}
 		}
-		g := &t[len(t)-1]
-		g.parts = append(g.parts, polyPart{c: m[k][0], size: m[k][1], q: k.q, l: k.l})
+		f, ok := index[k.polyFactor]
+		if !ok {
+			f = uint16(len(t.factors))
+			index[k.polyFactor] = f
+			t.factors = append(t.factors, k.polyFactor)
+		}
+		g := &t.groups[len(t.groups)-1]
+		g.parts = append(g.parts, polyPart{c: m[k][0], size: m[k][1], factor: f})
 	}
 	return t
 }
@@ -95,7 +116,7 @@ func integrandOf(p field.Polynomial, axes *[3]float64) polyTable {
 func (m polyTerms) putDerivative(t field.Term, q [3]int, axes *[3]float64) {
 	w := t.Coefficient / axes[t.Component]
 	order := 0
-	key := polyKey{l: -1}
+	key := plainKey([4]uint8{})
 	for i, k := range q {
 		n := t.Powers[i]
 		for l := range k { // one (n)(n-1)/(4 (m+1) q) after the other: no overflow
@@ -118,54 +139,4 @@ func (m polyTerms) putDerivative(t field.Term, q [3]int, axes *[3]float64) {
 		c := -float64(left) * w
 		m.put(down, c, math.Abs(c))
 	}
-}
-
-// interior returns phi inside as a polynomial in x_i/a_i: the integral from 0 with U = 1 - sum al_i (x_i/a_i)^2 multiplied out.
-func (e *PolynomialEllipsoid) interior() polyTable {
-	terms := polyTerms{}
-	least := e.base.squares[e.base.least].Hi
-	o := confocalPoly{base: e.base, excess: &e.excess, from: least}
-	var n polyNode
-	e.each(&o, func(t, w float64) {
-		o.node(t, &n)
-		n.fill()
-		for k := range e.outer {
-			g := &e.outer[k]
-			c, size := n.weight(g)
-			for i := range 3 {
-				f := powerOf(n.alpha[i], int(g.n[i]))
-				c, size = c*f, size*f
-			}
-			terms.expand(g.n, c*w, size*w, &n.alpha)
-		}
-	})
-	return terms.table()
-}
-
-// expand puts c x^n (1 - sum al_i x_i^2)^n4.
-func (m polyTerms) expand(n [4]uint8, c, size float64, alpha *[3]float64) {
-	top := int(n[3])
-	fi := 1.0 // (-al)^i top!/(i! (top-i)!), and so on
-	for i := 0; i <= top; i++ {
-		fj := fi
-		for j := 0; i+j <= top; j++ {
-			fk := fj
-			for k := 0; i+j+k <= top; k++ {
-				key := polyKey{l: -1, n: [4]uint8{n[0] + uint8(2*i), n[1] + uint8(2*j), n[2] + uint8(2*k)}}
-				m.put(key, c*fk, size*math.Abs(fk))
-				fk *= -alpha[2] * float64(top-i-j-k) / float64(k+1)
-			}
-			fj *= -alpha[1] * float64(top-i-j) / float64(j+1)
-		}
-		fi *= -alpha[0] * float64(top-i) / float64(i+1)
-	}
-}
-
-// powerOf returns x^n.
-func powerOf(x float64, n int) float64 {
-	v := 1.0
-	for range n {
-		v *= x
-	}
-	return v
 }
