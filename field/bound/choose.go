@@ -88,8 +88,17 @@ func wholeBody(body geom.Body, p field.Polarization) (field.Source, error) {
 		if l.is {
 			return element.NewAffineEllipsoid(b, l.affine)
 		}
+		if q, ok := lowPolynomial(p); ok {
+			return element.NewPolynomialEllipsoid(b, q)
+		}
 	}
 	return nil, nil
+}
+
+// lowPolynomial returns a polarization as a polynomial that the closed forms of round bodies take; ok is false if it is none.
+func lowPolynomial(p field.Polarization) (q field.Polynomial, ok bool) {
+	q, ok = polynomialOf(p)
+	return q, ok && q.Degree() <= element.PolynomialDegree
 }
 
 // roundForm returns the evaluator of a cylinder (inner radius 0) or tube, nil if there is none.
@@ -122,6 +131,9 @@ func sphereForm(inner, outer float64, p field.Polarization) (field.Source, error
 		return element.NewAffineSphere(inner, outer, q)
 	case field.CentralPower:
 		return element.NewCentralPower(inner, outer, q.Coefficient, q.Power)
+	}
+	if q, ok := lowPolynomial(p); ok {
+		return element.NewPolynomialSphere(inner, outer, q)
 	}
 	return nil, nil
 }

@@ -16,7 +16,7 @@ type spherical interface {
 }
 
 // between evaluates a spherical source at a point, with the limits on both of its spheres.
-func between(s spherical, inner, outer float64, p field.Point, side field.Side) field.Value {
+func between[S spherical](s S, inner, outer float64, p field.Point, side field.Side) field.Value {
 	x := p.X.Value()
 	n, r := direction(x)
 	bounds := cube(outer)

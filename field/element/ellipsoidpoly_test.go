@@ -1,0 +1,193 @@
+package element
+
+import (
+	"encoding/json"
+	"math"
+	"math/rand/v2"
+	"os"
+	"slices"
+	"testing"
+
+	"example.com/boundpole/field"
+	"example.com/boundpole/geom"
+	"example.com/boundpole/geom/gauss"
+	"gonum.org/v1/gonum/spatial/r3"
+)
+
+// peakOf returns the largest of p on an ellipsoid, of 2000 places.
+func peakOf(p field.Polarization, axes r3.Vec) float64 {
+	rng, peak := rand.New(rand.NewPCG(1, 1)), 0.0
+	for range 2000 {
+		n := unit(rng)
+		peak = max(peak, r3.Norm(p.At(r3.Vec{X: axes.X * n.X, Y: axes.Y * n.Y, Z: axes.Z * n.Z})))
+	}
+	return peak
+}
+
+// TestPolynomialEllipsoid holds potential, field and estimates against 25 digits (testdata/ellipsoidpoly.py).
+func TestPolynomialEllipsoid(t *testing.T) {
+	data, err := os.ReadFile("testdata/ellipsoidpoly.json")
+	if err != nil {
+		t.Fatal(err)
+	}
+	var cases []struct {
+		ID     string
+		Axes   [3]float64
+		P      [][3]json.RawMessage
+		Points [][3]float64
+		Phi    []string
+		G      [][3]string
+	}
+	if err := json.Unmarshal(data, &cases); err != nil {
+		t.Fatal(err)
+	}
+	const tol = 1e-12 // the aim of the contract: 1000 roundings of what 1e-3 of the scale may be the rest of
+	var over []float64
+	claims, short := 0, 0
+	for _, c := range cases {
+		var p field.Polynomial
+		for _, raw := range c.P {
+			var term field.Term
+			for k, into := range []any{&term.Component, &term.Coefficient, &term.Powers} {
+				if err := json.Unmarshal(raw[k], into); err != nil {
+					t.Fatal(err)
+				}
+			}
+			p = append(p, term)
+		}
+		e := must(NewPolynomialEllipsoid(geom.Ellipsoid{SemiAxes: vec(c.Axes)}, p))
+		size, peak := slices.Max(c.Axes[:]), peakOf(p, vec(c.Axes))
+		worstPhi, worstG := 0.0, 0.0
+		for i := range c.Points {
+			v := at(e, vec(c.Points[i]), field.Mean)
+			q := min(1, size/r3.Norm(vec(c.Points[i])))
+			ePhi, phi := minus(t, v.Phi, c.Phi[i])
+			eG, g := offBy(t, v.G, c.G[i])
+			ePhi, phi = math.Abs(ePhi), math.Abs(phi)
+			rPhi := ePhi / max(phi, 1e-3*peak*size*q*q)
+			rG := eG / max(g, 1e-3*peak*q*q*q)
+			worstPhi, worstG = max(worstPhi, rPhi), max(worstG, rG)
+			if !(rPhi <= tol && rG <= tol) || v.Status != field.Regular {
+				t.Errorf("%s point %d %v: phi %v, want %s, error %.2g; g %v, want %v, error %.2g; tolerance %g; %v", c.ID, i, c.Points[i],
+					v.Phi, c.Phi[i], rPhi, v.G, c.G[i], rG, tol, v.Status)
+			}
+			over = append(over, v.ErrPhi/max(ePhi, u*phi), v.ErrG/max(eG, u*g))
+			claims += 2
+			if ePhi > v.ErrPhi {
+				short++
+				t.Logf("%s point %d: phi off by %.3g, estimate %.3g", c.ID, i, ePhi, v.ErrPhi)
+			}
+			if eG > v.ErrG {
+				short++
+				t.Logf("%s point %d: g off by %.3g, estimate %.3g", c.ID, i, eG, v.ErrG)
+			}
+		}
+		t.Logf("%-16s worst phi %.2g, g %.2g", c.ID, worstPhi, worstG)
+	}
+	slices.Sort(over)
+	if median := over[len(over)/2]; short > 0 || median > 100 { // the contract on estimates
+		t.Errorf("%d of %d estimates too small, median overestimate %.3g", short, claims, median)
+	} else {
+		t.Logf("%d estimates hold, median overestimate %.3g", claims, median)
+	}
+}
+
+// randomPolynomial returns a polynomial with terms of degree n and below.
+func randomPolynomial(rng *rand.Rand, n, terms int) (p field.Polynomial) {
+	for range terms {
+		t := field.Term{Component: rng.IntN(3), Coefficient: 2*rng.Float64() - 1}
+		for range rng.IntN(n + 1) {
+			t.Powers[rng.IntN(3)]++
+		}
+		p = append(p, t)
+	}
+	return p
+}
+
+// TestPolynomialRule checks that twice as many nodes change nothing that the estimates do not cover.
+func TestPolynomialRule(t *testing.T) {
+	rng := rand.New(rand.NewPCG(3, 4))
+	for _, degree := range []int{2, 6, 12, PolynomialDegree} {
+		for _, axes := range []r3.Vec{{X: 1, Y: 1, Z: 1}, {X: 1, Y: 0.75, Z: 0.5}, {X: 1, Y: 0.01, Z: 0.5}, {X: 0.01, Y: 0.01, Z: 1}, {X: 1, Y: 1, Z: 1e-4}} {
+			for range 3 {
+				p := randomPolynomial(rng, degree, 4)
+				p = append(p, field.Term{Component: rng.IntN(3), Coefficient: 1, Powers: [3]int{0, 0, degree}}, field.Term{Coefficient: 1, Powers: [3]int{degree, 0, 0}})
+				e := must(NewPolynomialEllipsoid(geom.Ellipsoid{SemiAxes: axes}, p))
+				fine := *e
+				fine.nodes, fine.weights = gauss.On(2*len(e.nodes), 0, 1)
+				fine.inner = fine.interior()
+				for range 12 {
+					n := unit(rng)
+					x := r3.Scale(0.2+math.Exp2(4*rng.Float64()-2), r3.Vec{X: axes.X * n.X, Y: axes.Y * n.Y, Z: axes.Z * n.Z})
+					within(t, "twice the nodes", x, at(e, x, field.Mean), at(&fine, x, field.Mean))
+				}
+			}
+		}
+	}
+}
+
+// within checks that two values differ by no more than their estimates.
+func within(t *testing.T, name string, x r3.Vec, got, want field.Value) {
+	t.Helper()
+	phi, g, grad := apart(got, want)
+	if !(phi <= got.ErrPhi+want.ErrPhi && g <= got.ErrG+want.ErrG && grad <= got.ErrGrad+want.ErrGrad) || got.Status != want.Status {
+		t.Errorf("%s at %v: off by %.2g, %.2g, %.2g, claimed %.2g, %.2g, %.2g; got %v, want %v", name, x, phi, g, grad,
+			got.ErrPhi+want.ErrPhi, got.ErrG+want.ErrG, got.ErrGrad+want.ErrGrad, got, want)
+	}
+}
+
+// TestPolynomialIsAffine holds polynomials of degree 1 against the affine form, gradient and sides included.
+func TestPolynomialIsAffine(t *testing.T) {
+	p := field.Polynomial{{Component: 0, Coefficient: 0.5, Powers: [3]int{1, 0, 0}}, {Component: 0, Coefficient: -1.25, Powers: [3]int{0, 1, 0}},
+		{Component: 2, Coefficient: 2, Powers: [3]int{1, 0, 0}}, {Component: 1, Coefficient: 0.75, Powers: [3]int{0, 0, 1}}, {Component: 2, Coefficient: 1.5},
+		{Component: 2, Coefficient: -0.75, Powers: [3]int{0, 0, 1}}, {Component: 1, Coefficient: 0.25}}
+	affine := field.Affine{Value: p.At(r3.Vec{}), Gradient: [3][3]float64{{0.5, -1.25, 0}, {0, 0, 0.75}, {2, 0, -0.75}}}
+	rng := rand.New(rand.NewPCG(9, 10))
+	for _, axes := range []r3.Vec{{X: 1.25, Y: 1.25, Z: 1.25}, {X: 0.75, Y: 3, Z: 2}, {X: 1, Y: 1, Z: 0.01}, {X: 0.02, Y: 0.01, Z: 1}, {X: 1e-9, Y: 3e-9, Z: 2e-9}} {
+		shape := geom.Ellipsoid{SemiAxes: axes}
+		a, b := must(NewPolynomialEllipsoid(shape, p)), must(NewAffineEllipsoid(shape, affine))
+		for range 300 {
+			n := unit(rng)
+			x := r3.Vec{X: axes.X * n.X, Y: axes.Y * n.Y, Z: axes.Z * n.Z}
+			switch rng.IntN(3) {
+			case 0:
+				x = r3.Scale(rng.Float64(), x)
+			case 1:
+				x = r3.Scale(1+math.Exp2(80*rng.Float64()-40), x)
+			}
+			for _, side := range []field.Side{field.Mean, field.Inside, field.Outside} {
+				within(t, "affine", x, at(a, x, side), at(b, x, side))
+			}
+		}
+	}
+}
+
+func BenchmarkPolynomialEllipsoid(b *testing.B) {
+	rng := rand.New(rand.NewPCG(3, 4))
+	axial := field.Polynomial{{Component: 2, Coefficient: 1, Powers: [3]int{0, 0, 8}}}
+	for _, c := range []struct {
+		name string
+		p    field.Polynomial
+	}{{"cubic", randomPolynomial(rng, 3, 8)}, {"axial 8", axial}, {"dense 12", randomPolynomial(rng, 12, 2000)}} {
+		flat := must(NewPolynomialEllipsoid(geom.Ellipsoid{SemiAxes: r3.Vec{X: 1, Y: 0.5, Z: 0.01}}, c.p))
+		shell := must(NewPolynomialSphere(0.5, 1, c.p))
+		for _, w := range []struct {
+			name string
+			src  field.Evaluator
+			x    r3.Vec
+			want field.Want
+		}{
+			{"flat inside", flat, r3.Vec{X: 0.25}, everyWant}, {"flat outside", flat, r3.Vec{X: 0.25, Z: 0.01}, everyWant},
+			{"flat outside g", flat, r3.Vec{X: 0.25, Z: 0.01}, field.WantG},
+			{"shell wall", shell, r3.Vec{X: 0.5, Z: 0.375}, everyWant}, {"shell outside", shell, r3.Vec{X: 1, Z: 1}, everyWant},
+		} {
+			b.Run(c.name+"/"+w.name, func(b *testing.B) {
+				at, dst := field.PointsOf(w.x), field.NewValues(1, w.want)
+				b.ReportAllocs()
+				for b.Loop() {
+					w.src.Evaluate(dst, at, field.Mean)
+				}
+			})
+		}
+	}
+}
