@@ -206,7 +206,7 @@ func TestAxis(t *testing.T) {
 	for _, along := range []float64{0.02, 5} {
 		m := response.Material{Chi: 0.1, Axis: r3.Vec{Z: 2}, Along: along, Fixed: field.Uniform{P: r3.Vec{Y: 1, Z: 1}}}
 		g := r3.Vec{X: 1, Y: -0.5, Z: 2} // in the frame of the body
-		r := solve(t, s, response.Uniform{G: pose.VectorToOuter(g)}, m)
+		r := solve(t, s, field.Constant{G: pose.VectorToOuter(g)}, m)
 		want := r3.Vec{X: m.Chi * g.X / (1 + n.X*m.Chi), Y: (1 + m.Chi*g.Y) / (1 + n.Y*m.Chi), Z: (1 + along*g.Z) / (1 + n.Z*along)}
 		got := r.Moment(0)
 		if d := r3.Norm(r3.Sub(pose.VectorToLocal(got.Value), r3.Scale(e.Volume(), want))); d > 1e-5*r3.Norm(got.Value) || d > got.Estimate { // order 6
@@ -217,7 +217,7 @@ func TestAxis(t *testing.T) {
 
 func TestReciprocity(t *testing.T) {
 	s := prepare(t, &response.Settings{Order: 6}, geom.Cylinder{Radius: 1, Height: 1}, geom.At(geom.Sphere{Radius: 0.5}, geom.Translate(r3.Vec{X: 1, Z: 1.4})))
-	a, b := response.Uniform{G: r3.Vec{X: 1, Z: 1}}, element.Point{At: r3.Vec{X: -2, Y: 1}, Charge: 3}
+	a, b := field.Constant{G: r3.Vec{X: 1, Z: 1}}, element.Point{At: r3.Vec{X: -2, Y: 1}, Charge: 3}
 	ab, ba, err := s.Reciprocity(context.Background(), []response.Material{{Chi: 20}, {Chi: -0.7}}, a, b)
 	if err != nil {
 		t.Fatal(err)
@@ -325,7 +325,7 @@ func TestCylindricalShield(t *testing.T) {
 	}
 	tube := geom.Tube{Inner: 0.9, Outer: 1, Height: 24}
 	s := prepare(t, &response.Settings{Order: 4}, tube)
-	r := solve(t, s, response.Uniform{G: r3.Vec{X: 1}}, response.Material{Chi: 49})
+	r := solve(t, s, field.Constant{G: r3.Vec{X: 1}}, response.Material{Chi: 49})
 	v := field.At(r, r3.Vec{}, field.Mean, field.WantG|field.WantErr)
 	judge(t, "ratio", response.Value{Value: 1 + v.G.X, Estimate: v.ErrG}, closedform.CylindricalShieldRatio(50, 0.9, 1), 1, 1e-3, 1e-3) // the ends
 }
@@ -353,7 +353,7 @@ func TestMesh(t *testing.T) {
 // TestLaws checks the result as a source: nothing of it is taken for granted.
 func TestLaws(t *testing.T) {
 	body := geom.Cylinder{Radius: 1, Height: 1}
-	r := solve(t, prepare(t, &response.Settings{Order: 6}, body), response.Uniform{G: r3.Vec{X: 0.3, Z: 1}}, response.Material{Chi: 5})
+	r := solve(t, prepare(t, &response.Settings{Order: 6}, body), field.Constant{G: r3.Vec{X: 0.3, Z: 1}}, response.Material{Chi: 5})
 	m := r.Moment(0).Value
 	clear := func(x r3.Vec) float64 {
 		_, d := geom.Nearest(body, x)
@@ -367,7 +367,7 @@ func TestLaws(t *testing.T) {
 
 // TestEstimate holds the estimates of the default mesh against a finer one.
 func TestEstimate(t *testing.T) {
-	app := response.Uniform{G: r3.Vec{X: 0.5, Z: 1}}
+	app := field.Constant{G: r3.Vec{X: 0.5, Z: 1}}
 	for _, body := range []geom.Body{geom.Sphere{Radius: 1}, geom.Box{Size: r3.Vec{X: 1, Y: 1, Z: 1}}} {
 		coarse, fine := prepare(t, &response.Settings{Order: 7}, body), prepare(t, &response.Settings{Order: 9}, body)
 		for _, chi := range []float64{-1, 10} {

@@ -14,7 +14,7 @@ import (
 
 var (
 	inf = math.Inf(1)
-	up  = response.Uniform{G: r3.Vec{Z: 1}}
+	up  = field.Constant{G: r3.Vec{Z: 1}}
 )
 
 func prepare(t *testing.T, set *response.Settings, bodies ...geom.Body) *response.System {
@@ -125,7 +125,7 @@ func TestEllipsoid(t *testing.T) {
 			d r3.Vec
 			n float64
 		}{{r3.Vec{X: 1}, n.X}, {r3.Vec{Z: 1}, n.Z}} {
-			r := solve(t, s, response.Uniform{G: c.d}, response.Material{Chi: chi})
+			r := solve(t, s, field.Constant{G: c.d}, response.Material{Chi: chi})
 			want := polarizability(c.n, chi) * e.Volume()
 			judge(t, "moment", along(r.Moment(0), c.d), want, math.Abs(want), 1e-6, 0) // 1e-6 is the bar; 8e-10 measured with the default order
 			v := field.At(r, r3.Vec{X: 0.2, Y: -0.5, Z: 1}, field.Mean, field.WantG|field.WantErr)
