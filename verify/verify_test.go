@@ -219,7 +219,7 @@ func TestWrongEstimatesFail(t *testing.T) {
 			}
 		}
 	}
-	for column, least := range map[string]int{"phi true": 24, "g over": 21, "worst": 24} { // three samples are too small for a median
+	for column, least := range map[string]int{"phi true": 24, "g over": 14, "worst": 24} { // the samples of what is integrated are too small for a median
 		if found[column] < least {
 			t.Errorf("%d cases named %s, want at least %d", found[column], column, least)
 		}

@@ -17,7 +17,7 @@ import (
 // TestEstimates holds estimates against closed forms at 3000 random points, most of them close to faces, rims, seams and tips.
 func TestEstimates(t *testing.T) {
 	rng := rand.New(rand.NewPCG(7, 8))
-	few, many := 200, 1300
+	few, many := 100, 700
 	if testing.Short() {
 		few, many = 50, 150
 	}

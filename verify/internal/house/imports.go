@@ -12,6 +12,7 @@ var stages = []string{
 	"geom/pair",
 	"geom/gauss",
 	"geom",
+	"geom/panel",
 	"field/internal/...",
 	"field",
 	"field/element",
