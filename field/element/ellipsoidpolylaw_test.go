@@ -55,3 +55,30 @@ func TestPolynomialLaws(t *testing.T) {
 		}
 	}
 }
+
+// TestPolynomialGradient holds the gradient against differences of g.
+func TestPolynomialGradient(t *testing.T) {
+	for _, axes := range []r3.Vec{{X: 1, Y: 0.75, Z: 0.5}, {X: 0.5, Y: 1, Z: 0.125}, {X: 1, Y: 1, Z: 1}} {
+		src, err := element.NewPolynomialEllipsoid(geom.Ellipsoid{SemiAxes: axes}, bent)
+		if err != nil {
+			t.Fatal(err)
+		}
+		const h = 0x1p-13
+		order := [6][2]int{{0, 0}, {1, 1}, {2, 2}, {0, 1}, {0, 2}, {1, 2}}
+		for _, x := range []r3.Vec{{X: 0.25, Y: 0.375, Z: -0.0625}, {X: 0.75, Y: -0.75, Z: 0.5}, {X: -0.5, Y: 1.25, Z: 0.25}, {Z: 1.5}, {X: 3, Y: -2, Z: 1}} {
+			v := field.At(src, x, field.Mean, field.WantGrad)
+			for k, ij := range order {
+				e := [3]r3.Vec{{X: h}, {Y: h}, {Z: h}}[ij[1]]
+				g := func(s float64) float64 {
+					w := src.Field(r3.Add(x, r3.Scale(s, e)))
+					return [3]float64{w.X, w.Y, w.Z}[ij[0]]
+				}
+				want := (8*(g(1)-g(-1)) - (g(2) - g(-2))) / (12 * h)
+				const tol = 1e-11 // fourth order: h^4 = 2e-16 times fifth derivatives; rounding u/h = 1e-12
+				if math.Abs(v.Grad[k]-want) > tol {
+					t.Errorf("axes %v at %v: gradient %d is %v, differences %v", axes, x, k, v.Grad[k], want)
+				}
+			}
+		}
+	}
+}
