@@ -18,8 +18,8 @@ import (
 // Singular: nowhere. On the surface (geom.OnTolerance) g jumps by (p.n) n; the gradient has no claim there.
 // Accuracy: |error of g| <= 1e-12 max(|g|, 1e-3 g0), |error of phi| <= 1e-12 max(|phi|, 1e-3 phi0), with a the longest
 // semi-axis, q = min(1, a/|x|), p the largest polarization, g0 = p q^3, phi0 = p a q^2, for axis ratios to 100 and as long as the
-// terms of p are not much larger than their sum (worst 3.3e-15 and 1.5e-15 of 43 points, TestPolynomialEllipsoid); else as its estimates say, with status NotConverged
-// where they are above 1e-10 of g0 and phi0.
+// terms of p are not much larger than their sum (worst 3.3e-15 and 1.5e-15 of 43 points, TestPolynomialEllipsoid); else as its
+// estimates say, with status NotConverged where they are above 1e-10 of g0 and phi0.
 // Source: [Dyson1891]. With a_i the semi-axes, A_i = a_i^2 + s, al_i = a_i^2/A_i, D = sqrt(A_1 A_2 A_3), U = 1 - sum x_i^2/A_i and
 // lambda the s with U = 0 (0 inside), density f has
 //

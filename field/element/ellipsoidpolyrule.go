@@ -134,9 +134,9 @@ func (o *confocalPoly) absolute(n *polyNode) {
 // surfaceSlope returns the bracket of addSurface, or with minus = -1 the sizes of its terms from those of v.
 func (o *confocalPoly) surfaceSlope(v *polyJet, n *polyNode, minus float64) (full [3][3]float64) {
 	axes, y := &o.base.axes, o.steep
-	var along, sum, square float64
+	var turned, sum, square float64
 	for i := range 3 {
-		along += 0.5 * v.d[i] * axes[i] * o.s[i] * o.w[i]
+		turned += 0.5 * v.d[i] * axes[i] * o.s[i] * o.w[i]
 		sum += o.w[i]
 		square += o.w[i] * o.s[i] * o.s[i]
 	}
@@ -144,7 +144,7 @@ func (o *confocalPoly) surfaceSlope(v *polyJet, n *polyNode, minus float64) (ful
 	for i := range 3 {
 		slope := (n.alpha[i]*v.d[i] - minus*2*n.eta[i]*v.d[3]) / axes[i]
 		for j := range 3 {
-			dE := 0.5*v.d[j]*axes[j]*o.w[j] - minus*2*o.s[j]*along
+			dE := 0.5*v.d[j]*axes[j]*o.w[j] - minus*2*o.s[j]*turned
 			f := o.s[j]*slope/(2*y) + o.s[i]*(dE-minus*sum*o.s[j]*value)/y
 			f -= minus * 2 * value / y * o.s[i] * o.s[j] * (o.w[i] + o.w[j] - minus*2*square)
 			if i == j {
