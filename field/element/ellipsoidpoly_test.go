@@ -223,6 +223,33 @@ func TestPolynomialFar(t *testing.T) {
 	}
 }
 
+// TestPolynomialJudged holds Chebyshev's polynomial of degree 20, whose terms are 2e7 times its size: the estimates are above the
+// contract and the status says so, whatever is asked for, on the surface too.
+func TestPolynomialJudged(t *testing.T) {
+	var p field.Polynomial
+	c := 0x1p19 // T_n = sum c_k z^(n-2k), c_(k+1)/c_k = -(n-2k)(n-2k-1)/(4 (k+1)(n-k-1))
+	for k := 0; 2*k <= 20; k++ {
+		p = append(p, field.Term{Component: 2, Coefficient: c, Powers: [3]int{0, 0, 20 - 2*k}})
+		c *= -float64((20-2*k)*(19-2*k)) / float64(4*(k+1)*(19-k))
+	}
+	ball := must(NewPolynomialEllipsoid(geom.Ellipsoid{SemiAxes: r3.Vec{X: 1, Y: 1, Z: 1}}, p))
+	general := *ball
+	general.round = polyTable{}
+	shell := must(NewPolynomialSphere(0.5, 1, p))
+	for _, x := range []r3.Vec{{Z: 1}, {Z: 0.96875}, {X: 0.25, Z: 1}, {X: 0.25}, {X: 8, Z: 1}} {
+		for _, src := range []field.Source{ball, shell} {
+			for _, want := range []field.Want{everyWant, field.WantG} {
+				if v := field.At(src, x, field.Mean, want); v.Status != field.NotConverged {
+					t.Errorf("%T at %v: status %v, want not converged; estimate of g %.2g", src, x, v.Status, v.ErrG)
+				}
+			}
+		}
+		if x != (r3.Vec{Z: 1}) { // there is no gradient
+			within(t, "Chebyshev", x, at(ball, x, field.Mean), at(&general, x, field.Mean))
+		}
+	}
+}
+
 func TestPolynomialRefuses(t *testing.T) {
 	ball := geom.Ellipsoid{SemiAxes: r3.Vec{X: 1, Y: 1, Z: 1}}
 	for name, p := range map[string]field.Polynomial{
