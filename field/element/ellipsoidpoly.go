@@ -18,7 +18,8 @@ import (
 // Singular: nowhere. On the surface (geom.OnTolerance) g jumps by (p.n) n; the gradient has no claim there.
 // Accuracy: |error of g| <= 1e-12 max(|g|, 1e-3 g0), |error of phi| <= 1e-12 max(|phi|, 1e-3 phi0), with a the longest
 // semi-axis, q = min(1, a/|x|), p the largest polarization, g0 = p q^3, phi0 = p a q^2, for axis ratios to 100 and as long as the
-// terms of p are not much larger than their sum (TestPolynomialEllipsoid); else as its estimates say.
+// terms of p are not much larger than their sum (worst 3.3e-15 and 1.5e-15 of 43 points, TestPolynomialEllipsoid); else as its
+// estimates say, with status NotConverged where they are above 1e-10 of g0 and phi0.
 // Source: [Dyson1891]. With a_i the semi-axes, A_i = a_i^2 + s, al_i = a_i^2/A_i, D = sqrt(A_1 A_2 A_3), U = 1 - sum x_i^2/A_i and
 // lambda the s with U = 0 (0 inside), density f has
 //
@@ -33,7 +34,8 @@ type PolynomialEllipsoid struct {
 	round    polyTable  // phi outside if this is a sphere
 	dipole   r3.Vec     // the mean polarization
 	rounding float64    // bound on the relative error of a term
-	nodes    []float64  // of the rule of one panel, on 0..1
+	scale    polyScale
+	nodes    []float64 // of the rule of one panel, on 0..1
 	weights  []float64
 }
 
@@ -71,6 +73,7 @@ func NewPolynomialEllipsoid(shape geom.Ellipsoid, p field.Polynomial) (*Polynomi
 		return nil, fmt.Errorf("element: polarization of the ellipsoid overflows; give coefficients that times powers of the semi-axes %v "+
 			"are finite", shape.SemiAxes)
 	}
+	e.scale = e.scaleOf(scaled)
 	return e, nil
 }
 
@@ -122,7 +125,13 @@ func (e *PolynomialEllipsoid) Evaluate(dst *field.Values, at *field.Points, side
 func (e *PolynomialEllipsoid) Bounds() r3.Box { return e.base.Bounds() }
 
 func (e *PolynomialEllipsoid) value(p field.Point, want field.Want, side field.Side) field.Value {
+	if e.scale.weak {
+		want |= field.WantErr
+	}
 	x := p.X.Scale(pair.Of(1 / e.base.unit))
+	if _, r := direction(x.Value()); r > ellipsoidFar { // where locate is good no more
+		return e.outside(x, false, want)
+	}
 	switch e.base.locate(x, p) {
 	case geom.Inside:
 		return e.inside(x, want)
@@ -140,7 +149,7 @@ func (e *PolynomialEllipsoid) inside(x pair.Vec, want field.Want) field.Value {
 	}
 	var s polySum
 	s.add(&e.inner, &n, &e.base.axes, 1, want)
-	return e.finish(&s, want)
+	return e.finish(&s, r3.Norm(x.Value()), want)
 }
 
 // polyFar is the distance, in units, beyond which the ellipsoid is a dipole: the quadrupole is less than u/64 of the natural scale.
@@ -160,7 +169,7 @@ func (e *PolynomialEllipsoid) outside(x pair.Vec, surface bool, want field.Want)
 	if len(e.round.groups) > 0 && r < seriesReach*b.axes[0] {
 		e.seriesNode(&[3]float64{x.X.Value(), x.Y.Value(), x.Z.Value()}, &place)
 		s.add(&e.round, &place, &b.axes, 1, want)
-		return e.finish(&s, want)
+		return e.finish(&s, r, want)
 	}
 	lambda := 0.0
 	if !surface {
@@ -172,23 +181,24 @@ func (e *PolynomialEllipsoid) outside(x pair.Vec, surface bool, want field.Want)
 		s.add(&e.outer, &place, &b.axes, w, want)
 	})
 	e.addSurface(&s, &o, want)
-	return e.finish(&s, want)
+	return e.finish(&s, r, want)
 }
 
 // polyRounding is the number of units of rounding allowed a term, of its powers and of the integral, for a polarization of some
 // degree. Free; held by TestPolynomialEllipsoid.
-func polyRounding(degree int) float64 { return float64(16 + 2*degree) }
+func polyRounding(degree int) float64 { return float64(24 + 2*degree) }
 
-// finish returns the value of the sums.
-func (e *PolynomialEllipsoid) finish(s *polySum, want field.Want) field.Value {
+// finish returns the value of the sums at distance r, in units.
+func (e *PolynomialEllipsoid) finish(s *polySum, r float64, want field.Want) field.Value {
 	v := field.Value{Phi: s.phi, G: r3.Vec{X: s.g[0], Y: s.g[1], Z: s.g[2]}, Grad: s.grad}
 	if want&field.WantErr != 0 {
 		d := s.gSize
 		v.ErrPhi = e.rounding * s.phiSize
 		v.ErrG = e.rounding * math.Sqrt(d[0]*d[0]+d[1]*d[1]+d[2]*d[2])
-		v.ErrGrad = 2 * e.rounding * s.gradSize
+		v.ErrGrad = e.rounding * s.gradSize
 	}
 	scaleLength(&v, e.base.unit)
+	e.judge(&v, r)
 	return v
 }
 

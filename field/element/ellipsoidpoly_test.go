@@ -162,6 +162,125 @@ func TestPolynomialIsAffine(t *testing.T) {
 	}
 }
 
+// TestPolynomialSeries holds the series of a sphere against the integral that serves ellipsoids, out to where that takes over.
+func TestPolynomialSeries(t *testing.T) {
+	rng := rand.New(rand.NewPCG(13, 14))
+	for _, degree := range []int{2, 5, 12, PolynomialDegree} {
+		e := must(NewPolynomialEllipsoid(geom.Ellipsoid{SemiAxes: r3.Vec{X: 1.5, Y: 1.5, Z: 1.5}}, randomPolynomial(rng, degree, 30)))
+		general := *e
+		general.round = polyTable{}
+		for range 100 {
+			x := r3.Scale(1.5*math.Exp2(10*rng.Float64()), unit(rng))
+			within(t, "sphere", x, at(e, x, field.Mean), at(&general, x, field.Mean))
+		}
+	}
+}
+
+// TestPolynomialSphere holds hollow and full spheres against the closed form of central powers, and the outside against none.
+func TestPolynomialSphere(t *testing.T) {
+	cube := field.Polynomial{} // r^2 x
+	for i := range 3 {
+		for j := range 3 {
+			term := field.Term{Component: i, Coefficient: 0.7}
+			term.Powers[i]++
+			term.Powers[j] += 2
+			cube = append(cube, term)
+		}
+	}
+	rng := rand.New(rand.NewPCG(15, 16))
+	for _, inner := range []float64{0, 0.5, 1.2, 1.25 * (1 - 1e-9)} {
+		a, b := must(NewPolynomialSphere(inner, 1.25, cube)), must(NewCentralPower(inner, 1.25, 0.7, 3))
+		for range 500 {
+			x := r3.Scale(inner+(1.25-inner)*(2*rng.Float64()-0.5), unit(rng))
+			if rng.IntN(3) == 0 {
+				x = r3.Scale([]float64{inner, 1.25}[rng.IntN(2)]*(1+math.Exp2(-50*rng.Float64())), unit(rng))
+			}
+			for _, side := range []field.Side{field.Mean, field.Inside, field.Outside} {
+				got, want := at(a, x, side), at(b, x, side)
+				move := 2 * u * 1.25 * 3 * 0.7 * 1.25 * 1.25 // dp/dr times the rounding of the radius
+				want.ErrG, want.ErrPhi = want.ErrG+move, want.ErrPhi+2*move
+				within(t, "central power", x, got, want)
+			}
+		}
+	}
+}
+
+// TestPolynomialFar checks that the dipole takes over without a step, where there is one.
+func TestPolynomialFar(t *testing.T) {
+	p := field.Polynomial{{Component: 0, Coefficient: 1, Powers: [3]int{2, 0, 0}}, {Component: 2, Coefficient: 0.5, Powers: [3]int{0, 2, 4}}}
+	for _, axes := range []r3.Vec{{X: 1, Y: 0.25, Z: 0.5}, {X: 1, Y: 1, Z: 1}} {
+		e := must(NewPolynomialEllipsoid(geom.Ellipsoid{SemiAxes: axes}, p))
+		n := r3.Unit(r3.Vec{X: 1, Y: -2, Z: 0.5})
+		near := at(e, r3.Scale(2*polyFar*(1-0x1p-40), n), field.Mean)
+		far := at(e, r3.Scale(2*polyFar*(1+0x1p-40), n), field.Mean)
+		const tol = 0x1p-36 // the points differ by 2^-39, the field falls like R^-3
+		if d := r3.Norm(r3.Sub(near.G, far.G)); !(d <= tol*r3.Norm(far.G)) || far.Phi == 0 {
+			t.Errorf("axes %v: g steps from %v to %v", axes, near.G, far.G)
+		}
+		if d := math.Abs(near.Phi - far.Phi); !(d <= tol*math.Abs(far.Phi)) {
+			t.Errorf("axes %v: phi steps from %v to %v", axes, near.Phi, far.Phi)
+		}
+	}
+}
+
+// TestPolynomialJudged holds Chebyshev's polynomial of degree 20, whose terms are 2e7 times its size: the estimates are above the
+// contract and the status says so, whatever is asked for, on the surface too.
+func TestPolynomialJudged(t *testing.T) {
+	var p field.Polynomial
+	c := 0x1p19 // T_n = sum c_k z^(n-2k), c_(k+1)/c_k = -(n-2k)(n-2k-1)/(4 (k+1)(n-k-1))
+	for k := 0; 2*k <= 20; k++ {
+		p = append(p, field.Term{Component: 2, Coefficient: c, Powers: [3]int{0, 0, 20 - 2*k}})
+		c *= -float64((20-2*k)*(19-2*k)) / float64(4*(k+1)*(19-k))
+	}
+	ball := must(NewPolynomialEllipsoid(geom.Ellipsoid{SemiAxes: r3.Vec{X: 1, Y: 1, Z: 1}}, p))
+	general := *ball
+	general.round = polyTable{}
+	shell := must(NewPolynomialSphere(0.5, 1, p))
+	for _, x := range []r3.Vec{{Z: 1}, {Z: 0.96875}, {X: 0.25, Z: 1}, {X: 0.25}, {X: 8, Z: 1}} {
+		for _, src := range []field.Source{ball, shell} {
+			for _, want := range []field.Want{everyWant, field.WantG} {
+				if v := field.At(src, x, field.Mean, want); v.Status != field.NotConverged {
+					t.Errorf("%T at %v: status %v, want not converged; estimate of g %.2g", src, x, v.Status, v.ErrG)
+				}
+			}
+		}
+		if x != (r3.Vec{Z: 1}) { // there is no gradient
+			within(t, "Chebyshev", x, at(ball, x, field.Mean), at(&general, x, field.Mean))
+		}
+	}
+}
+
+func TestPolynomialRefuses(t *testing.T) {
+	ball := geom.Ellipsoid{SemiAxes: r3.Vec{X: 1, Y: 1, Z: 1}}
+	for name, p := range map[string]field.Polynomial{
+		"degree": {{Powers: [3]int{PolynomialDegree, 1, 0}, Coefficient: 1}}, "not finite": {{Coefficient: math.NaN()}},
+		"component": {{Component: 3}}, "overflow": {{Coefficient: 1e308, Powers: [3]int{2, 0, 0}}, {Coefficient: 1e308, Powers: [3]int{2, 0, 0}}},
+	} {
+		if _, err := NewPolynomialEllipsoid(ball, p); err == nil {
+			t.Errorf("%s: taken, want an error", name)
+		}
+	}
+	if _, err := NewPolynomialEllipsoid(geom.Ellipsoid{}, nil); err == nil {
+		t.Error("an ellipsoid without size was taken, want an error")
+	}
+	for _, r := range [][2]float64{{1, 1}, {-1, 1}, {0, math.Inf(1)}, {math.NaN(), 1}} {
+		if _, err := NewPolynomialSphere(r[0], r[1], nil); err == nil {
+			t.Errorf("radii %v were taken, want an error", r)
+		}
+	}
+}
+
+// TestPolynomialAllocates nothing.
+func TestPolynomialAllocates(t *testing.T) {
+	p := field.Polynomial{{Component: 1, Coefficient: 1, Powers: [3]int{2, 1, 0}}}
+	for _, src := range []field.Evaluator{must(NewPolynomialEllipsoid(geom.Ellipsoid{SemiAxes: r3.Vec{X: 1, Y: 2, Z: 3}}, p)), must(NewPolynomialSphere(0.5, 1, p))} {
+		at, dst := field.PointsOf(r3.Vec{X: 0.75}, r3.Vec{X: 4}), field.NewValues(2, everyWant)
+		if n := testing.AllocsPerRun(20, func() { src.Evaluate(dst, at, field.Mean) }); n > 0 {
+			t.Errorf("%T allocates %v times, want 0", src, n)
+		}
+	}
+}
+
 func BenchmarkPolynomialEllipsoid(b *testing.B) {
 	rng := rand.New(rand.NewPCG(3, 4))
 	axial := field.Polynomial{{Component: 2, Coefficient: 1, Powers: [3]int{0, 0, 8}}}

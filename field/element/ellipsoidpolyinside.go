@@ -28,7 +28,7 @@ func (e *PolynomialEllipsoid) interior() polyTable {
 	for i := range sums {
 		for j := range sums[i] {
 			for k, v := range sums[i][j] {
-				if v[1] > 0 {
+				if v[1] != 0 {
 					terms.put(plainKey([4]uint8{uint8(i), uint8(j), uint8(k)}), v[0], v[1])
 				}
 			}

@@ -57,6 +57,9 @@ func (s *PolynomialSphere) Evaluate(dst *field.Values, at *field.Points, side fi
 func (s *PolynomialSphere) Bounds() r3.Box { return cube(s.outer) }
 
 func (s *PolynomialSphere) value(p field.Point, want field.Want, side field.Side) field.Value {
+	if s.ball.scale.weak || s.hole != nil && s.hole.scale.weak {
+		want |= field.WantErr
+	}
 	return between(polynomialShell{s, p.X, want}, s.inner, s.outer, p, side)
 }
 
@@ -106,5 +109,6 @@ func less(a, b field.Value) field.Value {
 	a.ErrPhi += b.ErrPhi
 	a.ErrG += b.ErrG
 	a.ErrGrad += b.ErrGrad
+	a.Status = max(a.Status, b.Status)
 	return a
 }

@@ -15,7 +15,8 @@ const (
 )
 
 // polyNode is a place of a table. Its fourth variable z has the derivatives -2 slope e_i by x_i/a_i, and second ones
-// -2 slope al_i delta_ij + bend e_i e_j, and stands with powers higher by half than those of the table: for U in the integrand 1, 0, 0.
+// -2 slope al_i delta_ij + bend e_i e_j, and its powers are those of the table and half more. In the integrand z is U, slope 1, bend
+// and half 0.
 type polyNode struct {
 	alpha, beta, eta  [3]float64
 	over              float64 // z

@@ -252,6 +252,6 @@ func onFace(inside, outside field.Value, side field.Side) field.Value {
 		v.ErrPhi = max(inside.ErrPhi, outside.ErrPhi) + u*math.Abs(v.Phi)
 		v.ErrG = max(inside.ErrG, outside.ErrG) + 2*u*r3.Norm(v.G)
 	}
-	v.ErrGrad, v.Status = math.Inf(1), field.OnFace
+	v.ErrGrad, v.Status = math.Inf(1), max(field.OnFace, inside.Status, outside.Status)
 	return v
 }
