@@ -28,6 +28,9 @@ func answer(ctx context.Context, setup *solve.Setup, dir string, w io.Writer) (s
 		}
 		r.results = output.NewResults(setup, r.answers)
 	}
+	if err := setup.Respond(ctx); err != nil {
+		return wrong, err
+	}
 	charges := setup.Charges()
 	r.report.Charges(charges)
 	for i := range setup.Scene.Wanted {

@@ -23,6 +23,9 @@ func (r *runner) travel(q *scenefile.Request) error {
 		if err != nil {
 			return err
 		}
+		if err := at.Setup.Respond(r.ctx); err != nil {
+			return err
+		}
 		if r.results != nil {
 			r.results.OpenPosition(k, &at, t.Rotation != nil)
 		}

@@ -77,6 +77,10 @@ func (r *Report) sum(t *table, c *solve.PartCharge) {
 	q := quantitiesOf(p.Kind)
 	note := ""
 	switch {
+	case p.Responds():
+		x, y, z, _, u := vector(q.moment, c.Moment)
+		t.add(r.name(c.Part), value(q.charge, c.Total), "", "induced", x, y, z, u, "")
+		return
 	case p.Kind == solve.Charged:
 		note = "real charge"
 	case len(c.Checked) == 0:
@@ -94,6 +98,10 @@ func (r *Report) faces(t *table, c *solve.PartCharge) {
 	name := r.name(c.Part)
 	if p.Kind == solve.Inert {
 		t.add(name, "all", "", "", "0", "")
+		return
+	}
+	if p.Responds() {
+		t.add(name, "all", "", "induced", "", "")
 		return
 	}
 	for k, f := range c.Faces {

@@ -14,7 +14,7 @@ func (d *decoder) checkAsked(at uint32, r *Request) error {
 	case "reading":
 		return d.checkYields(at, "electric, magnetized or circulating", func(p *Part) bool { return p.carries() })
 	case "linkage":
-		return d.checkYields(at, "magnetized or circulating", func(p *Part) bool { return p.Magnetized != nil || p.Circulating != nil })
+		return d.checkYields(at, "magnetized or circulating", func(p *Part) bool { return p.magnetic() || p.Circulating != nil })
 	case "reach":
 		return d.checkYields(at, "magnetized", func(p *Part) bool { return p.Magnetized != nil })
 	case "hand_over":
@@ -35,8 +35,18 @@ func (d *decoder) checkAsked(at uint32, r *Request) error {
 
 // carries reports whether a part carries anything.
 func (p *Part) carries() bool {
-	return p.Polarized != nil || p.Magnetized != nil || p.Charged != nil || p.Circulating != nil
+	return p.Polarized != nil || p.Magnetized != nil || p.Charged != nil || p.Circulating != nil || p.responds()
 }
+
+// electric and magnetic report whether a part has to do with fields of the kind.
+func (p *Part) electric() bool {
+	return p.Polarized != nil || p.Charged != nil || p.Permittivity != nil
+}
+
+func (p *Part) magnetic() bool { return p.Magnetized != nil || p.Permeability != nil }
+
+// responds reports whether a part responds to the field.
+func (p *Part) responds() bool { return p.Permittivity != nil || p.Permeability != nil }
 
 // checkYields refuses a request for which no part of the scene is of the right kind.
 func (d *decoder) checkYields(at uint32, kinds string, right func(*Part) bool) error {
@@ -50,8 +60,7 @@ func (d *decoder) checkYields(at uint32, kinds string, right func(*Part) bool) e
 
 // checkHandOver holds the kind of charge against the scene, and fills it in where there is one only.
 func (d *decoder) checkHandOver(at uint32, r *Request) error {
-	electric := func(p *Part) bool { return p.Polarized != nil || p.Charged != nil }
-	magnetic := func(p *Part) bool { return p.Magnetized != nil }
+	electric, magnetic := (*Part).electric, (*Part).magnetic
 	e, m := d.checkYields(at, "polarized or charged", electric), d.checkYields(at, "magnetized", magnetic)
 	switch r.Charge {
 	case "electric":
@@ -169,6 +178,30 @@ func (d *decoder) checkLinkage(n uint32, l *Linkage) error {
 	if area == (r3.Vec{}) {
 		at, _ := d.member(n, "polygon")
 		return d.errorOn(at, "the coil encloses no area", "give corners in order round the coil")
+	}
+	return nil
+}
+
+// checkResponds refuses a response of what is no body, and one beside what it does not go with.
+func (d *decoder) checkResponds(n uint32, p *Part) error {
+	for _, c := range []struct {
+		key    string
+		value  *Relative
+		others bool // the part carries what is of another kind
+	}{
+		{"permittivity", p.Permittivity, p.Magnetized != nil || p.Circulating != nil},
+		{"permeability", p.Permeability, p.Polarized != nil || p.Circulating != nil},
+	} {
+		if c.value == nil {
+			continue
+		}
+		at, _ := d.member(n, c.key)
+		switch {
+		case p.Class != Body:
+			return d.errorOn(at-1, fmt.Sprintf("%s has no %s", article(p.Kind), c.key), "give it to a body")
+		case c.others || p.Permittivity != nil && p.Permeability != nil:
+			return d.errorOn(at-1, c.key+" beside what is of the other kind", "place two parts, one electric and one magnetic")
+		}
 	}
 	return nil
 }

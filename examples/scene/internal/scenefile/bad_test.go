@@ -24,6 +24,9 @@ func withLaw(law string) string {
 	return withPart(`{"name":"a","shape":"sphere","radius":1,` + law + `}`)
 }
 
+// withBare returns a scene with one part that carries nothing yet.
+func withBare(shape string) string { return withPart(`{"name":"a",` + shape + `}`) }
+
 // withTop returns a scene with further keys beside its parts.
 func withTop(keys string) string { return `{"parts":[` + ball + `],` + keys + `}` }
 
@@ -172,8 +175,11 @@ var badScenes = []struct {
 		"/parts/1: more than 100000 bodies", `{"name":"b"`},
 	{"circulating", withLaw(`"circulating":1`), `/parts/0/circulating: circulating is for cylinders, not for a sphere`, `"circ`},
 	{"circulating and magnetized", withShape(`"shape":"cylinder","radius":1,"height":1,"circulating":1`), `circulating and magnetized exclude each other`, `"magnetized"`},
-	{"permittivity", withLaw(`"permittivity":2`), `/parts/0/permittivity: key "permittivity" is not supported yet`, `"perm`},
-	{"permeability", withLaw(`"permeability":"infinite"`), `/parts/0/permeability: key "permeability" is not supported yet`, `"perm`},
+	{"permittivity below 0", withLaw(`"permittivity":-2`), `/parts/0/permittivity: permittivity must be ≥ 0`, `-2`},
+	{"permeability in words", withLaw(`"permeability":"much"`), `permeability must be a number ≥ 0 or "infinite"`, `"much"`},
+	{"permittivity of a sheet", withBare(`"shape":"disc","radius":1,"charged":{"density":1},"permittivity":2`), `a disc has no permittivity`, `"permittivity"`},
+	{"permittivity of a magnet", withLaw(`"magnetized":{"uniform":[0,0,1]},"permittivity":2`), `permittivity beside what is of the other kind`, `"permittivity"`},
+	{"both responses", withLaw(`"permeability":3,"permittivity":2`), `beside what is of the other kind`, `"permittivity"`},
 	{"curve", withLaw(`"curve":"a.csv"`), `/parts/0/curve: key "curve" is not supported yet`, `"curve"`},
 
 	// What parts carry.

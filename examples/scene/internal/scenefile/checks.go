@@ -112,6 +112,9 @@ func (d *decoder) checkPart(n uint32, p *Part) error {
 	if err := d.checkCirculating(n, p); err != nil {
 		return err
 	}
+	if err := d.checkResponds(n, p); err != nil {
+		return err
+	}
 	if p.Class == Point && p.Polarized == nil && p.Magnetized == nil && p.Charged == nil {
 		return d.errorOn(n, "a point that carries nothing", `add "charged": {"charge": …}, or "polarized" or "magnetized": {"moment": […]}`)
 	}

@@ -148,6 +148,10 @@ func (d *decoder) value(n uint32, t *Type, k *Key, dst reflect.Value) error {
 		dst.Set(reflect.New(dst.Type().Elem()))
 		dst = dst.Elem()
 	}
+	if r, ok := dst.Addr().Interface().(*Relative); ok && d.kind(n) == '"' && d.text(n) == "infinite" {
+		*r = Relative(math.Inf(1))
+		return nil
+	}
 	switch t.Base {
 	case Number, Integer:
 		return d.scalar(n, t, k, dst)

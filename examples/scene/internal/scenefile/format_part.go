@@ -16,8 +16,8 @@ func part() Object {
 			key("magnetized", object("magnetized"), `{"remanence": [0, 0, 1.2]}`, "Magnetization; bodies and points."),
 			key("charged", object("charged"), `{"density": 1e-6}`, "Real charge; sheets and points."),
 			key("circulating", number(), `1e-6`, "A0: flux per metre that circulates in the thin curved wall of a cylinder, right-handed about z: far from the ends the vector potential inside is A0 along z, and 0 outside.").unit("T·m"),
-			key("permittivity", permeable(), `4.5`, "Relative permittivity of a part that responds to the field.").status(Later),
-			key("permeability", permeable(), `1000`, "Relative permeability of a part that responds to the field.").status(Later),
+			key("permittivity", permeable(), `4.5`, "Relative permittivity of a body that responds to the field; beside a polarization, its dielectric constant."),
+			key("permeability", permeable(), `1000`, "Relative permeability of a body that responds to the field; beside a magnetization, its recoil permeability."),
 			key("curve", Type{Base: Input}, `"steel.csv"`, "File with a B–H or P–E table.").status(Later),
 		},
 		Rules: []Rule{

@@ -171,8 +171,8 @@ func (d *decoder) checkKind(q Quantity, m Measure) *fault {
 	var electric, magnetic, circulating bool
 	for i := range d.scene.Parts {
 		p := &d.scene.Parts[i]
-		electric = electric || p.Polarized != nil || p.Charged != nil
-		magnetic = magnetic || p.Magnetized != nil
+		electric = electric || p.electric()
+		magnetic = magnetic || p.magnetic()
 		circulating = circulating || p.Circulating != nil
 	}
 	switch {

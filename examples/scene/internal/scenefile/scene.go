@@ -83,7 +83,13 @@ type Part struct {
 	Charged    *Charge       `key:"charged"`    // C/m², C
 
 	Circulating *float64 `key:"circulating"` // T·m
+
+	Permittivity *Relative `key:"permittivity"`
+	Permeability *Relative `key:"permeability"`
 }
+
+// A Relative is a relative permittivity or permeability, +Inf for "infinite".
+type Relative float64
 
 // Names returns the names of the bodies that the part places: its own, or those
 // of its copies in order.

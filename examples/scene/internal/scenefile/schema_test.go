@@ -189,7 +189,7 @@ func TestSchemaRefuses(t *testing.T) {
 		"is for points", "is polarized by", "carries nothing", "too long", "max must be above", "must not", "device name", "is taken", "plain relative",
 		"not a regular", "wrong.csv", "wrong.json", "unknown quantity", "value of", "must be a number of a point", "yields", "no part is called", "has no face", "does not say",
 		"is for requests", "more than one turn", "must not both be", "dielectric plane without", "on a plane of kind", "is for cylinders", "encloses no area",
-		"no part is", "no interaction", "within a travel", "file of one position", "hand_over writes", "the scene has electric and magnetic",
+		"no part is", "no interaction", "within a travel", "file of one position", "hand_over writes", "has no permittivity", "of the other kind", "the scene has electric and magnetic",
 	}
 	schema := committedSchema(t)
 	for _, c := range badScenes {

@@ -115,7 +115,7 @@ func (s *Setup) reach(b float64) (*Answer, error) {
 	m := magnet.Model{Unit: s.Unit}
 	for i := range s.Parts {
 		switch p := &s.Parts[i]; {
-		case p.Kind == Magnetized:
+		case p.Kind == Magnetized && p.chi == nil:
 			m.Parts = append(m.Parts, p.Member)
 		case p.Body != nil:
 			m.Parts = append(m.Parts, magnet.Part{Body: p.Body})

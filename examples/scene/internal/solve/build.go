@@ -53,6 +53,8 @@ type Part struct {
 	law      field.Polarization // of a polarized body, in its own frame and the unit of the file, before factor
 	factor   float64
 	singular singular
+	chi      *float64       // of a part that responds, else nil
+	induced  *responding    // what it carries with others, once solved
 	proven   float64        // accuracy that needs no estimate, see proven
 	material grade.Material // of a magnet with a grade
 }
@@ -67,11 +69,13 @@ type Setup struct {
 
 	Electric, Magnetic bool // kinds that the records have
 	Guiding            bool // circulating flux: records have A
+	Responds           bool // some parts respond to the field
 	slow               bool // a part is integrated
 	electric           charge.Model
 	magnetic           magnet.Model
 	guides             bound.Assembly // charge M_A.n of circulating parts
 	walls              []image.Plane
+	overlaps           [][2]int       // pairs of parts
 	places             bound.Assembly // all parts, for sides and for telling where a point is
 	surface            func() (volts float64, of *Part)
 }
@@ -114,6 +118,11 @@ func (s *Setup) assemble() {
 		p := &s.Parts[i]
 		s.slow = s.slow || p.integrated()
 		s.places = append(s.places, bound.Member{Charge: p.Charge, Body: p.Body, Sheet: p.Sheet})
+		if p.chi != nil {
+			s.Responds = true
+			s.Electric, s.Magnetic = s.Electric || p.Kind != Magnetized, s.Magnetic || p.Kind == Magnetized
+			continue
+		}
 		switch p.Kind {
 		case Magnetized:
 			s.Magnetic = true

@@ -40,6 +40,8 @@ func (s *Setup) Charges() []PartCharge {
 	for i := range s.Parts {
 		p := &s.Parts[i]
 		switch {
+		case p.induced != nil:
+			out[i] = s.responseCharge(p, i)
 		case p.Charge != nil:
 			out[i] = s.bodyCharge(p)
 		case p.Sheet != nil:

@@ -2,6 +2,7 @@ package solve
 
 import (
 	"context"
+	"errors"
 	"math"
 
 	"example.com/boundpole/examples/scene/internal/scenefile"
@@ -47,6 +48,18 @@ func (s *Setup) linkage(ctx context.Context, l *scenefile.Linkage) (*Answer, err
 			failed = err
 		}
 	}
+	if r := s.response(Magnetized); r != nil {
+		if s.crosses(area, r) {
+			return a, errors.New("the coil reaches into a part that responds; lead it round the part")
+		}
+		for _, face := range area {
+			got, err := flux.Through(ctx, r.response, face, field.Mean, flux.Settings{Accuracy: max(s.Scene.Accuracy/4, 1e-8)})
+			add(magnet.Mu0/n2, got.Value, got.Estimate)
+			if err != nil {
+				failed = err
+			}
+		}
+	}
 	if images := s.images(s.poles(), Magnetized); s.Magnetic && images != nil {
 		for _, face := range area {
 			r, err := flux.Through(ctx, images, face, field.Mean, flux.Settings{Accuracy: s.Scene.Accuracy / 4})
@@ -64,11 +77,23 @@ func (s *Setup) linkage(ctx context.Context, l *scenefile.Linkage) (*Answer, err
 	return a, failed
 }
 
+// crosses reports whether an area passes through a body that responds.
+func (s *Setup) crosses(area []geom.Charted, r *responding) (hit bool) {
+	for _, face := range area {
+		face.Nodes(24, func(x, _ r3.Vec, _ float64) {
+			for _, i := range r.parts {
+				hit = hit || s.Parts[i].Body.Locate(pairOf(x), 0).Region == geom.Inside
+			}
+		})
+	}
+	return hit
+}
+
 // poles returns all magnetized parts without their images.
 func (s *Setup) poles() field.Sum {
 	var all field.Sum
 	for i := range s.Parts {
-		if p := &s.Parts[i]; p.Kind == Magnetized {
+		if p := &s.Parts[i]; p.Kind == Magnetized && p.chi == nil {
 			all = append(all, p.source())
 		}
 	}
@@ -80,6 +105,8 @@ func (s *Setup) poles() field.Sum {
 func (s *Setup) currentOf(p *Part) (current.Source, float64, error) {
 	n2 := s.perMetre * s.perMetre
 	switch {
+	case p.chi != nil:
+		return nil, 0, nil
 	case p.Kind == Circulating:
 		g, err := current.NewGuide(p.Body, p.factor*p.law.At(r3.Vec{}).Z)
 		return g, 1 / s.perMetre, err

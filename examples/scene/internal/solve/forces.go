@@ -2,6 +2,7 @@ package solve
 
 import (
 	"context"
+	"errors"
 
 	"example.com/boundpole/examples/scene/internal/scenefile"
 	"example.com/boundpole/field"
@@ -45,7 +46,7 @@ func (s *Setup) others(i int) field.Source {
 	var rest, all field.Sum
 	for k := range s.Parts {
 		p := &s.Parts[k]
-		if family(p.Kind) != kind {
+		if family(p.Kind) != kind || p.chi != nil {
 			continue
 		}
 		all = append(all, p.source())
@@ -56,15 +57,23 @@ func (s *Setup) others(i int) field.Source {
 	if images := s.images(all, kind); images != nil {
 		rest = append(rest, images)
 	}
-	if a := s.Scene.Applied; a != nil {
-		switch {
-		case kind == Magnetized && a.B != nil:
-			rest = append(rest, field.Constant{G: r3.Scale(1/magnet.Mu0, *a.B)})
-		case kind == Charged && a.E != nil:
-			rest = append(rest, field.Constant{G: r3.Scale(epsilon0, *a.E)})
-		}
+	if g := s.appliedTo(kind); g != (r3.Vec{}) {
+		rest = append(rest, field.Constant{G: g})
+	}
+	if r := s.response(kind); r != nil {
+		rest = append(rest, r.response)
 	}
 	return rest
+}
+
+// response returns what the responding parts of a kind carry, nil for none.
+func (s *Setup) response(kind Kind) *responding {
+	for i := range s.Parts {
+		if p := &s.Parts[i]; p.induced != nil && family(p.Kind) == kind {
+			return p.induced
+		}
+	}
+	return nil
 }
 
 // source returns what makes the field of a part.
@@ -104,7 +113,11 @@ func (s *Setup) force(ctx context.Context, q *scenefile.Force) (*Answer, error) 
 	}
 	var r force.Result
 	var err error
-	if p.Kind != Circulating { // flux that circulates acts on nothing at rest
+	switch {
+	case p.Kind == Circulating: // flux that circulates acts on nothing at rest
+	case p.induced != nil:
+		r, err = p.induced.force(i, about)
+	default:
 		r, err = s.on(ctx, p, s.others(i), about)
 	}
 	k := s.natural(p.Kind)
@@ -135,7 +148,10 @@ func (s *Setup) energy(ctx context.Context, one, two string) (*Answer, error) {
 	a, b := &s.Parts[s.part(one)], &s.Parts[s.part(two)]
 	var r force.Result
 	var err error
-	if family(a.Kind) == family(b.Kind) && a.Kind != Circulating {
+	switch {
+	case a.chi != nil || b.chi != nil:
+		err = errors.New("a part that responds has no energy of a pair; ask for the force")
+	case family(a.Kind) == family(b.Kind) && a.Kind != Circulating:
 		r, err = s.on(ctx, a, b.source(), a.Centre)
 	}
 	k := s.natural(a.Kind) / s.perMetre

@@ -17,6 +17,9 @@ func (s *Setup) HandOver(kind string) (*handover.Set, error) {
 	var parts bound.Assembly
 	for i := range s.Parts {
 		p := &s.Parts[i]
+		if p.chi != nil {
+			return nil, fmt.Errorf("scene: hand_over: %s responds to the field; only rigid parts are handed over", p.Name)
+		}
 		if of := family(p.Kind); of == Magnetized && kind == "magnetic" || of == Charged && kind == "electric" {
 			parts, set.Names = append(parts, p.Member), append(set.Names, p.Name)
 		}

@@ -18,8 +18,11 @@ func (s *Setup) LeftOut() []string {
 	case film:
 		out = append(out, fmt.Sprintf("No dielectric or metal response: %s is taken as the measured surface potential, so the outside "+
 			"field is right for a thin film and the inside field is nominal.", volts))
-	case s.has(Polarized, Charged):
+	case s.hasRigid(Polarized, Charged):
 		out = append(out, "No dielectric or metal response: polarization and charge are taken as they are given.")
+	}
+	if s.Responds {
+		out = append(out, "Response is linear: no saturation, no loss, no hysteresis.")
 	}
 	if len(out) == 0 {
 		out = append(out, "No response of any part to the field: all are rigid.")
@@ -56,7 +59,7 @@ func (s *Setup) recoil() string {
 	var strongest *Part
 	best := 0.0
 	s.originals(func(p *Part) {
-		if p.Kind != Magnetized || p.Charge == nil {
+		if p.Kind != Magnetized || p.Charge == nil || p.chi != nil {
 			return
 		}
 		if m := strength(p.Charge); strongest == nil || m > best {
@@ -64,7 +67,7 @@ func (s *Setup) recoil() string {
 		}
 	})
 	if strongest == nil {
-		if s.has(Magnetized) {
+		if s.hasRigid(Magnetized) {
 			return rigid
 		}
 		return ""
@@ -80,6 +83,16 @@ func (s *Setup) recoil() string {
 	}
 	return fmt.Sprintf("No recoil: at µrec %.2f (N %.3f, Pc %.2f) the magnet would be about %.1f %% weaker%s.", permeability, n, (1-n)/n,
 		100*k/(1+k), which)
+}
+
+// hasRigid reports whether any part of one of the kinds is rigid.
+func (s *Setup) hasRigid(kinds ...Kind) bool {
+	for i := range s.Parts {
+		if p := &s.Parts[i]; p.chi == nil && slices.Contains(kinds, p.Kind) {
+			return true
+		}
+	}
+	return false
 }
 
 // magnets returns the number of magnetized parts, copies counted.

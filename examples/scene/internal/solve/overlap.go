@@ -59,6 +59,7 @@ func (s *Setup) warnOverlaps() {
 		return found[i][0] < found[j][0] || found[i][0] == found[j][0] && found[i][1] < found[j][1]
 	})
 	const most = 20
+	s.overlaps = found
 	for i, f := range found {
 		if i == most {
 			s.Warnings = append(s.Warnings, fmt.Sprintf("%d more pairs of parts overlap", len(found)-most))

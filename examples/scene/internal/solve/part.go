@@ -27,6 +27,7 @@ type made struct {
 	singular singular
 	proven   float64
 	material grade.Material // of a magnet with a grade
+	chi      *float64
 	density  float64
 	gradient r3.Vec
 	point    float64
@@ -50,6 +51,7 @@ func (s *Setup) make(i int) (*made, error) {
 			return nil, s.Scene.ErrorAt(at, plainWords(err), "")
 		}
 	}
+	m.responds(part)
 	var err error
 	switch {
 	case part.Polarized != nil:
@@ -83,6 +85,18 @@ func (s *Setup) make(i int) (*made, error) {
 		return nil, s.Scene.ErrorAt(at, plainWords(err), "")
 	}
 	return m, nil
+}
+
+// responds takes over how a part responds.
+func (m *made) responds(part *scenefile.Part) {
+	switch {
+	case part.Permittivity != nil:
+		chi := float64(*part.Permittivity) - 1
+		m.chi, m.kind = &chi, Polarized
+	case part.Permeability != nil:
+		chi := float64(*part.Permeability) - 1
+		m.chi, m.kind = &chi, Magnetized
+	}
 }
 
 // fault is an error that knows its place below the key of what the part carries.
@@ -157,7 +171,7 @@ func finite(v float64) error {
 // plainWords returns an error of the library without the name of the package in front.
 func plainWords(err error) string {
 	text := err.Error()
-	for _, name := range []string{"geom: ", "bound: ", "charge: ", "element: ", "field: ", "grade: ", "magnet: ", "image: ", "force: ", "flux: ", "current: ", "handover: "} {
+	for _, name := range []string{"geom: ", "bound: ", "charge: ", "element: ", "field: ", "grade: ", "magnet: ", "image: ", "force: ", "flux: ", "current: ", "handover: ", "response: "} {
 		text = strings.TrimPrefix(text, name)
 	}
 	return text
@@ -176,7 +190,9 @@ func (s *Setup) place(m *made, name string, pose geom.Pose, sign float64) {
 		if sign < 0 {
 			c = m.charge[1]
 		}
-		if c != nil {
+		if m.chi != nil {
+			p.chi, p.law, p.factor, p.proven = m.chi, m.law, sign*s.Scene.Parts[m.part].Scale, math.Inf(1)
+		} else if c != nil {
 			p.Charge = c.At(pose)
 			p.Body = p.Charge.Body()
 			p.Member = bound.Member{Charge: p.Charge}

@@ -119,7 +119,7 @@ func (s *Setup) warnOperating() {
 	k := -1          // index among the magnets of the model
 	for i := range s.Parts {
 		p := &s.Parts[i]
-		if p.Kind != Magnetized {
+		if p.Kind != Magnetized || p.chi != nil {
 			continue
 		}
 		k++

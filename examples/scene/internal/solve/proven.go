@@ -38,7 +38,11 @@ func proven(body geom.Body, law field.Polarization) float64 {
 		if linear || isRadial && radial.Power == 0 {
 			return quadrature
 		}
-	case geom.Cone, geom.Torus:
+	case geom.Cone:
+		if linear || axial {
+			return quadrature
+		}
+	case geom.Torus:
 		if uniform {
 			return quadrature
 		}
@@ -47,7 +51,7 @@ func proven(body geom.Body, law field.Polarization) float64 {
 			return closed
 		}
 	case geom.Ellipsoid:
-		if uniform {
+		if linear {
 			return closed
 		}
 	}

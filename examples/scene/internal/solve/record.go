@@ -124,6 +124,7 @@ func (s *Setup) fill(recs []Record, at *field.Points, side field.Side, q *scenef
 		rec.X = s.metres(at.Vec(i))
 		rec.Inside = s.inside(at.At(i), side, way)
 		rec.Status = max(rec.Electric.Status, rec.Magnetic.Status, rec.Guide.Status)
+		s.addContent(rec, at.Slice(i, i+1), side, way)
 		s.blank(rec, at.Vec(i))
 		s.judge(rec, at.Vec(i), side)
 		if q.ByPart {
@@ -207,6 +208,9 @@ func (s *Setup) contributions(at *field.Points, side field.Side, ways []r3.Vec, 
 	out := make([]Contribution, 0, len(s.Parts))
 	for k := range s.Parts {
 		p := &s.Parts[k]
+		if p.induced != nil && p.induced.index(k) > 0 {
+			continue // the first stands for all that respond
+		}
 		c := Contribution{Part: k}
 		alone := bound.Assembly{p.Member}
 		switch p.Kind {

@@ -38,6 +38,9 @@ func (s *Setup) At(t *scenefile.Travel, k int) (Position, error) {
 	moved := *s
 	moved.Parts = append([]Part(nil), s.Parts...)
 	moved.Warnings = nil
+	for k := range moved.Parts {
+		moved.Parts[k].induced = nil
+	}
 	i := s.part(t.Part)
 	moved.Parts[i] = moved.Parts[i].moved(move, s.perMetre)
 	moved.assemble()
