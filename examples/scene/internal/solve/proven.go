@@ -47,12 +47,18 @@ func proven(body geom.Body, law field.Polarization) float64 {
 			return quadrature
 		}
 	case geom.Sphere, geom.HollowSphere:
-		if linear || central {
+		switch {
+		case linear, central:
 			return closed
+		case polynomial && degree <= 12:
+			return quadrature
 		}
 	case geom.Ellipsoid:
-		if linear {
+		switch {
+		case linear:
 			return closed
+		case polynomial && degree <= 12:
+			return quadrature
 		}
 	}
 	return math.Inf(1)
