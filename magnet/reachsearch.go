@@ -106,7 +106,8 @@ func (s *contour) reached() []r3.Vec {
 	return found
 }
 
-// offFaces returns points in front of the faces of the magnets, from near to as far as the size of the model.
+// offFaces returns points in front of the faces of the magnets and about dipoles and poles, from near to as far as the size of
+// the model.
 func (s *contour) offFaces() []r3.Vec {
 	var at []r3.Vec
 	for _, b := range s.magnets {
@@ -116,6 +117,13 @@ func (s *contour) offFaces() []r3.Vec {
 					at = append(at, r3.Add(x, r3.Scale(f.Sign()*d, n)))
 				}
 			})
+		}
+	}
+	for _, p := range s.places {
+		for _, way := range compass {
+			for d := s.radius; d > 1e-3*s.radius; d /= 2 {
+				at = append(at, r3.Add(p, r3.Scale(d, way)))
+			}
 		}
 	}
 	return at

@@ -6,6 +6,7 @@ import (
 	"math"
 
 	"example.com/boundpole/examples/scene/internal/scenefile"
+	"example.com/boundpole/field"
 	"example.com/boundpole/field/current"
 	"example.com/boundpole/field/flux"
 	"example.com/boundpole/field/force"
@@ -169,18 +170,18 @@ func (s *Setup) reading(ctx context.Context, r *scenefile.Reading) (*Answer, err
 // along is the component of B, E or A along the normal.
 func (s *Setup) along(ladder string) flux.Integrand {
 	return func(x, n []r3.Vec, value, err []float64) {
-		at := pointsOf(x)
+		at := field.PointsOf(x...)
 		switch ladder {
 		case "B":
-			for i, v := range s.magnetic.Readings(at, 0) {
+			for i, v := range s.magnetic.Readings(at, field.Mean) {
 				value[i], err[i] = r3.Dot(v.B, n[i]), v.ErrB
 			}
 		case "E":
-			for i, v := range s.electric.Readings(at, 0) {
+			for i, v := range s.electric.Readings(at, field.Mean) {
 				value[i], err[i] = r3.Dot(v.E, n[i]), v.ErrE
 			}
 		case "A":
-			for i, v := range s.guided(s.guides, at, 0, nil) {
+			for i, v := range s.guided(s.guides, at, field.Mean, nil) {
 				value[i], err[i] = r3.Dot(v.A, n[i]), v.ErrA
 			}
 		}

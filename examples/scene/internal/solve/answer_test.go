@@ -118,6 +118,7 @@ func TestSphereAnswers(t *testing.T) {
 		{"linkage":{"circle":{"centre":[0,0,12],"normal":[0,0,3],"radius":5},"turns":7}},
 		{"linkage":{"polygon":[[5,0,12],[0,5,12],[-5,0,12],[0,-5,12]]}},
 		{"reach":{"flux_density":0.01}},{"reach":{"flux_density":5}}]}`, nil)
+	_, alone := answers(t, `{"length":"mm","parts":[{"name":"s","shape":"sphere","radius":4,"magnetized":{"remanence":[0,0,1.2]}}],"wanted":[{"reach":{"flux_density":0.9}}]}`, nil)
 	w := -codata.Mu0 / (2 * math.Pi) * m * 0.5 / math.Pow(0.03, 3)
 	holds(t, "energy", a[0], "energy", 0, w, 1e-12*math.Abs(w))
 	holds(t, "force", a[1], "force", 2, 3*w/0.03, 1e-11*math.Abs(3*w/0.03))
@@ -132,8 +133,12 @@ func TestSphereAnswers(t *testing.T) {
 	if a[6].Missed || a[6].Find("distance").Value[0] < 0.02 {
 		t.Errorf("reach: %+v", a[6])
 	}
-	if q := a[7].Find("distance"); a[7].Status == "" || !math.IsNaN(q.Value[0]) { // at the dipole, but nowhere for the sphere
-		_ = q
+	near := math.Cbrt(codata.Mu0 * 0.5 / (2 * math.Pi * 5)) // from the dipole along its axis, where the sphere adds 1e-3 T
+	if off := a[7].Find("from_surface").Value[0]; math.Abs(off-near) > 1e-3*near {
+		t.Errorf("5 T reaches %v from the dipole, want %v", off, near)
+	}
+	if q := alone[0].Find("distance"); alone[0].Status == "" || !math.IsNaN(q.Value[0]) || alone[0].Missed { // outside a sphere B is at most 2/3 of Br
+		t.Errorf("0.9 T outside a sphere of 1.2 T: %+v", alone[0])
 	}
 }
 

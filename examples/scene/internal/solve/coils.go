@@ -15,10 +15,6 @@ import (
 	"gonum.org/v1/gonum/spatial/r3"
 )
 
-func pairOf(x r3.Vec) pair.Vec { return pair.VecOf(x) }
-
-func pointsOf(x []r3.Vec) *field.Points { return field.PointsOf(x...) }
-
 // linkage answers the flux linkage of a coil: the loop integral of A for bodies and dipoles, the flux through an area within
 // the coil for images, and the applied field times the area.
 func (s *Setup) linkage(ctx context.Context, l *scenefile.Linkage) (*Answer, error) {
@@ -30,7 +26,7 @@ func (s *Setup) linkage(ctx context.Context, l *scenefile.Linkage) (*Answer, err
 	n2 := s.perMetre * s.perMetre
 	var sum, estimate, size float64
 	add := func(factor, value, err float64) {
-		sum, estimate, size = sum+factor*value, estimate+abs(factor*err), size+abs(factor*value)
+		sum, estimate, size = sum+factor*value, estimate+math.Abs(factor*err), size+math.Abs(factor*value)
 	}
 	var failed error
 	for i := range s.Parts {
@@ -73,7 +69,7 @@ func (s *Setup) linkage(ctx context.Context, l *scenefile.Linkage) (*Answer, err
 		add(1/n2, r3.Dot(*b.B, areaOf(l)), 0)
 	}
 	a.Quantities[0] = number("linkage", "Wb", l.Turns*sum, l.Turns*(estimate+0x1p-50*size))
-	a.Missed = estimate > s.Scene.Accuracy*max(abs(sum), floorShare*size)
+	a.Missed = estimate > s.Scene.Accuracy*max(math.Abs(sum), floorShare*size)
 	return a, failed
 }
 
@@ -82,7 +78,7 @@ func (s *Setup) crosses(area []geom.Charted, r *responding) (hit bool) {
 	for _, face := range area {
 		face.Nodes(24, func(x, _ r3.Vec, _ float64) {
 			for _, i := range r.parts {
-				hit = hit || s.Parts[i].Body.Locate(pairOf(x), 0).Region == geom.Inside
+				hit = hit || s.Parts[i].Body.Locate(pair.VecOf(x), 0).Region == geom.Inside
 			}
 		})
 	}

@@ -3,11 +3,13 @@ package solve
 import (
 	"context"
 	"errors"
+	"math"
 
 	"example.com/boundpole/examples/scene/internal/scenefile"
 	"example.com/boundpole/field"
 	"example.com/boundpole/field/element"
 	"example.com/boundpole/field/force"
+	"example.com/boundpole/geom/pair"
 	"example.com/boundpole/magnet"
 	"gonum.org/v1/gonum/spatial/r3"
 )
@@ -156,11 +158,9 @@ func (s *Setup) energy(ctx context.Context, one, two string) (*Answer, error) {
 	}
 	k := s.natural(a.Kind) / s.perMetre
 	answer := &Answer{Quantities: []Quantity{number("energy", "W", k*r.Energy, k*r.Error.Energy)}}
-	answer.Missed = !s.kept(r.Error.Energy, abs(r.Energy), r.Size.Energy)
+	answer.Missed = !s.kept(r.Error.Energy, math.Abs(r.Energy), r.Size.Energy)
 	return answer, err
 }
 
-func abs(v float64) float64 { return max(v, -v) }
-
 // toLocal returns a point of the scene in the part's own frame.
-func (p *Part) toLocal(x r3.Vec) r3.Vec { return p.Pose.ToLocal(pairOf(x)).Value() }
+func (p *Part) toLocal(x r3.Vec) r3.Vec { return p.Pose.ToLocal(pair.VecOf(x)).Value() }
