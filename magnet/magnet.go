@@ -7,9 +7,9 @@
 // Free currents are parts too (Loop, Wire, Solenoid). The other picture of the same fields is Amperian: bound currents, with the
 // vector potential A in T m; FluxTube is the tube of circulating flux, with A and no B around it.
 //
-// North is +sigma. Lengths are in metres unless a Model says otherwise, frames right-handed, normals outward. M is rigid: no recoil, no iron,
-// no saturation, no eddy currents. On a face the mean of both sides is given, or the side asked for. Models are immutable
-// once built and safe for concurrent use.
+// North is +sigma. Lengths are in metres unless a Model says otherwise, frames right-handed, normals outward. M is rigid here;
+// package field/response has recoil and iron. No saturation, no eddy currents. On a face the mean of both sides is given, or
+// the side asked for. Models are immutable once built and safe for concurrent use.
 //
 // Inside flat magnets H is nearly -M, so B is a small difference: its error is absolute, of the order of u mu0 |M|.
 //

@@ -98,6 +98,9 @@ func Build(scene *scenefile.Scene) (*Setup, error) {
 		return nil, err
 	}
 	s.warnOverlaps()
+	if err := s.checkResponding(); err != nil {
+		return nil, err
+	}
 	s.warnOperating()
 	return s, nil
 }

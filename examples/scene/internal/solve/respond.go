@@ -62,12 +62,6 @@ func (s *Setup) Respond(ctx context.Context) error {
 		if len(bodies) == 0 {
 			continue
 		}
-		if err := s.checkApart(r); err != nil {
-			return err
-		}
-		if s.images(field.Sum{}, kind) != nil {
-			return s.Scene.ErrorAt("/planes", "planes beside parts that respond are not supported yet", "leave the plane out, or make the parts rigid")
-		}
 		if err := s.respond(ctx, kind, r, bodies, materials); err != nil {
 			return err
 		}
@@ -75,13 +69,19 @@ func (s *Setup) Respond(ctx context.Context) error {
 	return nil
 }
 
-// checkApart refuses what stands in a part that responds.
-func (s *Setup) checkApart(r *responding) error {
+// checkResponding refuses what stands in a part that responds, and planes beside one.
+func (s *Setup) checkResponding() error {
 	refuse := func(i, other int) error {
 		return s.Scene.ErrorAt(fmt.Sprintf("/parts/%d", s.Parts[i].Of), fmt.Sprintf("%s responds to the field and %s stands in it", s.Parts[i].Name, s.Parts[other].Name),
 			"move them apart")
 	}
-	for _, i := range r.parts {
+	for i := range s.Parts {
+		if s.Parts[i].chi == nil {
+			continue
+		}
+		if s.images(field.Sum{}, family(s.Parts[i].Kind)) != nil {
+			return s.Scene.ErrorAt("/planes", "planes beside parts that respond are not supported yet", "leave the plane out, or make the parts rigid")
+		}
 		for _, two := range s.overlaps {
 			switch i {
 			case two[0]:

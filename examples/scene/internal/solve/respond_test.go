@@ -94,11 +94,7 @@ func TestResponseRefusals(t *testing.T) {
 		if err != nil {
 			t.Fatal(err)
 		}
-		s, err := solve.Build(scene)
-		if err != nil {
-			t.Fatal(err)
-		}
-		if err := s.Respond(context.Background()); err == nil || !strings.Contains(err.Error(), want) || !strings.Contains(err.Error(), "scene.json:") {
+		if _, err := solve.Build(scene); err == nil || !strings.Contains(err.Error(), want) || !strings.Contains(err.Error(), "scene.json:") {
 			t.Errorf("%s: %v, want %q", text, err, want)
 		}
 	}

@@ -47,6 +47,12 @@ func (s *Setup) At(t *scenefile.Travel, k int) (Position, error) {
 	if err := moved.checkSides(); err != nil {
 		return at, err
 	}
+	if s.Responds {
+		moved.warnOverlaps()
+		if err := moved.checkResponding(); err != nil {
+			return at, err
+		}
+	}
 	at.Setup = &moved
 	return at, nil
 }
