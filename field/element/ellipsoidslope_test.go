@@ -55,56 +55,82 @@ func TestAffineEllipsoid(t *testing.T) {
 		t.Fatal(err)
 	}
 	var cases []struct {
-		ID       string
-		Axes, P  [3]float64
+		ellipsoidCase
+		P        [3]float64
 		Gradient [3][3]float64
-		Points   [][3]float64
-		Phi      []string
-		G        [][3]string
 	}
 	if err := json.Unmarshal(data, &cases); err != nil {
 		t.Fatal(err)
 	}
 	const tol = 1e-13 // the contract is 1e-12; 30 roundings of terms that may be 30 times the floor of 1e-3
-	var over []float64
-	claims, short := 0, 0
+	var y ellipsoidTally
 	for _, c := range cases {
 		p := field.Affine{Value: vec(c.P), Gradient: c.Gradient}
 		e := must(NewAffineEllipsoid(geom.Ellipsoid{SemiAxes: vec(c.Axes)}, p))
-		size, peak := slices.Max(c.Axes[:]), 0.0
+		peak := 0.0
 		for _, s := range [][3]float64{{1, 0, 0}, {0, 1, 0}, {0, 0, 1}, {-1, 0, 0}, {0, -1, 0}, {0, 0, -1}} { // at least
 			peak = max(peak, r3.Norm(p.At(r3.Vec{X: s[0] * c.Axes[0], Y: s[1] * c.Axes[1], Z: s[2] * c.Axes[2]})))
 		}
-		worstPhi, worstG := 0.0, 0.0
-		for i := range c.Points {
-			v := at(e, vec(c.Points[i]), field.Mean)
-			q := min(1, size/r3.Norm(vec(c.Points[i])))
-			ePhi, phi := minus(t, v.Phi, c.Phi[i])
-			eG, g := offBy(t, v.G, c.G[i])
-			ePhi, phi = math.Abs(ePhi), math.Abs(phi)
-			rPhi := ePhi / max(phi, 1e-3*peak*size*q*q)
-			rG := eG / max(g, 1e-3*peak*q*q*q)
-			worstPhi, worstG = max(worstPhi, rPhi), max(worstG, rG)
-			if !(rPhi <= tol && rG <= tol) || v.Status != field.Regular {
-				t.Errorf("%s point %d %v: phi %v, want %s, error %.2g; g %v, want %v, error %.2g; tolerance %g; %v", c.ID, i, c.Points[i],
-					v.Phi, c.Phi[i], rPhi, v.G, c.G[i], rG, tol, v.Status)
-			}
-			over = append(over, v.ErrPhi/max(ePhi, u*phi), v.ErrG/max(eG, u*g))
-			claims += 2
-			if ePhi > v.ErrPhi {
-				short++
-			}
-			if eG > v.ErrG {
-				short++
-			}
-		}
-		t.Logf("%-16s worst phi %.2g, g %.2g", c.ID, worstPhi, worstG)
+		y.see(t, &c.ellipsoidCase, e, peak, tol)
 	}
-	slices.Sort(over)
-	if median := over[len(over)/2]; short > 0 || median > 100 { // the contract on estimates
-		t.Errorf("%d of %d estimates too small, median overestimate %.3g", short, claims, median)
+	y.judge(t)
+}
+
+// ellipsoidCase is points of an ellipsoid with values of 25 digits.
+type ellipsoidCase struct {
+	ID     string
+	Axes   [3]float64
+	Points [][3]float64
+	Phi    []string
+	G      [][3]string
+}
+
+// ellipsoidTally counts how the estimates of all cases came out.
+type ellipsoidTally struct {
+	over          []float64
+	claims, short int
+}
+
+// see holds a source against a case: errors to tol of the value or of 1e-3 of the scale that goes with the largest polarization.
+func (y *ellipsoidTally) see(t *testing.T, c *ellipsoidCase, e field.Evaluator, peak, tol float64) {
+	t.Helper()
+	size := slices.Max(c.Axes[:])
+	worstPhi, worstG := 0.0, 0.0
+	for i := range c.Points {
+		v := at(e, vec(c.Points[i]), field.Mean)
+		q := min(1, size/r3.Norm(vec(c.Points[i])))
+		ePhi, phi := minus(t, v.Phi, c.Phi[i])
+		eG, g := offBy(t, v.G, c.G[i])
+		ePhi, phi = math.Abs(ePhi), math.Abs(phi)
+		rPhi := ePhi / max(phi, 1e-3*peak*size*q*q)
+		rG := eG / max(g, 1e-3*peak*q*q*q)
+		worstPhi, worstG = max(worstPhi, rPhi), max(worstG, rG)
+		if !(rPhi <= tol && rG <= tol) || v.Status != field.Regular {
+			t.Errorf("%s point %d %v: phi %v, want %s, error %.2g; g %v, want %v, error %.2g; tolerance %g; %v", c.ID, i, c.Points[i],
+				v.Phi, c.Phi[i], rPhi, v.G, c.G[i], rG, tol, v.Status)
+		}
+		y.over = append(y.over, v.ErrPhi/max(ePhi, u*phi), v.ErrG/max(eG, u*g))
+		y.claims += 2
+		if ePhi > v.ErrPhi {
+			y.short++
+			t.Logf("%s point %d: phi off by %.3g, estimate %.3g", c.ID, i, ePhi, v.ErrPhi)
+		}
+		if eG > v.ErrG {
+			y.short++
+			t.Logf("%s point %d: g off by %.3g, estimate %.3g", c.ID, i, eG, v.ErrG)
+		}
+	}
+	t.Logf("%-16s worst phi %.2g, g %.2g", c.ID, worstPhi, worstG)
+}
+
+// judge demands that every estimate holds and that they are not far above the errors.
+func (y *ellipsoidTally) judge(t *testing.T) {
+	t.Helper()
+	slices.Sort(y.over)
+	if median := y.over[len(y.over)/2]; y.short > 0 || median > 100 { // the contract on estimates
+		t.Errorf("%d of %d estimates too small, median overestimate %.3g", y.short, y.claims, median)
 	} else {
-		t.Logf("%d estimates hold, median overestimate %.3g", claims, median)
+		t.Logf("%d estimates hold, median overestimate %.3g", y.claims, median)
 	}
 }
 
