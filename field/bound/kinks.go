@@ -224,28 +224,6 @@ func (c *Charge) chartsAbout(k kink, f geom.Face, surface geom.Charted) []geom.C
 	return charts
 }
 
-// side is one of the six sides of a block as a chart with the normal outward.
-type side struct {
-	block geom.Block
-	axis  int
-	upper bool
-}
-
-// At returns the point of the side.
-func (s side) At(u, v float64) (x, xu, xv r3.Vec) {
-	var p [3]float64
-	i, j := (s.axis+1)%3, (s.axis+2)%3
-	if s.upper {
-		p[s.axis] = 1
-	} else {
-		i, j = j, i
-	}
-	p[i], p[j] = u, v
-	x, a, b, c := s.block.At(p[0], p[1], p[2])
-	d := [3]r3.Vec{a, b, c}
-	return x, d[i], d[j]
-}
-
 // blockCharge returns the charge of a power law in a block: rho is homogeneous about the kink, so that by Euler's theorem the integral of
 // it is that of rho times the distance of the tangent plane from the kink over the sides, divided by the degree of rho dV.
 func (c *Charge) blockCharge(k kink, b geom.Block) (q float64, err error) {
@@ -262,7 +240,7 @@ func (c *Charge) blockCharge(k kink, b geom.Block) (q float64, err error) {
 	}
 	for axis := range 3 {
 		for _, upper := range [2]bool{false, true} {
-			l, err := cubature.NewLayer([]geom.Chart{side{b, axis, upper}}, density, &cubature.Settings{MaxPanels: 256})
+			l, err := cubature.NewLayer([]geom.Chart{cubature.SideOf(b, axis, upper)}, density, &cubature.Settings{MaxPanels: 256})
 			if err != nil {
 				return 0, err
 			}

@@ -14,14 +14,12 @@ type cell struct {
 	density func(x r3.Vec) float64
 	index   int // of the block
 	lo, hi  [3]float64
-	centre  r3.Vec
-	radius  float64
-	scale   float64 // greatest coordinate
-	charge  float64 // integral of |rho|
-	peak    float64 // greatest |rho|, or eight times the mean if that is less: it may be infinite at an edge
-	loose   float64 // charge that is not resolved
-	least   int     // place in solidLadder of the smallest rule that integrates charge and moments
-	faces   [6]panel
+	ball
+	charge float64 // integral of |rho|
+	peak   float64 // greatest |rho|, or eight times the mean if that is less: it may be infinite at an edge
+	loose  float64 // charge that is not resolved
+	least  int     // place in solidLadder of the smallest rule that integrates charge and moments
+	faces  [6]panel
 
 	once [len(solidLadder)]sync.Once
 	sets [len(solidLadder)]*nodeSet
@@ -101,19 +99,7 @@ func (c *cell) measure() {
 		}
 	}
 	c.radius *= 1.02
-	c.least = top - 1
-	want := fine.moments(c.centre, c.radius)
-	for k := range top {
-		if closeTo(c.nodes(k).moments(c.centre, c.radius), want, 16*u*c.charge) {
-			c.least = k
-			break
-		}
-	}
-}
-
-func (c *cell) include(x r3.Vec) {
-	c.radius = max(c.radius, r3.Norm(r3.Sub(x, c.centre)))
-	c.scale = max(c.scale, scaleOf(x))
+	c.least = c.smallest(top, c.nodes, fine, c.charge)
 }
 
 // cellFace is a side of a cell as a chart with the normal outward.
@@ -124,6 +110,16 @@ type cellFace struct {
 	upper bool
 	lo    [2]float64 // of the two other parameters of the block
 	span  [2]float64
+}
+
+// SideOf returns a side of a block as a chart with the normal outward: that on which the parameter axis (0, 1 or 2) is 1, or 0 if not
+// upper.
+func SideOf(block geom.Block, axis int, upper bool) geom.Chart {
+	f := cellFace{block: block, axis: axis, upper: upper, span: [2]float64{1, 1}}
+	if upper {
+		f.at = 1
+	}
+	return f
 }
 
 // At returns the point of the face.

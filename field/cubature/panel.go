@@ -14,13 +14,11 @@ type panel struct {
 	density func(x, n r3.Vec) float64 // nil on the boundary of a cell
 	index   int                       // of the chart
 	lo, hi  [2]float64
-	centre  r3.Vec
-	radius  float64
-	scale   float64 // greatest coordinate
-	charge  float64 // integral of |sigma|
-	peak    float64 // greatest |sigma|
-	loose   float64 // charge that is not resolved
-	least   int     // place in ladder of the smallest rule that integrates charge and moments
+	ball
+	charge float64 // integral of |sigma|
+	peak   float64 // greatest |sigma|
+	loose  float64 // charge that is not resolved
+	least  int     // place in ladder of the smallest rule that integrates charge and moments
 
 	once [len(ladder)]sync.Once
 	sets [len(ladder)]*nodeSet
@@ -100,19 +98,30 @@ func (p *panel) measure() {
 		}
 	}
 	p.radius *= 1.02
-	p.least = top - 1
-	want := fine.moments(p.centre, p.radius)
-	for k := range top {
-		if closeTo(p.nodes(k).moments(p.centre, p.radius), want, 16*u*p.charge) {
-			p.least = k
-			break
-		}
-	}
+	p.least = p.smallest(top, p.nodes, fine, p.charge)
 }
 
-func (p *panel) include(x r3.Vec) {
-	p.radius = max(p.radius, r3.Norm(r3.Sub(x, p.centre)))
-	p.scale = max(p.scale, math.Abs(x.X), math.Abs(x.Y), math.Abs(x.Z))
+// ball is where a piece of charge lies.
+type ball struct {
+	centre r3.Vec
+	radius float64
+	scale  float64 // greatest coordinate
+}
+
+func (b *ball) include(x r3.Vec) {
+	b.radius = max(b.radius, r3.Norm(r3.Sub(x, b.centre)))
+	b.scale = max(b.scale, scaleOf(x))
+}
+
+// smallest returns the place of the first rule below top whose charge and moments are those of the fine one to rounding, or top - 1.
+func (b *ball) smallest(top int, nodes func(k int) *nodeSet, fine *nodeSet, charge float64) int {
+	want := fine.moments(b.centre, b.radius)
+	for k := range top {
+		if closeTo(nodes(k).moments(b.centre, b.radius), want, 16*u*charge) {
+			return k
+		}
+	}
+	return top - 1
 }
 
 // moments returns charge, dipole and second moments in units of the radius.
